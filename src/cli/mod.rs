@@ -1,0 +1,1 @@
+//! The `cli` room (see the map in the crate's documentation).

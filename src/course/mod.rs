@@ -1,0 +1,1 @@
+//! The `course` room (see the map in the crate's documentation).

@@ -1,0 +1,1 @@
+//! The `diagnosis` room (see the map in the crate's documentation).

@@ -1,0 +1,1 @@
+//! The `engine` room (see the map in the crate's documentation).

@@ -1,0 +1,153 @@
+//! One fault in something a person wrote: where it is, what is wrong, what to do.
+
+use std::fmt;
+
+/// A text with a name: a file, standard input, or an embedded file of the rule base.
+#[derive(Debug, Clone)]
+pub struct Source {
+    /// The name people know it by, usually a path.
+    pub name: String,
+    /// The whole text.
+    pub text: String,
+}
+
+impl Source {
+    /// A named text.
+    pub fn new(name: impl Into<String>, text: impl Into<String>) -> Self {
+        Self {
+            name: name.into(),
+            text: text.into(),
+        }
+    }
+
+    /// Line and column (both from 1, column in characters) of a byte offset; an offset past the end is the end.
+    pub fn position(&self, offset: usize) -> (usize, usize) {
+        let mut end = offset.min(self.text.len());
+        while !self.text.is_char_boundary(end) {
+            end -= 1;
+        }
+        let before = &self.text[..end];
+        let line = before.matches('\n').count() + 1;
+        let start = before.rfind('\n').map_or(0, |i| i + 1);
+        (line, before[start..].chars().count() + 1)
+    }
+}
+
+/// Where a fault is.
+#[derive(Debug, Clone, PartialEq, Eq)]
+pub struct Place {
+    /// The name of the text.
+    pub file: String,
+    /// Line, from 1.
+    pub line: usize,
+    /// Column in characters, from 1.
+    pub column: usize,
+    /// The line as it stands there.
+    pub excerpt: String,
+    /// How many characters of the line are meant.
+    pub width: usize,
+}
+
+/// A fault: place, a stable kebab-case code, what is wrong, what to do about it.
+#[derive(Debug, Clone, PartialEq, Eq)]
+pub struct Fault {
+    /// Where; `None` when the fault is about a whole collection of files.
+    pub place: Option<Place>,
+    /// A stable id of the kind of fault, such as `unknown-key`.
+    pub code: &'static str,
+    /// What is wrong: lower case, names in backticks, no full stop.
+    pub reason: String,
+    /// What to do about it.
+    pub cure: String,
+}
+
+impl Fault {
+    /// A fault at a byte range of a source.
+    pub fn at(
+        source: &Source,
+        span: std::ops::Range<usize>,
+        code: &'static str,
+        reason: impl Into<String>,
+        cure: impl Into<String>,
+    ) -> Self {
+        let (line, column) = source.position(span.start);
+        let excerpt = source.text.lines().nth(line - 1).unwrap_or("").to_owned();
+        let rest = excerpt.chars().count().saturating_sub(column - 1);
+        let wanted = source
+            .text
+            .get(span)
+            .map_or(1, |s| s.lines().next().unwrap_or("").chars().count());
+        Self {
+            place: Some(Place {
+                file: source.name.clone(),
+                line,
+                column,
+                excerpt,
+                width: wanted.clamp(1, rest.max(1)),
+            }),
+            code,
+            reason: reason.into(),
+            cure: cure.into(),
+        }
+    }
+
+    /// A fault about no single place.
+    pub fn whole(code: &'static str, reason: impl Into<String>, cure: impl Into<String>) -> Self {
+        Self {
+            place: None,
+            code,
+            reason: reason.into(),
+            cure: cure.into(),
+        }
+    }
+}
+
+impl fmt::Display for Fault {
+    fn fmt(&self, f: &mut fmt::Formatter<'_>) -> fmt::Result {
+        if let Some(place) = &self.place {
+            write!(f, "{}:{}:{}: ", place.file, place.line, place.column)?;
+        }
+        write!(f, "{}; {}", self.reason, self.cure)
+    }
+}
+
+/// The nearest of the known words to a word that is not known, if one is near enough to be meant.
+pub fn nearest<'a>(word: &str, known: impl IntoIterator<Item = &'a str>) -> Option<&'a str> {
+    known
+        .into_iter()
+        .map(|k| (strsim::jaro_winkler(word, k), k))
+        .filter(|(score, _)| *score > 0.80)
+        .max_by(|a, b| a.0.total_cmp(&b.0))
+        .map(|(_, k)| k)
+}
+
+/// "did you mean `x`" when something is near, else the advice given.
+pub fn did_you_mean<'a>(
+    word: &str,
+    known: impl IntoIterator<Item = &'a str>,
+    otherwise: &str,
+) -> String {
+    match nearest(word, known) {
+        Some(k) => format!("did you mean `{k}`?"),
+        None => otherwise.to_owned(),
+    }
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    #[test]
+    fn positions_count_characters() {
+        let source = Source::new("a.toml", "x = 1\né = 2\n");
+        assert_eq!(source.position(0), (1, 1));
+        assert_eq!(source.position(8), (2, 2));
+        assert_eq!(source.position(999), (3, 1));
+    }
+
+    #[test]
+    fn nearest_needs_likeness() {
+        assert_eq!(nearest("nitrit", ["nitrite", "nitrate"]), Some("nitrite"));
+        assert_eq!(nearest("zebra", ["nitrite", "ph"]), None);
+    }
+}

@@ -1,0 +1,1 @@
+//! The `history` room (see the map in the crate's documentation).

@@ -1,0 +1,1 @@
+//! The `knowledge` room (see the map in the crate's documentation).

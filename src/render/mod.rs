@@ -1,0 +1,1 @@
+//! The `render` room (see the map in the crate's documentation).

@@ -1,0 +1,1 @@
+//! The `site` room (see the map in the crate's documentation).

@@ -1,0 +1,1 @@
+//! The `water` room (see the map in the crate's documentation).
