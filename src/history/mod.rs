@@ -1,1 +1,3 @@
-//! The `history` room (see the map in the crate's documentation).
+//! What was known when: reading logs, windows and trends.
+
+pub mod log;
