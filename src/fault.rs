@@ -133,9 +133,43 @@ pub fn did_you_mean<'a>(
     }
 }
 
+/// A person's words as they may be printed inside a message: no control characters, and not too long.
+pub fn shown(text: &str) -> String {
+    const LONGEST: usize = 60;
+    let mut out = String::new();
+    for (i, c) in text.chars().enumerate() {
+        if i == LONGEST {
+            out.push('…');
+            break;
+        }
+        if c.is_control() {
+            out.extend(c.escape_default());
+        } else {
+            out.push(c);
+        }
+    }
+    out
+}
+
+/// Why the system could not open or read something, in plain words.
+pub fn plain_io(error: &std::io::Error) -> String {
+    match error.kind() {
+        std::io::ErrorKind::NotFound => "there is no such file".to_owned(),
+        std::io::ErrorKind::PermissionDenied => "it may not be read by you".to_owned(),
+        std::io::ErrorKind::IsADirectory => "it is a folder".to_owned(),
+        _ => error.to_string(),
+    }
+}
+
 #[cfg(test)]
 mod tests {
     use super::*;
+
+    #[test]
+    fn shown_words_are_safe_and_short() {
+        assert_eq!(shown("a\u{1b}[2J\tb"), "a\\u{1b}[2J\\tb");
+        assert_eq!(shown(&"x".repeat(100)).chars().count(), 61);
+    }
 
     #[test]
     fn positions_count_characters() {

@@ -6,9 +6,7 @@ use std::collections::HashMap;
 use super::leaf::Slope;
 use super::site::settle;
 use super::{Degree, Leaf, Limits};
-use crate::knowledge::{
-    Evidence, FindingId, Knowledge, Ramp, Test,
-};
+use crate::knowledge::{Evidence, FindingId, Knowledge, Ramp, Test};
 use crate::site::Site;
 use crate::vocabulary::{ReadingId, SignId};
 
@@ -56,7 +54,13 @@ impl Program {
         let trigger_node = knowledge
             .causes
             .iter()
-            .map(|cause| cause.triggers.iter().map(|t| compiler.test(&t.when)).collect())
+            .map(|cause| {
+                cause
+                    .triggers
+                    .iter()
+                    .map(|t| compiler.test(&t.when))
+                    .collect()
+            })
             .collect();
         let sign_node = (0..knowledge.vocabulary.signs.len())
             .filter_map(|i| u16::try_from(i).ok())
@@ -182,7 +186,9 @@ impl<'k> Compiler<'k> {
     fn finish(self, trigger_node: Vec<Vec<NodeId>>, sign_node: Vec<NodeId>) -> Program {
         let mut parents = vec![Vec::new(); self.nodes.len()];
         for (index, node) in self.nodes.iter().enumerate() {
-            let Ok(id) = NodeId::try_from(index) else { continue };
+            let Ok(id) = NodeId::try_from(index) else {
+                continue;
+            };
             let parts: &[NodeId] = match node {
                 Node::Leaf(_) => &[],
                 Node::All(parts) | Node::Any(parts) | Node::NOf(_, parts) => parts,
@@ -197,7 +203,9 @@ impl<'k> Compiler<'k> {
         let mut by_sign = vec![Vec::new(); vocabulary.signs.len()];
         let mut by_event = vec![Vec::new(); vocabulary.events.len()];
         for (index, leaf) in self.leaves.iter().enumerate() {
-            let Ok(index) = u32::try_from(index) else { continue };
+            let Ok(index) = u32::try_from(index) else {
+                continue;
+            };
             match leaf {
                 Leaf::Level { reading, .. }
                 | Leaf::Changed { reading, .. }
@@ -214,7 +222,11 @@ impl<'k> Compiler<'k> {
             leaves: self.leaves,
             leaf_node: self.leaf_node,
             parents,
-            finding_node: self.finding_node.into_iter().map(|n| n.unwrap_or(0)).collect(),
+            finding_node: self
+                .finding_node
+                .into_iter()
+                .map(|n| n.unwrap_or(0))
+                .collect(),
             nodes: self.nodes,
             trigger_node,
             sign_node,
@@ -226,7 +238,12 @@ impl<'k> Compiler<'k> {
 }
 
 /// A test without parts, with its names resolved for a site. Tests with parts, findings and causes are unknown here.
-pub(super) fn resolve(test: &Test, knowledge: &Knowledge, site: &Site, limits: &Limits<'_>) -> Leaf {
+pub(super) fn resolve(
+    test: &Test,
+    knowledge: &Knowledge,
+    site: &Site,
+    limits: &Limits<'_>,
+) -> Leaf {
     let vocabulary = &knowledge.vocabulary;
     let resolution = |id: ReadingId| (vocabulary[id].resolution, vocabulary[id].resolution_share);
     match test {
@@ -237,10 +254,10 @@ pub(super) fn resolve(test: &Test, knowledge: &Knowledge, site: &Site, limits: &
             above,
             everywhere,
         } => {
-            let slope = |ramp: &Ramp, rising: bool| slope(ramp, rising, resolution(*reading), limits);
-            let sides = [(below, false), (above, true)].map(|(ramp, rising)| {
-                ramp.as_ref().map(|ramp| slope(ramp, rising))
-            });
+            let slope =
+                |ramp: &Ramp, rising: bool| slope(ramp, rising, resolution(*reading), limits);
+            let sides = [(below, false), (above, true)]
+                .map(|(ramp, rising)| ramp.as_ref().map(|ramp| slope(ramp, rising)));
             if sides.iter().any(|side| matches!(side, Some(None))) {
                 return Leaf::Fixed(Degree::UNKNOWN);
             }
@@ -317,7 +334,11 @@ pub(super) fn resolve(test: &Test, knowledge: &Knowledge, site: &Site, limits: &
 fn slope(ramp: &Ramp, rising: bool, resolution: (f64, f64), limits: &Limits<'_>) -> Option<Slope> {
     let start = limits.resolve(ramp.start)?;
     let half = 0.5 * resolution.0.max(resolution.1 * start.abs());
-    let own = if rising { (start - half, start + half) } else { (start + half, start - half) };
+    let own = if rising {
+        (start - half, start + half)
+    } else {
+        (start + half, start - half)
+    };
     let Some(full) = ramp.full else {
         return Some(own);
     };

@@ -81,7 +81,10 @@ impl Degree {
     pub fn nth_largest(n: usize, degrees: impl Iterator<Item = Self> + Clone) -> Self {
         let nth = |ends: &mut Vec<f64>| {
             ends.sort_by(|a, b| b.total_cmp(a));
-            n.checked_sub(1).and_then(|i| ends.get(i)).copied().unwrap_or(0.0)
+            n.checked_sub(1)
+                .and_then(|i| ends.get(i))
+                .copied()
+                .unwrap_or(0.0)
         };
         Self {
             lo: nth(&mut degrees.clone().map(|d| d.lo).collect()),

@@ -191,11 +191,14 @@ impl Leaf {
             } => places(memory, *reading, *everywhere, |series, place| {
                 self.level(series, place, now)
             }),
-            Leaf::Changed { reading, change, .. } => {
-                places(memory, *reading, *change == Change::Held, |series, place| {
-                    self.changed(series, place, now)
-                })
-            }
+            Leaf::Changed {
+                reading, change, ..
+            } => places(
+                memory,
+                *reading,
+                *change == Change::Held,
+                |series, place| self.changed(series, place, now),
+            ),
             Leaf::Unusual { reading, .. } => places(memory, *reading, false, |series, place| {
                 self.unusual(series, place, now)
             }),
@@ -252,8 +255,14 @@ impl Leaf {
         };
         let (value, keep) = match over {
             Over::Now => (Some(last), *good_for),
-            Over::Lowest(window) => (series.extremes(*window).map(|e| e.0), (*good_for).max(*window)),
-            Over::Highest(window) => (series.extremes(*window).map(|e| e.1), (*good_for).max(*window)),
+            Over::Lowest(window) => (
+                series.extremes(*window).map(|e| e.0),
+                (*good_for).max(*window),
+            ),
+            Over::Highest(window) => (
+                series.extremes(*window).map(|e| e.1),
+                (*good_for).max(*window),
+            ),
             Over::Middle(window) => (series.middle(*window), (*good_for).max(*window)),
         };
         let Some(value) = value else {
@@ -261,7 +270,11 @@ impl Leaf {
         };
         // Below detection at L is anything from 0 to L; half of it is kept, so the ends are 0 and twice what is kept.
         let hidden = *over == Over::Now && series.last_is_below();
-        let (low, high) = if hidden { (0.0, value * 2.0) } else { (value, value) };
+        let (low, high) = if hidden {
+            (0.0, value * 2.0)
+        } else {
+            (value, value)
+        };
         let mut degree = Degree::TRUE;
         for slope in [below, above].into_iter().flatten() {
             degree = degree.and(Degree::between(along(*slope, low), along(*slope, high)));
@@ -296,9 +309,19 @@ impl Leaf {
             return Judged::unknown();
         };
         let least = resolution.0.max(resolution.1 * shift.early.abs());
-        let scale = if *share { shift.early.abs().max(least).max(f64::MIN_POSITIVE) } else { 1.0 };
+        let scale = if *share {
+            shift.early.abs().max(least).max(f64::MIN_POSITIVE)
+        } else {
+            1.0
+        };
         // Twice the resolution is what two honest readings of the same water may differ by.
-        let real = |amount: f64| if amount.abs() < 2.0 * least - 1e-9 { 0.0 } else { amount };
+        let real = |amount: f64| {
+            if amount.abs() < 2.0 * least - 1e-9 {
+                0.0
+            } else {
+                amount
+            }
+        };
         let degree = moved(*change, *slope, &shift, scale, *within, &real);
         let (faded, until) = fade(time, now, (*good_for).max(*within));
         Judged {
@@ -374,7 +397,12 @@ fn moved(
             lo: 0.0,
             hi: 1.0 - along(slope, real(shift.swing) / scale),
         },
-        Change::Held => Degree::known(1.0 - along(slope, real(shift.change.abs().max(shift.jump.abs())) / scale)),
+        Change::Held => Degree::known(
+            1.0 - along(
+                slope,
+                real(shift.change.abs().max(shift.jump.abs())) / scale,
+            ),
+        ),
     }
 }
 

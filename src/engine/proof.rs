@@ -43,11 +43,17 @@ pub fn prove<'k>(
     match test {
         Test::All(tests) => {
             let parts = inner(tests);
-            whole(degrees(&parts).into_iter().fold(Degree::TRUE, Degree::and), parts)
+            whole(
+                degrees(&parts).into_iter().fold(Degree::TRUE, Degree::and),
+                parts,
+            )
         }
         Test::Any(tests) => {
             let parts = inner(tests);
-            whole(degrees(&parts).into_iter().fold(Degree::FALSE, Degree::or), parts)
+            whole(
+                degrees(&parts).into_iter().fold(Degree::FALSE, Degree::or),
+                parts,
+            )
         }
         Test::NOf(n, tests) => {
             let parts = inner(tests);

@@ -12,6 +12,22 @@ use crate::history::memory::Memory;
 use crate::knowledge::{CauseId, Evidence, FindingId, Knowledge};
 use crate::site::Site;
 
+/// The balances of a site, with what the knowledge base knows of its media and fish.
+fn balance(knowledge: &Knowledge, site: &Site) -> Balance {
+    let per_m3 = |kind: &str| {
+        let media = knowledge.media.iter().find(|m| m.id == kind)?;
+        Some(media.area_m2_per_l * 1000.0)
+    };
+    let area = site.biofilter_area(per_m3).map(|area| area.m2);
+    let oxygen_use = knowledge
+        .species
+        .iter()
+        .filter(|s| site.species.contains(&s.id))
+        .filter_map(|s| s.oxygen_use)
+        .reduce(f64::max);
+    Balance::new(&knowledge.vocabulary, site, area, oxygen_use)
+}
+
 /// The facts of one farm as they stand.
 #[derive(Debug, Clone)]
 pub struct Engine<'k> {
@@ -36,7 +52,7 @@ impl<'k> Engine<'k> {
         let mut engine = Self {
             knowledge,
             memory: Memory::new(&knowledge.vocabulary),
-            balance: Balance::new(knowledge, site),
+            balance: balance(knowledge, site),
             facts: vec![Degree::UNKNOWN; nodes],
             dirty: vec![true; nodes],
             first_dirty: 0,

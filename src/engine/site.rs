@@ -26,9 +26,17 @@ impl<'k> Limits<'k> {
         let cautious = species.is_empty();
         Self {
             knowledge,
-            species: if cautious { knowledge.species.iter().collect() } else { species },
+            species: if cautious {
+                knowledge.species.iter().collect()
+            } else {
+                species
+            },
             cautious,
-            targets: site.targets.iter().map(|(r, band)| (*r, band.low, band.high)).collect(),
+            targets: site
+                .targets
+                .iter()
+                .map(|(r, band)| (*r, band.low, band.high))
+                .collect(),
         }
     }
 
@@ -46,7 +54,10 @@ impl<'k> Limits<'k> {
         if self.cautious && !Self::CAUTIOUS.contains(&id.as_str()) {
             return None;
         }
-        let all = self.species.iter().filter_map(|s| s.limit(reading, level, side));
+        let all = self
+            .species
+            .iter()
+            .filter_map(|s| s.limit(reading, level, side));
         match side {
             Side::Low => all.reduce(f64::max),
             Side::High => all.reduce(f64::min),
@@ -55,14 +66,13 @@ impl<'k> Limits<'k> {
 
     /// The comfort band: the site's, else the species', else the knowledge base's.
     pub fn target(&self, reading: ReadingId, side: Side) -> Option<f64> {
-        let own = self
-            .targets
-            .iter()
-            .find(|(r, ..)| *r == reading)
-            .and_then(|(_, low, high)| match side {
-                Side::Low => *low,
-                Side::High => *high,
-            });
+        let own =
+            self.targets.iter().find(|(r, ..)| *r == reading).and_then(
+                |(_, low, high)| match side {
+                    Side::Low => *low,
+                    Side::High => *high,
+                },
+            );
         own.or_else(|| self.species(reading, LimitLevel::Comfort, side))
             .or_else(|| self.knowledge.comfort.get(&(reading, side as u8)).copied())
     }
@@ -71,7 +81,9 @@ impl<'k> Limits<'k> {
     pub fn resolve(&self, bound: Bound) -> Option<f64> {
         match bound {
             Bound::Number(value) => Some(value),
-            Bound::Named(Limit::Species(reading, level, side)) => self.species(reading, level, side),
+            Bound::Named(Limit::Species(reading, level, side)) => {
+                self.species(reading, level, side)
+            }
             Bound::Named(Limit::Target(reading, side)) => self.target(reading, side),
         }
     }

@@ -89,7 +89,10 @@ fn causes(knowledge: &Knowledge, faults: &mut Vec<Fault>) {
             ));
         }
         for (n, effect) in cause.effects.iter().enumerate() {
-            if cause.effects[..n].iter().any(|e| e.evidence == effect.evidence) {
+            if cause.effects[..n]
+                .iter()
+                .any(|e| e.evidence == effect.evidence)
+            {
                 faults.push(fault(
                     place,
                     "effect-twice",
@@ -142,7 +145,10 @@ fn rounds(knowledge: &Knowledge, faults: &mut Vec<Fault>) {
                 faults.push(fault(
                     None,
                     "unknown-id",
-                    format!("the round `{}` guards against an unknown cause `{cause}`", round.id),
+                    format!(
+                        "the round `{}` guards against an unknown cause `{cause}`",
+                        round.id
+                    ),
                     "use a cause's id",
                 ));
             }

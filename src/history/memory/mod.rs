@@ -2,8 +2,8 @@
 
 mod bins;
 mod series;
-mod trend;
 mod tracks;
+mod trend;
 mod whole;
 
 pub use series::{Series, Usual};

@@ -75,7 +75,11 @@ impl Series {
 
     /// The value before the last one.
     pub fn before_last(&self) -> Option<(i64, f64)> {
-        self.raw.len().checked_sub(2).and_then(|i| self.raw.get(i)).copied()
+        self.raw
+            .len()
+            .checked_sub(2)
+            .and_then(|i| self.raw.get(i))
+            .copied()
     }
 
     /// The newest values as they were read, oldest first.
@@ -104,7 +108,11 @@ impl Series {
             let before = first.checked_sub(1).and_then(|i| self.raw.get(i)).copied();
             return (before, self.raw.range(first..).copied().collect());
         }
-        let bins = if self.hours.covers(from) { &self.hours } else { &self.days };
+        let bins = if self.hours.covers(from) {
+            &self.hours
+        } else {
+            &self.days
+        };
         let (before, bins) = bins.since(from);
         (
             before.map(|b| (b.time(), b.middle())),
@@ -122,7 +130,11 @@ impl Series {
                 widen(*v, *v);
             }
         } else {
-            let bins = if self.hours.covers(from) { &self.hours } else { &self.days };
+            let bins = if self.hours.covers(from) {
+                &self.hours
+            } else {
+                &self.days
+            };
             for bin in bins.since(from).1.filter(|b| b.last() >= from) {
                 widen(bin.low, bin.high);
             }
@@ -210,14 +222,21 @@ mod tests {
         series.push(0, 5.6, false);
         series.push(5 * DAY, 3.6, false);
         let shift = series.shift(3 * DAY);
-        assert!(shift.is_some_and(|s| (s.change + 1.2).abs() < 1e-9), "{shift:?}");
+        assert!(
+            shift.is_some_and(|s| (s.change + 1.2).abs() < 1e-9),
+            "{shift:?}"
+        );
     }
 
     #[test]
     fn memory_is_flat_and_still_knows_weeks() {
         let mut series = Series::default();
         for minute in 0..(60 * 24 * 40_i32) {
-            series.push(i64::from(minute) * 60, 20.0 + f64::from(minute % 3) * 0.1, false);
+            series.push(
+                i64::from(minute) * 60,
+                20.0 + f64::from(minute % 3) * 0.1,
+                false,
+            );
         }
         assert!(series.raw.len() <= RAW_KEPT);
         let usual = series.usual(35 * DAY, 3 * DAY, 5);

@@ -17,11 +17,7 @@ pub struct SignTrack {
 impl SignTrack {
     /// Notes a look; a second one at the same time and place replaces the first.
     pub fn push(&mut self, time: i64, place: u16, seen: bool) {
-        if let Some(last) = self
-            .looks
-            .iter_mut()
-            .find(|l| l.0 == time && l.1 == place)
-        {
+        if let Some(last) = self.looks.iter_mut().find(|l| l.0 == time && l.1 == place) {
             last.2 = seen;
             return;
         }

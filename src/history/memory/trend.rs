@@ -22,10 +22,10 @@ pub fn median(values: &mut [f64]) -> Option<f64> {
     if values.is_empty() {
         return None;
     }
-    let middle = values.len() / 2;
+    let (middle, odd) = (values.len() / 2, values.len() % 2 == 1);
     let (below, mid, _) = values.select_nth_unstable_by(middle, f64::total_cmp);
     let upper = *mid;
-    if values.len() % 2 == 1 {
+    if odd {
         return Some(upper);
     }
     let lower = below.iter().copied().fold(f64::NEG_INFINITY, f64::max);
@@ -67,7 +67,11 @@ pub fn shift(points: &[(i64, f64)]) -> Option<Shift> {
     let ends = late - early;
     // A step in mid-window shows in the ends, a ramp in the slope; they must agree on the direction.
     let change = if along.signum() == ends.signum() && along != 0.0 {
-        if along.abs() > ends.abs() { along } else { ends }
+        if along.abs() > ends.abs() {
+            along
+        } else {
+            ends
+        }
     } else if along == 0.0 {
         ends
     } else {
@@ -115,7 +119,9 @@ mod tests {
 
     #[test]
     fn a_ramp_keeps_its_size() {
-        let points: Vec<(i64, f64)> = (0..10_i32).map(|i| (i64::from(i) * 10, f64::from(i))).collect();
+        let points: Vec<(i64, f64)> = (0..10_i32)
+            .map(|i| (i64::from(i) * 10, f64::from(i)))
+            .collect();
         let shift = shift(&points);
         assert!(shift.is_some_and(|s| (s.change - 9.0).abs() < 1e-9));
     }

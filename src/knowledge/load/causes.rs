@@ -19,8 +19,10 @@ pub(super) fn read(root: &mut Section<'_>, names: &Names, made: &mut Made) {
         if let Some(cause) = cause {
             made.causes.push(cause);
             let number = CauseId(number);
-            made.good.extend(good.into_iter().map(|(s, v)| (s, number, v)));
-            made.harm.extend(harm.into_iter().map(|(s, v)| (s, number, v)));
+            made.good
+                .extend(good.into_iter().map(|(s, v)| (s, number, v)));
+            made.harm
+                .extend(harm.into_iter().map(|(s, v)| (s, number, v)));
         }
     }
 }
@@ -90,8 +92,9 @@ fn trigger(mut section: Section<'_>, names: &Names) -> Option<Trigger> {
 }
 
 fn effect(mut section: Section<'_>, names: &Names) -> Option<Effect> {
-    let evidence = section.required("when").and_then(|node| {
-        match test(&node, names, false)? {
+    let evidence = section
+        .required("when")
+        .and_then(|node| match test(&node, names, false)? {
             Test::Finding(id) => Some(Evidence::Finding(id)),
             Test::Sign { sign, within: None } => Some(Evidence::Sign(sign)),
             _ => {
@@ -102,8 +105,7 @@ fn effect(mut section: Section<'_>, names: &Names) -> Option<Effect> {
                 );
                 None
             }
-        }
-    });
+        });
     let seen_in = share(&mut section, "seen_in");
     let delay = section.text("delay").unwrap_or_default();
     let source = sources(&mut section, names);
@@ -134,7 +136,9 @@ fn steps(section: &mut Section<'_>, key: &str, names: &Names) -> Vec<(StepId, f6
     };
     let mut found = Vec::new();
     for id in table.keys() {
-        let Some(node) = table.node(&id) else { continue };
+        let Some(node) = table.node(&id) else {
+            continue;
+        };
         if let (Some(step), Some(value)) = (names.step(&node, &id), within(&node, 0.0, 1.0)) {
             found.push((step, value));
         }

@@ -91,9 +91,11 @@ pub(super) fn id(section: &mut Section<'_>, taken: impl Fn(&str) -> bool) -> Opt
     let node = section.required("id")?;
     let text = node.text()?;
     let kebab = !text.is_empty()
-        && text
-            .split('-')
-            .all(|w| !w.is_empty() && w.chars().all(|c| c.is_ascii_lowercase() || c.is_ascii_digit()));
+        && text.split('-').all(|w| {
+            !w.is_empty()
+                && w.chars()
+                    .all(|c| c.is_ascii_lowercase() || c.is_ascii_digit())
+        });
     if !kebab {
         node.fault(
             "not-an-id",

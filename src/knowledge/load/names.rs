@@ -124,11 +124,7 @@ impl Names {
     /// Checks a source key.
     pub fn check_source(&self, node: &Node<'_>, key: &str) {
         let known = self.sources.contains(key) || PLAIN_SOURCES.contains(&key);
-        let all = self
-            .sources
-            .iter()
-            .map(String::as_str)
-            .chain(PLAIN_SOURCES);
+        let all = self.sources.iter().map(String::as_str).chain(PLAIN_SOURCES);
         report(node, "source", key, known, all);
     }
 }

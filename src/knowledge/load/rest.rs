@@ -8,7 +8,7 @@ use super::tests::test;
 use crate::decode::Section;
 use crate::fault::Fault;
 use crate::knowledge::{
-    Caution, Cause, CauseId, Finding, FindingId, Knowledge, Media, Reference, Round, Scales,
+    Cause, CauseId, Caution, Finding, FindingId, Knowledge, Media, Reference, Round, Scales,
     Species, Step, StepId,
 };
 use crate::vocabulary::{ReadingId, Vocabulary};
@@ -125,12 +125,12 @@ fn media(section: &mut Section<'_>, names: &Names, made: &Made) -> Option<Media>
 }
 
 fn reference(section: &mut Section<'_>) -> Option<Reference> {
-    let year = section.node("year").map_or(Some(String::new()), |node| {
-        match node.value() {
+    let year = section
+        .node("year")
+        .map_or(Some(String::new()), |node| match node.value() {
             crate::decode::Value::Integer(i) => Some(i.to_string()),
             _ => node.text(),
-        }
-    });
+        });
     Some(Reference {
         key: words(section, "key")?,
         author: section.text("author").unwrap_or_default(),
@@ -205,8 +205,10 @@ fn order(findings: &[Finding]) -> Result<Vec<FindingId>, Fault> {
             State::Done => return Ok(()),
             State::Open => {
                 let start = path.iter().position(|p| *p == at).unwrap_or(0);
-                let mut names: Vec<&str> =
-                    path[start..].iter().map(|p| findings[*p].id.as_str()).collect();
+                let mut names: Vec<&str> = path[start..]
+                    .iter()
+                    .map(|p| findings[*p].id.as_str())
+                    .collect();
                 names.push(&findings[at].id);
                 return Err(Fault {
                     place: findings[at].place.clone(),

@@ -10,9 +10,8 @@ pub(super) fn read(root: &mut Section<'_>, made: &mut Made) {
     let Some(mut table) = root.section("scales") else {
         return;
     };
-    let mut number = |key: &str, low: f64, high: f64| {
-        table.required(key).and_then(|n| within(&n, low, high))
-    };
+    let mut number =
+        |key: &str, low: f64, high: f64| table.required(key).and_then(|n| within(&n, low, high));
     let scales = (|| {
         Some(Scales {
             incident_review: number("incident_review", 0.0001, 0.9)?,

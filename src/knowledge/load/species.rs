@@ -20,7 +20,9 @@ pub(super) fn read(root: &mut Section<'_>, names: &Names, made: &mut Made) {
     let mut from = BTreeMap::new();
     if let Some(mut table) = root.section("limits") {
         for reading_id in table.keys() {
-            let Some(node) = table.node(&reading_id) else { continue };
+            let Some(node) = table.node(&reading_id) else {
+                continue;
+            };
             let (Some(reading), Some(mut band)) =
                 (names.reading(&node, &reading_id), node.section())
             else {
@@ -49,7 +51,12 @@ pub(super) fn read(root: &mut Section<'_>, names: &Names, made: &mut Made) {
     root.has("source");
     if let (Some(id), Some(name), Some(warm)) = (id, name, warm) {
         if made.species.iter().any(|s| s.id == id) {
-            root.fault_at_key("id", "id-twice", format!("`{id}` is defined twice"), "take one out");
+            root.fault_at_key(
+                "id",
+                "id-twice",
+                format!("`{id}` is defined twice"),
+                "take one out",
+            );
             return;
         }
         made.species.push(Species {

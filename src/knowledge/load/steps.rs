@@ -83,7 +83,9 @@ fn amounts(section: &mut Section<'_>, key: &str, names: &Names) -> BTreeMap<Caus
         return found;
     };
     for id in table.keys() {
-        let Some(node) = table.node(&id) else { continue };
+        let Some(node) = table.node(&id) else {
+            continue;
+        };
         if let Some(value) = within(&node, 0.0, 1.0) {
             for cause in names.causes(&node, &id) {
                 found.insert(cause, value);

@@ -72,7 +72,9 @@ fn list(section: &mut Section<'_>, key: &str, names: &Names, causes: bool) -> Op
 }
 
 fn n_of(section: &mut Section<'_>, names: &Names, causes: bool) -> Option<Test> {
-    let count = section.required("n_of").and_then(|n| within(&n, 1.0, 50.0))?;
+    let count = section
+        .required("n_of")
+        .and_then(|n| within(&n, 1.0, 50.0))?;
     let inner = list(section, "of", names, causes)?;
     // Checked to be 1 to 50 just above.
     #[allow(clippy::cast_possible_truncation, clippy::cast_sign_loss)]
@@ -101,7 +103,11 @@ fn reading(section: &mut Section<'_>, names: &Names) -> Option<Test> {
     for (key, surely, change) in changes {
         if section.has(key) {
             let by = section.number(key)?;
-            let usual_full = if change == Change::Held { by * 1.6 } else { by * 1.5 };
+            let usual_full = if change == Change::Held {
+                by * 1.6
+            } else {
+                by * 1.5
+            };
             let surely = section.number(surely).unwrap_or(usual_full);
             let within = section.required("within").and_then(|n| seconds(&n))?;
             let share = section.flag("share").unwrap_or(false);
