@@ -1,0 +1,5 @@
+//! Reading logs.
+
+mod row;
+
+pub use row::{PlaceId, Row, Value};
