@@ -4,12 +4,12 @@
 use std::cmp::Reverse;
 use std::collections::BinaryHeap;
 
-use super::compile::{Node, NodeId};
-use super::{Degree, Judged, Program};
+use super::compile::{Node, NodeId, resolve};
+use super::{Degree, Judged, Limits, Program};
 use crate::history::balance::Balance;
 use crate::history::log::Row;
 use crate::history::memory::Memory;
-use crate::knowledge::{CauseId, Evidence, FindingId, Knowledge};
+use crate::knowledge::{CauseId, Evidence, FindingId, Knowledge, Test};
 use crate::site::Site;
 
 /// The balances of a site, with what the knowledge base knows of its media and fish.
@@ -226,6 +226,22 @@ impl<'k> Engine<'k> {
         node.and_then(|n| self.facts.get(n as usize))
             .copied()
             .unwrap_or(Degree::UNKNOWN)
+    }
+
+    /// Judges a test without parts that is not part of the compiled program (steps, cautions, rounds).
+    pub fn judge_test(
+        &self,
+        test: &Test,
+        site: &Site,
+        limits: &Limits<'_>,
+        standing: &impl Fn(&[CauseId]) -> f64,
+    ) -> Degree {
+        if let Test::Cause { causes, likely } = test {
+            return Degree::of(standing(causes) >= *likely);
+        }
+        resolve(test, self.knowledge, site, limits)
+            .judge(&self.memory)
+            .degree
     }
 
     /// Judges one test by itself, for proofs.

@@ -87,6 +87,8 @@ pub struct Finding {
     pub alarming: bool,
     /// Danger whatever the cause.
     pub danger: Option<Urgency>,
+    /// Fish show distress: a cause that harms in hours is then a matter of now.
+    pub distress: bool,
     /// Keys of sources.
     pub source: Vec<String>,
     /// Where it is written.
@@ -196,6 +198,8 @@ pub struct Step {
     pub when: When,
     /// Belongs to what is said first when fish may die within minutes.
     pub first_aid: bool,
+    /// The line for people that opens first aid.
+    pub people_first: bool,
     /// Never advised, only ever named under avoid.
     pub temptation: bool,
     /// Minutes of work.
@@ -335,6 +339,8 @@ pub struct Scales {
     pub sign_not_noted: f64,
     /// How much of the evidence counts (1 = as if every finding were independent).
     pub evidence: f64,
+    /// The most that all triggers of one cause together multiply its odds by.
+    pub triggers: f64,
     /// Penalty on each cause beyond the first in a set, as a factor on its odds.
     pub second_cause: f64,
     /// Summed probability of minutes causes for `act-now`.
@@ -349,6 +355,10 @@ pub struct Scales {
     pub danger: f64,
     /// Below this no step is advised for a cause.
     pub step_floor: f64,
+    /// Expected harm from which a step is named under avoid.
+    pub avoid_floor: f64,
+    /// Weight of a cause's good and harm by urgency: weeks, days, hours, minutes.
+    pub urgency: [f64; 4],
     /// Words for likelihood, highest first: from this probability on.
     pub words: Vec<(f64, String)>,
 }

@@ -160,3 +160,25 @@ fn put(pending: &mut Pending, id: Option<ReadingId>, place: u16, value: Option<f
         pending.push((id, place, value));
     }
 }
+
+/// The measured readings a derived one is computed from; empty for what the site file alone tells.
+pub fn inputs(derived: &str) -> &'static [&'static str] {
+    match derived {
+        "un-ionized-ammonia" => &["total-ammonia", "ph", "temperature"],
+        "oxygen-saturation" => &["dissolved-oxygen", "temperature"],
+        "carbon-dioxide-from-ph" => &["alkalinity", "ph", "temperature"],
+        "chloride-to-nitrite" => &["chloride", "nitrite"],
+        "free-nitrous-acid" => &["nitrite", "ph", "temperature"],
+        "nitrite-to-ammonia" => &["nitrite", "total-ammonia"],
+        "alkalinity-days" | "alkalinity-use-ratio" => &["alkalinity"],
+        "ammonia-per-load" => &["total-ammonia"],
+        "nitrite-per-load" => &["nitrite"],
+        "makeup-share" => &["makeup-water"],
+        "dead-share" => &["deaths"],
+        "nitrate-fall-share" => &["nitrate"],
+        "tracer-fall-share" => &["chloride"],
+        "day-swing-oxygen" => &["dissolved-oxygen"],
+        "day-swing-ph" => &["ph"],
+        _ => &[],
+    }
+}

@@ -27,6 +27,7 @@ fn one(section: &mut Section<'_>, names: &Names, made: &Made) -> Option<Finding>
     Some(Finding {
         group: section.text("group").unwrap_or_default(),
         alarming: section.flag("alarming").unwrap_or(false),
+        distress: section.flag("distress").unwrap_or(false),
         source: sources(section, names),
         place: place(section),
         danger,

@@ -19,6 +19,7 @@ pub(super) fn read(root: &mut Section<'_>, made: &mut Made) {
             event_not_noted: number("event_not_noted", 0.0, 1.0)?,
             sign_not_noted: number("sign_not_noted", 0.0, 1.0)?,
             evidence: number("evidence", 0.1, 2.0)?,
+            triggers: number("triggers", 1.0, 1e6)?,
             second_cause: number("second_cause", 0.0, 1.0)?,
             act_minutes: number("act_minutes", 0.001, 1.0)?,
             act_hours: number("act_hours", 0.001, 1.0)?,
@@ -26,6 +27,13 @@ pub(super) fn read(root: &mut Section<'_>, made: &mut Made) {
             watch: number("watch", 0.001, 1.0)?,
             danger: number("danger", 0.01, 1.0)?,
             step_floor: number("step_floor", 0.0, 1.0)?,
+            avoid_floor: number("avoid_floor", 0.0, 1.0)?,
+            urgency: [
+                number("urgency_weeks", 0.0, 100.0)?,
+                number("urgency_days", 0.0, 100.0)?,
+                number("urgency_hours", 0.0, 100.0)?,
+                number("urgency_minutes", 0.0, 100.0)?,
+            ],
             words: Vec::new(),
         })
     })();

@@ -58,6 +58,7 @@ fn one(section: &mut Section<'_>, names: &Names, made: &Made) -> Option<Step> {
     Some(Step {
         detail: section.text("detail").unwrap_or_default(),
         first_aid: section.flag("first_aid").unwrap_or(false),
+        people_first: section.flag("people_first").unwrap_or(false),
         helps: amounts(section, "helps", names),
         harms: amounts(section, "harms", names),
         equipment: section.text("equipment"),
