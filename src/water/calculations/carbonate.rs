@@ -52,6 +52,23 @@ pub static SUBJECT: Subject = Subject {
             compute: |i| Ok(sample(i)?.carbon_dioxide()?),
         },
         Calculation {
+            name: "carbon-dioxide-mature-water",
+            help: "the same in an old system water, with its phosphate; known to 12 %",
+            unit: "mg/L",
+            keys: &[
+                CARBONATE_TEMPERATURE,
+                CARBONATE_PH,
+                ALKALINITY,
+                IONIC_STRENGTH,
+                CONDUCTIVITY,
+                SALINITY_FOR_IONS,
+                // 5-20 mg/L is what practice aims for in system water, and it is part of what is titrated.
+                PHOSPHORUS.or(10.0),
+            ],
+            source: &[CONSTANTS, DAVIES, "10 mg/L of phosphorus: common practice"],
+            compute: |i| Ok(sample(i)?.carbon_dioxide()?),
+        },
+        Calculation {
             name: "carbon-dioxide-brackish",
             help: "the same in water with salt (NaCl) in it",
             unit: "mg/L",
@@ -286,7 +303,20 @@ pub static SUBJECT: Subject = Subject {
                 SALINITY_FOR_IONS,
             ],
             source: &["Langelier 1936", CONSTANTS, DAVIES],
-            compute: |i| Ok(limestone::saturation_index(&sample(i)?, i.num("calcium")?)?),
+            compute: |i| {
+                let (water, calcium) = (sample(i)?, i.num("calcium")?);
+                let least = limestone::least_ionic_strength(water.alkalinity, calcium)?;
+                let known = i.opt("ionic_strength").or(i.opt("conductivity")).is_some();
+                let ions = if known {
+                    water.ionic_strength
+                } else {
+                    water.ionic_strength.max(least)
+                };
+                Ok(limestone::saturation_index(
+                    &water.with_ionic_strength(ions),
+                    calcium,
+                )?)
+            },
         },
     ],
 };

@@ -1,9 +1,6 @@
 //! Constants and restated rules: they answer by name, for the reference checks and whoever asks, and are not listed.
 
-use super::common::{
-    ALKALINITY, CARBONATE_PH, CARBONATE_TEMPERATURE, CONDUCTIVITY, IONIC_STRENGTH, PRESSURE,
-    SALINITY_FOR_IONS, sample, temperature,
-};
+use super::common::{CARBONATE_PH, CARBONATE_TEMPERATURE, PRESSURE, temperature};
 use super::key::Fallback;
 use super::{Calculation, Key, Subject};
 use crate::water::carbonate::{constants, sample as samples};
@@ -161,21 +158,6 @@ pub static SUBJECT: Subject = Subject {
             keys: &[],
             source: &["USGS Office of Water Quality Technical Memorandum 2011.03"],
             compute: |_| Ok(oxygen::MG_PER_ML),
-        },
-        Calculation {
-            name: "carbon-dioxide-mature-water",
-            help: "carbon dioxide in an old system water, known to 12 %",
-            unit: "mg/L",
-            keys: &[
-                CARBONATE_TEMPERATURE,
-                CARBONATE_PH,
-                ALKALINITY,
-                IONIC_STRENGTH,
-                CONDUCTIVITY,
-                SALINITY_FOR_IONS,
-            ],
-            source: PLUMMER,
-            compute: |i| Ok(sample(i)?.carbon_dioxide()?),
         },
         Calculation {
             name: "carbon-dioxide-from-bicarbonate-rule",

@@ -148,6 +148,11 @@ impl Key {
         Self { rivals, ..self }
     }
 
+    /// Whether somebody or the site has to give it.
+    pub fn required(&self) -> bool {
+        self.fallback == Fallback::Required
+    }
+
     /// Whether it answers to this name, spelled with underscores.
     pub fn answers_to(&self, name: &str) -> bool {
         self.name == name || self.also.iter().any(|a| a.name == name)
