@@ -241,6 +241,22 @@ elevation: U.S. Standard Atmosphere 1976
                 "there is no calculation `un-ionised-ammonia`; did you mean `un-ionized-ammonia`?",
             ),
             (
+                &["sulfide"],
+                2,
+                "there is no calculation `sulfide`; did you mean one of hydrogen-sulfide-fraction, \
+                 un-ionized-hydrogen-sulfide?",
+            ),
+            (
+                &[
+                    "carbon-dioxide",
+                    "temperature=25",
+                    "ph=10.8",
+                    "alkalinity=2",
+                ],
+                3,
+                "`alkalinity` is 2, and this holds for at least 32.1956 mg/L as CaCO3 at this pH",
+            ),
+            (
                 &["un-ionized-ammonia", "temprature=20"],
                 2,
                 "`un-ionized-ammonia` has no key `temprature`; did you mean `temperature`?",

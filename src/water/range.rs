@@ -85,7 +85,7 @@ impl fmt::Display for Range {
             (true, true) => write!(f, "more than {low} to {high}{unit}"),
             (true, false) => write!(f, "more than {low}{unit}"),
             (false, true) => write!(f, "{low} to {high}{unit}"),
-            (false, false) => write!(f, "{low}{unit} or more"),
+            (false, false) => write!(f, "at least {low}{unit}"),
         }
     }
 }

@@ -84,7 +84,7 @@ fn given(input: &Input) -> String {
 /// A number with its unit; pH and bare numbers have none to show.
 fn measured(value: f64, unit: &str) -> String {
     match unit {
-        "" | "pH" | "fraction" | "count" | "ratio" => number(value),
+        "" | "pH" | "pK" | "fraction" | "count" | "ratio" | "log10" | "as given" => number(value),
         unit => format!("{} {unit}", number(value)),
     }
 }

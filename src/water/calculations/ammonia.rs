@@ -57,7 +57,7 @@ pub static SUBJECT: Subject = Subject {
         },
         Calculation {
             name: "un-ionized-ammonia-fraction-brackish",
-            help: "the same in brackish water, salinity given",
+            help: "share of total ammonia that is un-ionized, in brackish water",
             unit: "fraction",
             keys: &[TEMPERATURE, PH, SALINITY],
             source: &[EMERSON, SALT],
@@ -68,7 +68,7 @@ pub static SUBJECT: Subject = Subject {
         },
         Calculation {
             name: "un-ionized-ammonia-fraction-activity",
-            help: "the same, corrected for ionic strength: lower by 4 to 13 %",
+            help: "un-ionized share corrected for ionic strength: 4 to 13 % lower",
             unit: "fraction",
             keys: &[
                 TEMPERATURE,

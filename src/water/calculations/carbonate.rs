@@ -53,7 +53,7 @@ pub static SUBJECT: Subject = Subject {
         },
         Calculation {
             name: "carbon-dioxide-mature-water",
-            help: "the same in an old system water, with its phosphate; known to 12 %",
+            help: "carbon dioxide in old system water with its phosphate, to 12 %",
             unit: "mg/L",
             keys: &[
                 CARBONATE_TEMPERATURE,
@@ -70,7 +70,7 @@ pub static SUBJECT: Subject = Subject {
         },
         Calculation {
             name: "carbon-dioxide-brackish",
-            help: "the same in water with salt (NaCl) in it",
+            help: "carbon dioxide in water with salt (NaCl) in it",
             unit: "mg/L",
             keys: &[
                 CARBONATE_TEMPERATURE,
@@ -100,7 +100,7 @@ pub static SUBJECT: Subject = Subject {
         },
         Calculation {
             name: "carbon-dioxide-zero-ionic-strength",
-            help: "the same with no correction for salts: 2 to 8 % high",
+            help: "carbon dioxide with no correction for salts: 2 to 8 % high",
             unit: "mg/L",
             keys: &[CARBONATE_TEMPERATURE, CARBONATE_PH, ALKALINITY],
             source: &[CONSTANTS],

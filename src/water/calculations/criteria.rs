@@ -53,7 +53,7 @@ pub static SUBJECT: Subject = Subject {
         },
         Calculation {
             name: "ammonia-criterion-acute-1999",
-            help: "the older 1-hour criterion",
+            help: "total ammonia not to pass as a 1-hour mean, older criterion",
             unit: "mg/L as N",
             keys: &[PH, TROUT],
             source: &[SOURCE_1999],
@@ -61,7 +61,7 @@ pub static SUBJECT: Subject = Subject {
         },
         Calculation {
             name: "ammonia-criterion-chronic-1999",
-            help: "the older 30-day criterion",
+            help: "total ammonia not to pass as a 30-day mean, older criterion",
             unit: "mg/L as N",
             keys: &[PH, TEMPERATURE, EARLY_LIFE],
             source: &[SOURCE_1999],

@@ -13,8 +13,8 @@ pub enum Failure {
     UnknownName {
         /// As it was written.
         name: String,
-        /// What was probably meant.
-        nearest: Option<&'static str>,
+        /// What may have been meant.
+        like: Vec<&'static str>,
     },
     /// The calculation has no such key.
     UnknownKey {
@@ -115,8 +115,12 @@ fn or_else(nearest: Option<&str>, otherwise: &str) -> String {
 impl fmt::Display for Failure {
     fn fmt(&self, f: &mut fmt::Formatter<'_>) -> fmt::Result {
         match self {
-            Self::UnknownName { name, nearest } => {
-                let cure = or_else(*nearest, "`gillside water` alone lists what there is");
+            Self::UnknownName { name, like } => {
+                let cure = match like.as_slice() {
+                    [] => "`gillside water` alone lists what there is".to_owned(),
+                    [one] => format!("did you mean `{one}`?"),
+                    some => format!("did you mean one of {}?", some.join(", ")),
+                };
                 write!(f, "there is no calculation `{name}`; {cure}")
             }
             Self::UnknownKey {

@@ -85,7 +85,7 @@ pub static SUBJECT: Subject = Subject {
         },
         Calculation {
             name: "alkalinity-use",
-            help: "alkalinity a day that nitrifying all of that takes: the upper bound",
+            help: "alkalinity that nitrifying all of a day's feed takes: the upper bound",
             unit: "g CaCO3/day",
             keys: &[FEED, PROTEIN],
             source: &[TIMMONS, EBELING],

@@ -101,15 +101,26 @@ pub fn listed() -> impl Iterator<Item = &'static Calculation> {
 /// The calculation of this name; hyphens, underscores and case are alike.
 ///
 /// # Errors
-/// [`Failure::UnknownName`], with the nearest listed name.
+/// [`Failure::UnknownName`], with the listed names that are like it.
 pub fn find(name: &str) -> Result<&'static Calculation, Failure> {
     let wanted = inputs::underscored(name).replace('_', "-");
     all()
         .find(|c| c.name == wanted)
         .ok_or_else(|| Failure::UnknownName {
             name: name.to_owned(),
-            nearest: crate::fault::nearest(&wanted, listed().map(|c| c.name)),
+            like: like(&wanted),
         })
+}
+
+/// The listed names that have these words in them, or else the nearest one.
+fn like(wanted: &str) -> Vec<&'static str> {
+    let names = || listed().map(|c| c.name);
+    let with_it: Vec<_> = names().filter(|n| n.contains(wanted)).collect();
+    if with_it.is_empty() || wanted.is_empty() {
+        crate::fault::nearest(wanted, names()).into_iter().collect()
+    } else {
+        with_it
+    }
 }
 
 /// What a calculation gave.

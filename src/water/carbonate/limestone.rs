@@ -63,7 +63,7 @@ fn at_ionic_strength(k: &Constants, ppm: f64) -> [f64; 4] {
 /// zero it lays down scale. Calcium in mg/L.
 ///
 /// Source: the saturation index of Langelier 1936 with the constants of Plummer & Busenberg 1982. Pairs of calcium with
-/// bicarbonate are left out: PHREEQC comes out lower by 0.06 in hard water.
+/// bicarbonate are left out: PHREEQC comes out lower by 0.04 in hard water.
 ///
 /// # Errors
 /// [`OutOfRange`].
