@@ -4,6 +4,7 @@ use super::common::{
     ALKALINITY, CARBONATE_PH, CARBONATE_TEMPERATURE, CO2_PPM, CONDUCTIVITY, IONIC_STRENGTH,
     PHOSPHORUS, SALINITY_FOR_IONS, ionic_strength, sample,
 };
+use super::site_values::SiteKey;
 use super::{Calculation, Key, Subject};
 use crate::water::carbonate::{Sample, gas, limestone, mixture, sample as samples};
 use crate::water::range::Range;
@@ -245,8 +246,9 @@ pub static SUBJECT: Subject = Subject {
                 CARBONATE_TEMPERATURE,
                 ph_of("ph_a", "pH of the first water"),
                 alkalinity_of("alkalinity_a", "alkalinity of the first water"),
-                ph_of("ph_b", "pH of the second water"),
-                alkalinity_of("alkalinity_b", "alkalinity of the second water"),
+                ph_of("ph_b", "pH of the second water, the makeup").site(SiteKey::MakeupPh),
+                alkalinity_of("alkalinity_b", "alkalinity of the second water, the makeup")
+                    .site(SiteKey::MakeupAlkalinity),
                 Key::number(
                     "fraction_b",
                     units::FRACTION,

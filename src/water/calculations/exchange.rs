@@ -103,7 +103,11 @@ pub static SUBJECT: Subject = Subject {
                 VOLUME_A,
                 warmth("temperature_a", "temperature of the first water"),
                 VOLUME_B,
-                warmth("temperature_b", "temperature of the second water"),
+                warmth(
+                    "temperature_b",
+                    "temperature of the second water, the makeup",
+                )
+                .site(SiteKey::MakeupTemperature),
             ],
             source: &["heat balance"],
             compute: |i| {

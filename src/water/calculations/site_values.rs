@@ -19,6 +19,10 @@ pub struct SiteValues {
     pub biofilter_area_m2: Option<f64>,
     /// Area of plants, m2.
     pub plant_area_m2: Option<f64>,
+    /// pH of the makeup water.
+    pub makeup_ph: Option<f64>,
+    /// Alkalinity of the makeup water, mg/L as CaCO3.
+    pub makeup_alkalinity: Option<f64>,
     /// Temperature of the makeup water, C.
     pub makeup_temperature: Option<f64>,
 }
@@ -46,6 +50,10 @@ pub enum SiteKey {
     BiofilterArea,
     /// [`SiteValues::plant_area_m2`].
     PlantArea,
+    /// [`SiteValues::makeup_ph`].
+    MakeupPh,
+    /// [`SiteValues::makeup_alkalinity`].
+    MakeupAlkalinity,
     /// [`SiteValues::makeup_temperature`].
     MakeupTemperature,
 }
@@ -64,6 +72,8 @@ impl SiteValues {
             SiteKey::Protein => self.feed_protein_percent,
             SiteKey::BiofilterArea => self.biofilter_area_m2,
             SiteKey::PlantArea => self.plant_area_m2,
+            SiteKey::MakeupPh => self.makeup_ph,
+            SiteKey::MakeupAlkalinity => self.makeup_alkalinity,
             SiteKey::MakeupTemperature => self.makeup_temperature,
         }
     }
