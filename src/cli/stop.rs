@@ -1,0 +1,58 @@
+//! Why a command ended without its answer.
+
+use std::io;
+
+use super::Exit;
+use crate::fault::Fault;
+
+/// Why a command ended early.
+#[derive(Debug)]
+pub(super) enum Stop {
+    /// Asked for in a way that can't be answered.
+    Usage(Fault),
+    /// An input can't be used.
+    Input(Vec<Fault>),
+    /// The rule base can't be used.
+    Rules(Vec<Fault>),
+    /// The answer can't be written.
+    Write(io::Error),
+    /// Whoever reads the answer has read enough.
+    ClosedPipe,
+}
+
+impl Stop {
+    /// How the run ends.
+    pub fn exit(&self) -> Exit {
+        match self {
+            Self::Usage(_) => Exit::Usage,
+            Self::Input(_) => Exit::BadInput,
+            Self::Rules(_) => Exit::BadRules,
+            Self::Write(_) => Exit::Failed,
+            Self::ClosedPipe => Exit::Done,
+        }
+    }
+
+    /// What is to be said about it.
+    pub fn faults(&self) -> Vec<Fault> {
+        match self {
+            Self::Usage(fault) => vec![fault.clone()],
+            Self::Input(faults) | Self::Rules(faults) => faults.clone(),
+            Self::Write(error) => vec![Fault::whole(
+                "unwritable",
+                format!("the answer can't be written: {error}"),
+                "check that there is room where it goes",
+            )],
+            Self::ClosedPipe => Vec::new(),
+        }
+    }
+}
+
+impl From<io::Error> for Stop {
+    fn from(error: io::Error) -> Self {
+        if error.kind() == io::ErrorKind::BrokenPipe {
+            Self::ClosedPipe
+        } else {
+            Self::Write(error)
+        }
+    }
+}
