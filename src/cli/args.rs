@@ -5,6 +5,7 @@ use std::path::PathBuf;
 use clap::{Args, Parser, Subcommand, ValueEnum};
 
 use super::review::ReviewArgs;
+use super::water::WaterArgs;
 
 /// Finds what is most likely wrong with the water of a fish farm, and what to do first.
 ///
@@ -82,4 +83,6 @@ pub(super) enum Color {
 pub(super) enum Command {
     /// Diagnoses from logged readings: what is most likely wrong, and what to do first
     Review(ReviewArgs),
+    /// Makes one calculation about water; alone it lists the calculations there are
+    Water(WaterArgs),
 }

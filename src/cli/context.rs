@@ -10,6 +10,7 @@ use crate::fault::Fault;
 use crate::history::log;
 use crate::knowledge::{self, Knowledge};
 use crate::site::{self, Known, Site};
+use crate::water::calculations::SiteValues;
 
 /// The rule base, the site, the clock.
 #[derive(Debug)]
@@ -70,6 +71,28 @@ impl Context {
         match self.site_file.as_deref().and_then(Path::parent) {
             Some(folder) => folder.join(path),
             None => path.to_path_buf(),
+        }
+    }
+
+    /// What the site knows, for single calculations.
+    pub fn site_values(&self) -> SiteValues {
+        let site = &self.site;
+        let per_m3 = |kind: &str| {
+            let media = self.knowledge.media.iter().find(|m| m.id == kind)?;
+            Some(media.area_m2_per_l * 1000.0)
+        };
+        SiteValues {
+            salinity: None,
+            elevation_m: site.elevation_m,
+            volume_l: site.volume_l,
+            biomass_kg: site.biomass_kg,
+            feed_kg_per_day: site.feed_kg_per_day,
+            feed_protein_percent: site.feed_protein_percent,
+            biofilter_area_m2: site.biofilter_area(per_m3).map(|area| area.m2),
+            plant_area_m2: site.plant_area_m2,
+            makeup_ph: site.makeup.ph,
+            makeup_alkalinity: site.makeup.alkalinity,
+            makeup_temperature: site.makeup.temperature,
         }
     }
 }

@@ -10,16 +10,19 @@ mod output;
 mod replay;
 mod review;
 mod stop;
+pub mod water;
 
 use std::ffi::OsString;
 
 use clap::Parser;
 use clap::error::ErrorKind;
 
-use args::{Command, Options};
+use args::{Command, Common, Format, Options};
+use context::{Context, only};
 pub use exit::Exit;
 use output::Output;
 use stop::Stop;
+use water::{WaterArgs, WaterFormat};
 
 /// Parses the arguments, runs one command, and says how it ended. Everything that is printed is printed in here.
 pub fn run(args: impl IntoIterator<Item = OsString>) -> Exit {
@@ -30,6 +33,7 @@ pub fn run(args: impl IntoIterator<Item = OsString>) -> Exit {
     let mut output = Output::new(options.common.color);
     let ended = match &options.command {
         Command::Review(args) => review::run(args, &options.common, &mut output),
+        Command::Water(args) => calculate(args, &options.common, &mut output),
     };
     let ended = ended.and_then(|exit| output.finish().map(|()| exit));
     match ended {
@@ -40,6 +44,20 @@ pub fn run(args: impl IntoIterator<Item = OsString>) -> Exit {
             stop.exit()
         }
     }
+}
+
+/// `gillside water`, with what the site knows.
+fn calculate(args: &WaterArgs, common: &Common, output: &mut Output) -> Result<Exit, Stop> {
+    only(common.format, "water", &[Format::Text, Format::Json])?;
+    let format = match common.format {
+        Format::Json => WaterFormat::Json,
+        _ => WaterFormat::Text,
+    };
+    let context = Context::load(common)?;
+    let mut text = Vec::new();
+    water::run(args, format, &context.site_values(), &mut text).map_err(Stop::Water)?;
+    output.write(&String::from_utf8_lossy(&text))?;
+    Ok(Exit::Done)
 }
 
 /// Help and version are answers; anything else is wrong usage.

@@ -66,7 +66,10 @@ impl Output {
 
     /// Says on standard error why there is no answer.
     pub fn complain(&self, stop: &Stop) {
-        let text = faults(&stop.faults(), self.colored(io::stderr().is_terminal()));
+        let text = match stop.message() {
+            Some(message) => format!("error: {message}\n"),
+            None => faults(&stop.faults(), self.colored(io::stderr().is_terminal())),
+        };
         // Nobody is left to tell when standard error is gone too.
         let _ = io::stderr().write_all(text.as_bytes());
     }

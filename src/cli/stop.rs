@@ -3,6 +3,7 @@
 use std::io;
 
 use super::Exit;
+use super::water::WaterError;
 use crate::fault::Fault;
 
 /// Why a command ended early.
@@ -14,6 +15,8 @@ pub(super) enum Stop {
     Input(Vec<Fault>),
     /// The rule base can't be used.
     Rules(Vec<Fault>),
+    /// A calculation gives no number; the message holds its cure.
+    Water(WaterError),
     /// The answer can't be written.
     Write(io::Error),
     /// Whoever reads the answer has read enough.
@@ -27,8 +30,21 @@ impl Stop {
             Self::Usage(_) => Exit::Usage,
             Self::Input(_) => Exit::BadInput,
             Self::Rules(_) => Exit::BadRules,
+            Self::Water(error) => match error.exit_status() {
+                1 => Exit::Failed,
+                2 => Exit::Usage,
+                _ => Exit::BadInput,
+            },
             Self::Write(_) => Exit::Failed,
             Self::ClosedPipe => Exit::Done,
+        }
+    }
+
+    /// The whole of what is to be said, where it is no fault with a place.
+    pub fn message(&self) -> Option<String> {
+        match self {
+            Self::Water(error) => Some(error.to_string()),
+            _ => None,
         }
     }
 
@@ -42,7 +58,7 @@ impl Stop {
                 format!("the answer can't be written: {error}"),
                 "check that there is room where it goes",
             )],
-            Self::ClosedPipe => Vec::new(),
+            Self::Water(_) | Self::ClosedPipe => Vec::new(),
         }
     }
 }
