@@ -1,14 +1,7 @@
 //! The gillside command: parse, run one command, map the outcome to an exit status.
 
-use gillside::knowledge;
+use std::process::ExitCode;
 
-fn main() {
-    let t = std::time::Instant::now();
-    match knowledge::load(&knowledge::embedded(), &[]) {
-        Ok(k) => {
-            println!("{} findings {} causes {} steps in {:?}", k.findings.len(), k.causes.len(), k.steps.len(), t.elapsed());
-            for f in knowledge::check(&k) { println!("{f}"); }
-        }
-        Err(faults) => for f in faults { println!("{f}"); }
-    }
+fn main() -> ExitCode {
+    gillside::cli::run(std::env::args_os()).into()
 }

@@ -1,6 +1,6 @@
 //! Puts a diagnosis together: facts, causes, verdict, steps, what is missing, cautions.
 
-use super::routine::{missing, overdue};
+use super::routine::{Overdue, missing, overdue};
 use super::{
     Assessment, Avoid, CauseReport, Derived, Missing, StepReport, Tell, VerifyReport,
 };
@@ -41,6 +41,8 @@ pub struct Assessor<'k> {
     site: Site,
     limits: Limits<'k>,
     doctor: Doctor<'k>,
+    /// What is taken for now where that is later than what is known; unix seconds.
+    present: i64,
 }
 
 impl<'k> Assessor<'k> {
@@ -51,7 +53,20 @@ impl<'k> Assessor<'k> {
             site: site.clone(),
             limits: Limits::new(knowledge, site),
             doctor: Doctor::new(knowledge, occasion),
+            present: i64::MIN,
         }
+    }
+
+    /// Judges what is due at this time (unix seconds) when it is later than the moment that is assessed.
+    #[must_use]
+    pub fn at(mut self, present: i64) -> Self {
+        self.present = present;
+        self
+    }
+
+    fn overdue(&self, engine: &Engine<'k>) -> Vec<Overdue> {
+        let present = self.present.max(engine.memory().now());
+        overdue(self.knowledge, engine.memory(), present)
     }
 
     /// The rule base.
@@ -77,7 +92,7 @@ impl<'k> Assessor<'k> {
     /// Ranking and verdict as the facts stand.
     pub fn review(&self, engine: &Engine<'k>) -> Review<'k> {
         let ranking = self.doctor.rank(engine);
-        let due = !overdue(self.knowledge, engine.memory()).is_empty();
+        let due = !self.overdue(engine).is_empty();
         let decision = self.doctor.decide(engine, &ranking, due);
         Review { ranking, decision }
     }
@@ -282,7 +297,7 @@ impl<'k> Assessor<'k> {
     }
 
     fn missing(&self, ground: &Ground<'_, 'k>, told: &Told) -> Vec<Missing> {
-        let mut list = missing(ground, &overdue(self.knowledge, ground.engine.memory()));
+        let mut list = missing(ground, &self.overdue(ground.engine));
         if ground.decision.verdict == crate::diagnosis::Verdict::Steady {
             return list;
         }

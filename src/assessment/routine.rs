@@ -23,10 +23,11 @@ pub(super) struct Overdue {
     pub every: i64,
 }
 
-/// The overdue readings among those that "steady" rests on.
+/// The readings among those that "steady" rests on that are overdue at `present`, unix seconds.
 pub(super) fn overdue(
     knowledge: &crate::knowledge::Knowledge,
     memory: &crate::history::memory::Memory,
+    present: i64,
 ) -> Vec<Overdue> {
     STEADY_NEEDS
         .iter()
@@ -39,7 +40,7 @@ pub(super) fn overdue(
                 .map(|r| r.every)
                 .min()?;
             let last = memory.reading(reading)?.newest().and_then(|s| s.last());
-            let age = last.map(|(time, _)| memory.now() - time);
+            let age = last.map(|(time, _)| present - time);
             age.is_none_or(|age| age > every).then_some(Overdue {
                 reading,
                 age,

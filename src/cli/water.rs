@@ -5,7 +5,7 @@ mod page;
 use std::fmt;
 use std::io::{self, Write};
 
-use clap::{Args, ValueEnum};
+use clap::Args;
 use serde_json::{Map, Value as Json, json};
 
 use crate::water::calculations::{self, Answer, Failure, Origin, SiteValues, Value};
@@ -21,16 +21,12 @@ pub struct WaterArgs {
     /// What is known, as key=value, such as temperature=24 ph=7.2
     #[arg(value_name = "KEY=VALUE")]
     pub inputs: Vec<String>,
-    /// How to print the answer
-    #[arg(long, value_enum, default_value_t = WaterFormat::Text)]
-    pub format: WaterFormat,
 }
 
 /// How an answer is printed.
-#[derive(Debug, Clone, Copy, Default, PartialEq, Eq, ValueEnum)]
+#[derive(Debug, Clone, Copy, PartialEq, Eq)]
 pub enum WaterFormat {
     /// For a person
-    #[default]
     Text,
     /// For a program
     Json,
@@ -82,8 +78,13 @@ impl From<io::Error> for WaterError {
 ///
 /// # Errors
 /// [`WaterError`], with its exit status.
-pub fn run(args: &WaterArgs, site: &SiteValues, out: &mut dyn Write) -> Result<(), WaterError> {
-    let text = match (&args.name, args.format) {
+pub fn run(
+    args: &WaterArgs,
+    format: WaterFormat,
+    site: &SiteValues,
+    out: &mut dyn Write,
+) -> Result<(), WaterError> {
+    let text = match (&args.name, format) {
         (None, WaterFormat::Text) => page::list(),
         (None, WaterFormat::Json) => format!("{}\n", list_json()),
         (Some(name), format) => {
@@ -153,10 +154,9 @@ mod tests {
         let args = WaterArgs {
             name: words.first().map(|w| (*w).to_owned()),
             inputs: words.iter().skip(1).map(|w| (*w).to_owned()).collect(),
-            format,
         };
         let mut out = Vec::new();
-        run(&args, site, &mut out).map_err(|e| (e.exit_status(), e.to_string()))?;
+        run(&args, format, site, &mut out).map_err(|e| (e.exit_status(), e.to_string()))?;
         Ok(String::from_utf8_lossy(&out).into_owned())
     }
 

@@ -1,1 +1,15 @@
-//! The `render` room (see the map in the crate's documentation).
+//! The `render` room: text and JSON of the values of [`crate::assessment`] and of faults. It computes nothing.
+
+pub mod json;
+mod evidence;
+mod fault;
+mod look;
+mod replay;
+mod report;
+mod units;
+mod when;
+
+pub use fault::faults;
+pub use look::Look;
+pub use replay::line as replay_line;
+pub use report::Report;

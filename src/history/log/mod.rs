@@ -30,6 +30,7 @@ mod whole;
 mod words;
 
 pub use input::Input;
+pub use moment::read_time;
 pub use problem::{Effect, Problem};
 pub use row::{PlaceId, Row, Value};
 pub use stream::{Stream, Summary};

@@ -5,7 +5,7 @@ use jiff::civil::{Date, DateTime};
 use jiff::tz::{AmbiguousOffset, Offset, TimeZone};
 
 use super::problem::Trouble;
-use crate::fault::shown;
+use crate::fault::{Fault, shown};
 
 /// Within this many seconds of a change of offset the zone is asked each time. More than the largest change there
 /// has been (a whole day, where an island crossed the date line).
@@ -30,6 +30,18 @@ impl Moment {
                 _ => first,
             },
         }
+    }
+}
+
+/// A time as logs write it, in unix seconds; where it states no offset it is local time in `zone`, and of an hour that
+/// the clocks showed twice the first is meant.
+///
+/// # Errors
+/// A fault without a place: not a time, or one that was never on the clock.
+pub fn read_time(text: &str, zone: &TimeZone) -> Result<i64, Fault> {
+    match Clock::new(zone.clone()).read(text.trim()) {
+        Ok(moment) => Ok(moment.not_before(None)),
+        Err(trouble) => Err(Fault::whole(trouble.code, trouble.reason, trouble.cure)),
     }
 }
 

@@ -19,6 +19,19 @@ pub enum Effect {
     Noted,
 }
 
+impl Effect {
+    /// In a word, for programs.
+    pub fn word(self) -> &'static str {
+        match self {
+            Self::RowRefused => "row-refused",
+            Self::CellSkipped => "cell-skipped",
+            Self::ColumnSkipped => "column-skipped",
+            Self::KeptAsOdd => "kept-as-odd",
+            Self::Noted => "noted",
+        }
+    }
+}
+
 /// One problem in a log.
 #[derive(Debug, Clone, PartialEq, Eq)]
 pub struct Problem {

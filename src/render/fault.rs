@@ -1,0 +1,61 @@
+//! Faults for a person: where, the line with what is meant underlined, the reason, the cure.
+
+use std::fmt::Write as _;
+
+use console::Style;
+
+use crate::fault::{Fault, shown};
+
+/// All faults of one run; empty for none.
+pub fn faults(faults: &[Fault], color: bool) -> String {
+    let mut text = String::new();
+    for fault in faults {
+        one(&mut text, fault, color);
+    }
+    text
+}
+
+fn one(text: &mut String, fault: &Fault, color: bool) {
+    let style = |s: Style| s.force_styling(color);
+    let red = style(Style::new().red().bold());
+    let blue = style(Style::new().blue());
+    // Writing into a string can't fail.
+    let _ = writeln!(text, "{}: {} [{}]", red.apply_to("error"), fault.reason, fault.code);
+    if let Some(place) = &fault.place {
+        let file = shown(&place.file);
+        let _ = writeln!(text, "  {} {file}:{}:{}", blue.apply_to("at"), place.line, place.column);
+        let (line, from, width) = window(&place.excerpt, place.column, place.width);
+        if !line.is_empty() {
+            let number = place.line.to_string();
+            let pad = " ".repeat(number.len());
+            let bar = blue.apply_to("|");
+            let _ = writeln!(text, "  {} {bar} {line}", blue.apply_to(&number));
+            let carets = "^".repeat(width);
+            let _ = writeln!(text, "  {pad} {bar} {}{}", " ".repeat(from), red.apply_to(carets));
+        }
+    }
+    let _ = writeln!(text, "  {} {}", blue.apply_to("so"), fault.cure);
+}
+
+/// Characters of a line that are shown around what is meant.
+const SHOWN: usize = 76;
+
+/// The part of a line around what is meant, safe for a terminal, with how far in and how wide that is there.
+fn window(line: &str, column: usize, width: usize) -> (String, usize, usize) {
+    let at = column.saturating_sub(1);
+    let skip = if at + width > SHOWN { at.saturating_sub(SHOWN / 3) } else { 0 };
+    let mut out = if skip > 0 { "…".to_owned() } else { String::new() };
+    let mut from = out.chars().count() + at.saturating_sub(skip);
+    let mut end = out.chars().count();
+    for c in line.chars().skip(skip).take(SHOWN) {
+        // One character stays one column, so that the carets stand under what they mean.
+        out.push(if c.is_control() { ' ' } else { c });
+        end += 1;
+    }
+    if line.chars().count() > skip + SHOWN {
+        out.push('…');
+    }
+    from = from.min(end);
+    let width = width.clamp(1, end.saturating_sub(from).max(1));
+    (out, from, width)
+}

@@ -1,0 +1,48 @@
+//! Numbers with their units, as the farm's people read them. The one place where a value becomes words.
+
+use crate::site::Units;
+use crate::vocabulary::Reading;
+use crate::water::units;
+
+/// A value of a reading with its unit, in the units of the site: `22.1 C`, `0.05 mg/L as N`, `6.9`.
+pub fn amount(reading: &Reading, value: f64, system: Units) -> String {
+    let (number, unit) = converted(reading, value, system);
+    with_unit(&number_of(reading, number), unit)
+}
+
+/// Two values of a reading with one unit: `24.0 to 17.0 C`.
+pub fn from_to(reading: &Reading, from: f64, to: f64, system: Units) -> String {
+    let (from, _) = converted(reading, from, system);
+    let (to, unit) = converted(reading, to, system);
+    let from = number_of(reading, from);
+    with_unit(&format!("{from} to {}", number_of(reading, to)), unit)
+}
+
+fn converted(reading: &Reading, value: f64, system: Units) -> (f64, &str) {
+    if system == Units::Us
+        && let Some(unit) = units::us(&reading.id)
+        && let Ok(value) = units::from_canonical(&reading.id, unit, value)
+    {
+        return (value, unit);
+    }
+    (value, &reading.unit)
+}
+
+/// As many decimals as the reading has; a small number that would round to nothing keeps two figures.
+fn number_of(reading: &Reading, value: f64) -> String {
+    let text = format!("{value:.*}", reading.decimals);
+    let nothing = text.trim_start_matches('-').chars().all(|c| matches!(c, '0' | '.'));
+    if nothing && value != 0.0 {
+        #[allow(clippy::cast_possible_truncation, clippy::cast_sign_loss)] // clamped
+        let decimals = (1.0 - value.abs().log10().floor()).clamp(0.0, 9.0) as usize;
+        return format!("{value:.decimals$}");
+    }
+    if nothing { text.trim_start_matches('-').to_owned() } else { text }
+}
+
+fn with_unit(number: &str, unit: &str) -> String {
+    match unit {
+        "" | "pH" | "count" => number.to_owned(),
+        unit => format!("{number} {unit}"),
+    }
+}
