@@ -15,13 +15,14 @@ const LARGEST: u64 = 1_000_000;
 pub fn load(path: &Path, known: &Known<'_>) -> (Site, Vec<Fault>) {
     match open(path) {
         Ok(source) => read(&source, known),
-        Err(fault) => (Site::default(), vec![fault]),
+        Err(fault) => (Site::default(), vec![*fault]),
     }
 }
 
-fn open(path: &Path) -> Result<Source, Fault> {
+fn open(path: &Path) -> Result<Source, Box<Fault>> {
     let name = path.display().to_string();
-    let unreadable = |reason: String, cure: &str| Fault::whole("unreadable", reason, cure);
+    let unreadable =
+        |reason: String, cure: &str| Box::new(Fault::whole("unreadable", reason, cure));
     let about = std::fs::metadata(path).map_err(|e| {
         unreadable(
             format!(
@@ -58,13 +59,13 @@ fn open(path: &Path) -> Result<Source, Fault> {
             let good = error.utf8_error().valid_up_to();
             let text = String::from_utf8_lossy(error.as_bytes()).into_owned();
             let source = Source::new(name, text);
-            Err(Fault::at(
+            Err(Box::new(Fault::at(
                 &source,
                 good..good + 1,
                 "not-utf8",
                 "the site file is not UTF-8 text here",
                 "save the file as UTF-8",
-            ))
+            )))
         }
     }
 }

@@ -89,7 +89,7 @@ impl Default for Site {
             log: None,
             incidents: None,
             timezone: TimeZone::UTC,
-            units: Units::default(),
+            units: Units::Metric,
             species: Vec::new(),
             crops: Vec::new(),
             started: None,

@@ -38,7 +38,7 @@ fn walk(root: &mut Section<'_>, known: &Known<'_>) -> Site {
         log: inside(root, "log"),
         incidents: inside(root, "incidents"),
         timezone: timezone(root).unwrap_or(TimeZone::UTC),
-        units: texts::one_of(root, "units", Units::WORDS, Units::of).unwrap_or_default(),
+        units: texts::one_of(root, "units", Units::WORDS, Units::of).unwrap_or(Units::Metric),
         species: lists::known(root, "species", known.species),
         crops: lists::each_of(root, "crops", Crop::WORDS, Crop::of),
         started: started(root),

@@ -39,7 +39,7 @@ impl Feed {
     /// Opens a log and reads its head.
     pub fn open(file: u16, input: Input, desk: &mut Desk<'_>) -> Result<Self, Vec<Fault>> {
         let name = input.name();
-        let mut records = Records::new(Lines::new(input.open().map_err(|f| vec![f])?));
+        let mut records = Records::new(Lines::new(input.open().map_err(|f| vec![*f])?));
         let (form, columns) = Self::head(file, &name, &mut records, desk)?;
         let comma_allowed = matches!(&form, Form::Table(table) if table.separator != b',');
         Ok(Self {
@@ -66,7 +66,7 @@ impl Feed {
     ) -> Result<(Form, Vec<Column>), Vec<Fault>> {
         let at_line =
             |line, text: &str, at, trouble| vec![head::fault(name, line, text, at, 1, trouble)];
-        let unreadable = |e: io::Error| vec![read_failed(name, &e)];
+        let unreadable = |e: io::Error| vec![*read_failed(name, &e)];
         let separator = match records.next().map_err(unreadable)? {
             Record::End => {
                 let trouble = Trouble::new(
@@ -117,7 +117,7 @@ impl Feed {
     }
 
     /// The next row, later than or as late as the one before; `None` at the end.
-    pub fn next(&mut self, desk: &mut Desk<'_>) -> Result<Option<Draft>, Fault> {
+    pub fn next(&mut self, desk: &mut Desk<'_>) -> Result<Option<Draft>, Box<Fault>> {
         loop {
             if let Some(draft) = self.order.pop() {
                 return Ok(Some(draft));
@@ -129,7 +129,7 @@ impl Feed {
         }
     }
 
-    fn read_one(&mut self, desk: &mut Desk<'_>) -> Result<(), Fault> {
+    fn read_one(&mut self, desk: &mut Desk<'_>) -> Result<(), Box<Fault>> {
         let record = match self.records.next() {
             Ok(record) => record,
             Err(error) => {
@@ -229,10 +229,10 @@ fn nothing_in(text: &str, separator: u8) -> bool {
         .all(|b| b == separator || b.is_ascii_whitespace())
 }
 
-fn read_failed(name: &str, error: &io::Error) -> Fault {
-    Fault::whole(
+fn read_failed(name: &str, error: &io::Error) -> Box<Fault> {
+    Box::new(Fault::whole(
         "read-failed",
         format!("`{name}` can't be read further: {}", plain_io(error)),
         "check the disk or the connection, and try again",
-    )
+    ))
 }

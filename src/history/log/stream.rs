@@ -114,7 +114,7 @@ impl<'a> Stream<'a> {
     ///
     /// # Errors
     /// A log can't be read further (a broken disk, say).
-    pub fn next_row(&mut self, row: &mut Row) -> Result<bool, Fault> {
+    pub fn next_row(&mut self, row: &mut Row) -> Result<bool, Box<Fault>> {
         if !self.started {
             self.started = true;
             for index in 0..self.feeds.len() {
@@ -143,7 +143,7 @@ impl<'a> Stream<'a> {
     }
 
     /// Gets the next row of a feed; one that is later than `as_of` ends it.
-    fn advance(&mut self, index: usize) -> Result<(), Fault> {
+    fn advance(&mut self, index: usize) -> Result<(), Box<Fault>> {
         let Some(feed) = self.feeds.get_mut(index) else {
             return Ok(());
         };
