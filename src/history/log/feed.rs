@@ -2,7 +2,7 @@
 
 use std::io;
 
-use super::columns::Column;
+use super::columns::{Column, Holds};
 use super::desk::{Desk, Spot};
 use super::draft::{Draft, Means};
 use super::head;
@@ -16,6 +16,7 @@ use super::problem::{Effect, Trouble};
 use super::records::{Record, Records};
 use super::table::{Table, Written};
 use crate::fault::{Fault, plain_io};
+use crate::vocabulary::ReadingId;
 
 enum Form {
     Table(Table),
@@ -111,6 +112,13 @@ impl Feed {
         self.columns.get(index)
     }
 
+    /// The name of the column that has a reading.
+    pub fn name_of(&self, reading: ReadingId) -> Option<&str> {
+        let mut columns = self.columns.iter();
+        let found = columns.find(|c| matches!(&c.holds, Holds::Reading(m) if m.reading == reading));
+        found.map(|c| c.name.as_str())
+    }
+
     /// Takes a row back for its buffers.
     pub fn done_with(&mut self, draft: Draft) {
         self.order.done_with(draft);
@@ -176,17 +184,14 @@ impl Feed {
                 objects.row(written, &mut self.columns, &mut draft, &mut means)
             }
         };
-        if good {
-            draft.complete();
+        if good && let Some((column, trouble)) = draft.lacks() {
+            good = false;
             let spot = Spot {
                 file: self.file,
                 line: written.line,
                 at: 1,
             };
-            for (trouble, effect) in draft.troubles.drain(..) {
-                good = false;
-                desk.tell(spot, Some("time"), trouble, effect);
-            }
+            desk.tell(spot, Some(column), trouble, Effect::RowRefused);
         }
         match draft.moment {
             Some(moment) if good => {
