@@ -14,6 +14,7 @@
 //! | [`engine`] | forward chaining: tests, facts, findings, the proof of every fact |
 //! | [`diagnosis`] | joint ranking of causes, the balance sheet, what to measure next |
 //! | [`course`] | ranked steps, paced corrections, projections |
+//! | [`assessment`] | causes, steps and cautions put together: the value that a page shows |
 //! | [`render`] | text and JSON of the values above |
 //! | [`cli`] | one file a command: arguments in, a call, a page out |
 
@@ -25,6 +26,7 @@ pub mod engine;
 pub mod fault;
 pub mod history;
 pub mod knowledge;
+pub mod assessment;
 pub mod render;
 pub mod site;
 pub mod vocabulary;

@@ -1,1 +1,5 @@
-//! The `course` room (see the map in the crate's documentation).
+//! What to do: steps ranked by most good for least harm, what to leave alone, first aid, cautions.
+
+mod advice;
+
+pub use advice::{Advice, Advised, Ground, Warned, advise};

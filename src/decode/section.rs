@@ -6,7 +6,7 @@ use std::ops::Range;
 use toml::de::DeTable;
 
 use super::Node;
-use crate::fault::{Fault, Source, did_you_mean};
+use crate::fault::{Fault, Place, Source, did_you_mean};
 
 /// A table of a source. Ask for every key it may have, then call [`Section::finish`].
 pub struct Section<'t> {
@@ -39,6 +39,11 @@ impl<'t> Section<'t> {
     /// Where the table is.
     pub fn span(&self) -> Range<usize> {
         self.span.clone()
+    }
+
+    /// Where the table is written, for messages about it later.
+    pub fn place(&self) -> Option<Place> {
+        Fault::at(self.source, self.span(), "", "", "").place
     }
 
     /// The key the table stands under; empty for the whole file.

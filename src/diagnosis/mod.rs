@@ -1,1 +1,94 @@
-//! The `diagnosis` room (see the map in the crate's documentation).
+//! What is most likely wrong: joint ranking of causes, the balance sheet, the verdict, and what would tell most.
+//!
+//! `evidence` is the table of what may be seen and how often under which cause, `odds` what is likelier beforehand,
+//! `rank` scores sets of causes, `verdict` decides what the ranking and the direct dangers ask for, `sheet` says what
+//! speaks for and against, `tell` what would tell most. This room never prints and never reads a clock.
+
+mod evidence;
+mod odds;
+mod rank;
+mod sheet;
+mod tell;
+mod verdict;
+
+use crate::engine::{Degree, Engine, Limits};
+use crate::knowledge::{CauseId, Knowledge};
+use crate::site::Site;
+
+pub use evidence::{Item, Table};
+pub use rank::{Ranking, Scored};
+pub use sheet::{Books, Piece};
+pub use tell::Told;
+pub use verdict::{Decision, Verdict};
+
+/// Diagnoses farms of one rule base.
+#[derive(Debug, Clone)]
+pub struct Doctor<'k> {
+    knowledge: &'k Knowledge,
+    table: Table,
+}
+
+impl<'k> Doctor<'k> {
+    /// A doctor who knows this rule base.
+    pub fn new(knowledge: &'k Knowledge) -> Self {
+        Self {
+            knowledge,
+            table: Table::new(knowledge),
+        }
+    }
+
+    /// How true every piece of evidence is.
+    pub fn degrees(&self, engine: &Engine<'_>) -> Vec<Degree> {
+        self.table.degrees(engine)
+    }
+
+    /// Ranks the causes. `incident` is how likely it is beforehand that anything is wrong.
+    pub fn rank(&self, engine: &Engine<'_>, incident: f64) -> Ranking {
+        rank::rank(
+            &self.table,
+            &self.degrees(engine),
+            &odds::log_odds(self.knowledge, engine, incident),
+            self.knowledge.scales.second_cause,
+            self.knowledge.scales.evidence,
+        )
+    }
+
+    /// Decides what the ranking and the direct dangers ask for. `due`: routine readings are overdue.
+    pub fn decide(&self, engine: &Engine<'k>, ranking: &Ranking, due: bool) -> Decision<'k> {
+        verdict::decide(self.knowledge, engine, ranking, due)
+    }
+
+    /// What would tell most.
+    pub fn tell(&self, engine: &Engine<'_>, ranking: &Ranking) -> Told {
+        tell::tell(self.knowledge, engine, &self.table, &self.degrees(engine), ranking)
+    }
+
+    /// The books from which balance sheets are drawn up.
+    pub fn books<'a>(
+        &'a self,
+        engine: &'a Engine<'k>,
+        site: &'a Site,
+        limits: &'a Limits<'k>,
+        ranking: &'a Ranking,
+    ) -> Books<'a, 'k> {
+        Books {
+            knowledge: self.knowledge,
+            engine,
+            site,
+            limits,
+            table: &self.table,
+            degrees: self.degrees(engine),
+            ranking,
+        }
+    }
+
+    /// The probability that a cause of this family is there.
+    pub fn family(&self, ranking: &Ranking, family: &str) -> f64 {
+        verdict::family(self.knowledge, ranking, family)
+    }
+
+    /// The probability that one of these causes is there.
+    pub fn any_of(ranking: &Ranking, causes: &[CauseId]) -> f64 {
+        verdict::any_of(ranking, causes)
+    }
+}

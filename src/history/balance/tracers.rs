@@ -1,0 +1,90 @@
+//! Dilution or consumption? What nothing eats (chloride, sodium, conductivity less what nitrate explains) falls only
+//! when water is replaced. And how much alkalinity was used against what the load should use.
+
+use super::{Farm, Pending, Water, put};
+use crate::history::memory::{DAY, Series};
+use crate::vocabulary::ReadingId;
+use crate::water::feed;
+
+/// The window over which tracers and nitrate are compared.
+const WINDOW: i64 = 10 * DAY;
+/// uS/cm of each mg/L nitrate-N with its counter-ion, near 25 C: nitrate 71.4 S cm2/mol (CRC Handbook; from memory) and
+/// about as much for potassium or calcium beside it.
+const CONDUCTIVITY_OF_NITRATE: f64 = 9.0;
+
+pub(super) fn update(water: &Water<'_>, farm: &Farm, pending: &mut Pending) {
+    let ids = water.ids;
+    if water.changed(&[
+        ids.nitrate,
+        ids.chloride,
+        ids.conductivity,
+        ids.sodium,
+        ids.salinity,
+    ]) {
+        let nitrate = fall(water, ids.nitrate);
+        put(
+            pending,
+            ids.nitrate_fall_share,
+            0,
+            nitrate.map(|(share, _)| share),
+        );
+        let tracer = fall(water, ids.chloride)
+            .or_else(|| fall(water, ids.sodium))
+            .map(|(share, _)| share)
+            .or_else(|| without_nitrate(water))
+            .or_else(|| fall(water, ids.salinity).map(|(share, _)| share));
+        put(pending, ids.tracer_fall_share, 0, tracer);
+    }
+    if water.just_read(ids.alkalinity) {
+        put(
+            pending,
+            ids.alkalinity_use_ratio,
+            0,
+            alkalinity_use(water, farm),
+        );
+    }
+}
+
+/// By which share a reading fell over the window (negative: it rose), and its level before.
+fn fall(water: &Water<'_>, id: Option<ReadingId>) -> Option<(f64, f64)> {
+    let series = series(water, id)?;
+    let shift = series.shift(WINDOW)?;
+    // A tracer measured long ago tells nothing of the present window.
+    let (time, _) = series.last()?;
+    let told = water.memory.now() - time <= WINDOW / 2 && shift.span >= DAY / 2;
+    (told && shift.early > 0.0).then(|| (-shift.change / shift.early, shift.early))
+}
+
+fn series<'m>(water: &Water<'m>, id: Option<ReadingId>) -> Option<&'m Series> {
+    water.memory.reading(id?)?.newest()
+}
+
+/// The fall of conductivity less what the fall of nitrate explains, as a share of the rest.
+fn without_nitrate(water: &Water<'_>) -> Option<f64> {
+    let (share, before) = fall(water, water.ids.conductivity)?;
+    let (explained, of) = match fall(water, water.ids.nitrate) {
+        Some((nitrate_share, nitrate)) => (
+            nitrate_share * nitrate * CONDUCTIVITY_OF_NITRATE,
+            nitrate * CONDUCTIVITY_OF_NITRATE,
+        ),
+        None => (0.0, 0.0),
+    };
+    let rest = before - of;
+    (rest > before * 0.25).then(|| (share * before - explained) / rest)
+}
+
+/// Observed loss of alkalinity over what nitrifying the feed's ammonia should use: near 1 where nitrification runs and
+/// nothing gives alkalinity back; low where it has slowed, or where denitrification or base put some back.
+fn alkalinity_use(water: &Water<'_>, farm: &Farm) -> Option<f64> {
+    let shift = series(water, water.ids.alkalinity)?.shift(WINDOW)?;
+    let feed = farm.feed_kg_per_day?;
+    let volume = farm.volume_l?;
+    #[allow(clippy::cast_precision_loss)] // spans are far below 2^53 seconds
+    let days = shift.span as f64 / 86_400.0;
+    /// Protein of feed that nobody stated, percent (common practice).
+    const USUAL_PROTEIN: f64 = 32.0;
+    let use_per_day =
+        feed::alkalinity_use(feed, farm.protein_percent.unwrap_or(USUAL_PROTEIN)).ok()?;
+    let expected = use_per_day * 1000.0 / volume * days;
+    (expected > 0.0 && days >= 1.0).then(|| -shift.change / expected)
+}
