@@ -1,12 +1,13 @@
 //! A site file from the disk.
 
+use std::io::Read;
 use std::path::Path;
 
 use super::{Known, Site, read};
-use crate::fault::{Fault, Source};
+use crate::fault::{Fault, Source, plain_io};
 
 /// Larger than any site file that a person writes.
-const LARGEST: u64 = 1_000_000;
+const LARGEST: u64 = 100_000;
 
 /// Reads the site file at a path.
 ///
@@ -25,10 +26,7 @@ fn open(path: &Path) -> Result<Source, Box<Fault>> {
         |reason: String, cure: &str| Box::new(Fault::whole("unreadable", reason, cure));
     let about = std::fs::metadata(path).map_err(|e| {
         unreadable(
-            format!(
-                "the site file `{name}` can't be opened: {}",
-                crate::fault::plain_io(&e)
-            ),
+            format!("the site file `{name}` can't be opened: {}", plain_io(&e)),
             "check the path, or make a site file with `gillside site`",
         )
     })?;
@@ -38,21 +36,21 @@ fn open(path: &Path) -> Result<Source, Box<Fault>> {
             "name the file inside it, such as `site.toml`",
         ));
     }
-    if about.len() > LARGEST {
+    let mut bytes = Vec::new();
+    let file = std::fs::File::open(path);
+    file.and_then(|file| file.take(LARGEST + 1).read_to_end(&mut bytes))
+        .map_err(|e| {
+            unreadable(
+                format!("the site file `{name}` can't be read: {}", plain_io(&e)),
+                "check that the file may be read",
+            )
+        })?;
+    if bytes.len() as u64 > LARGEST {
         return Err(unreadable(
-            format!("the site file `{name}` has {} bytes", about.len()),
-            "a site file has at most 1000000 bytes; check that the path is right",
+            format!("the site file `{name}` has more than {LARGEST} bytes"),
+            "check that the path is right; a site file is a page or two",
         ));
     }
-    let bytes = std::fs::read(path).map_err(|e| {
-        unreadable(
-            format!(
-                "the site file `{name}` can't be read: {}",
-                crate::fault::plain_io(&e)
-            ),
-            "check that the file may be read",
-        )
-    })?;
     match String::from_utf8(bytes) {
         Ok(text) => Ok(Source::new(name, text.trim_start_matches('\u{feff}'))),
         Err(error) => {

@@ -54,3 +54,16 @@ fn a_whole_table_of_words_is_understood() {
         assert_eq!(series(&log, &reading.id), [Some(5.0)]);
     }
 }
+
+#[test]
+fn too_many_keys_and_too_many_places() {
+    let row = |i: usize| format!("{{\"time\":\"2026-03-02 07:30\",\"key-{i}\":7}}\n");
+    let log = read((0..300).map(row).collect::<String>()).unwrap();
+    // 256 keys, `time` among them; each of the others costs its row.
+    assert_eq!((log.rows_used, log.rows_refused), (255, 45));
+    let row = |i: usize| format!("{{\"time\":\"2026-03-02 07:30\",\"place\":\"p{i}\"}}\n");
+    let log = read((0..1200).map(row).collect::<String>()).unwrap();
+    assert_eq!((log.rows_used, log.rows_refused), (1000, 200));
+    assert_eq!(log.places.len(), 1000);
+    assert!(log.problems.iter().all(|p| p.code == "too-many-places"));
+}

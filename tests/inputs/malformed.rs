@@ -27,7 +27,7 @@ struct Case {
     input: Option<String>,
     /// ... or as bytes in hexadecimal ...
     hex: Option<String>,
-    /// ... or something on the disk: `missing` or `folder`.
+    /// ... or something on the disk: `missing`, `folder` or `large`.
     disk: Option<String>,
     /// Text that is repeated behind the input, and how often.
     repeat: Option<(String, usize)>,
@@ -147,6 +147,11 @@ impl Case {
         };
         let path = match self.disk.as_deref() {
             Some("folder") => folder.to_owned(),
+            Some("large") => {
+                let path = folder.join("large.toml");
+                std::fs::write(&path, "# nothing here\n".repeat(10_000)).unwrap();
+                path
+            }
             Some(_) => folder.join("nothing.toml"),
             None => {
                 let path = folder.join("site.toml");

@@ -123,6 +123,9 @@ impl Order {
     }
 
     fn drop_doubt(&mut self, desk: &mut Desk<'_>) {
+        if self.doubt.is_empty() {
+            return;
+        }
         let reason = self.behind(desk);
         for draft in std::mem::take(&mut self.doubt) {
             self.refuse(draft, reason.clone(), desk);

@@ -22,21 +22,29 @@ pub(super) struct Saturation {
     salt: f64,
     /// The highest percentage that water shows.
     most: f64,
+    /// No water holds less at that percentage: up to here nothing need be worked out.
+    never_too_much: f64,
 }
 
 impl Saturation {
     pub fn new(vocabulary: &Vocabulary, site: &Site) -> Self {
         let temperature = vocabulary.reading("temperature");
         let percent = vocabulary.reading("oxygen-saturation");
+        let most = percent.map_or(f64::INFINITY, |id| vocabulary[id].plausible.1);
+        let kpa = site.elevation_m.and_then(|m| oxygen::pressure_at(m).ok());
+        // Warm and salt water holds least.
+        let (warm, salt) = (oxygen::TEMPERATURE.high, oxygen::SALINITY.high);
+        let least = oxygen::solubility(warm, salt, kpa.unwrap_or(oxygen::SEA_LEVEL_KPA));
         Self {
             temperature,
             salinity: vocabulary.reading("salinity"),
             oxygen: vocabulary.reading("dissolved-oxygen"),
-            kpa: site.elevation_m.and_then(|m| oxygen::pressure_at(m).ok()),
+            kpa,
             latest: None,
             good_for: temperature.map_or(0, |id| vocabulary[id].good_for),
             salt: 0.0,
-            most: percent.map_or(f64::INFINITY, |id| vocabulary[id].plausible.1),
+            most,
+            never_too_much: least.map_or(0.0, |mg| mg * most / 100.0),
         }
     }
 
@@ -78,6 +86,9 @@ impl Saturation {
     /// Why this oxygen, in mg/L, is more than water shows; `None` when it is not, or when nobody can tell. Where the
     /// elevation is not known the sea level stands in, which only ever calls too few values odd.
     pub fn too_much(&self, mg_per_l: f64, now: i64) -> Option<Trouble> {
+        if mg_per_l <= self.never_too_much {
+            return None;
+        }
         let kpa = self.kpa.unwrap_or(oxygen::SEA_LEVEL_KPA);
         let full = oxygen::solubility(self.temperature(now)?, self.salt, kpa).ok()?;
         let percent = 100.0 * mg_per_l / full;
