@@ -1,1 +1,3 @@
 //! The `cli` room (see the map in the crate's documentation).
+
+pub mod water;

@@ -7,6 +7,7 @@
 mod compile;
 mod degree;
 mod leaf;
+mod measure;
 mod proof;
 mod run;
 mod site;
@@ -14,6 +15,7 @@ mod site;
 pub use compile::Program;
 pub use degree::Degree;
 pub use leaf::{Judged, Leaf, Saw};
+pub use measure::{Measured, measure};
 pub use proof::{Proof, prove};
 pub use run::Engine;
 pub use site::Limits;

@@ -22,6 +22,7 @@
 //! | [`chlorine`] | taking chlorine out, and what chloramine leaves |
 //! | [`exchange`] | water exchange and mixing |
 //! | [`respiration`] | oxygen that fish use, and minutes until it runs out |
+//! | [`calculations`] | all of that by name, for `gillside water` and the reference checks |
 //! | [`units`] | the units a number may be given in |
 //! | [`masses`], [`range`], [`roots`] | molar masses; ranges and their error; one root finder |
 
@@ -30,6 +31,7 @@ pub mod ammonia;
 pub mod ammonia_criteria;
 pub mod anthonisen;
 pub mod biofilter;
+pub mod calculations;
 pub mod carbonate;
 pub mod chlorine;
 pub mod exchange;

@@ -66,6 +66,15 @@ pub static SALT_NAMES: &[&str] = &["NaCl", "KCl", "CaCl2", "CaCl2*2H2O", "MgCl2*
 /// Their cations.
 pub static CATIONS: &[&str] = &["sodium", "potassium", "calcium", "magnesium"];
 
+/// The one cation of a salt, as a list.
+pub fn cation_of(salt: &Salt) -> &'static [&'static str] {
+    CATIONS
+        .iter()
+        .position(|c| *c == salt.cation)
+        .and_then(|at| CATIONS.get(at..=at))
+        .unwrap_or(&[])
+}
+
 /// The salt of this formula, spelled in any case, with `*`, `.` or `·` before the water.
 pub fn salt_named(name: &str) -> Option<&'static Salt> {
     let plain = name.replace(['.', '·'], "*");

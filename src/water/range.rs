@@ -68,9 +68,14 @@ impl Range {
     }
 }
 
+/// A number for people: at most four decimals.
+fn short(value: f64) -> f64 {
+    (value * 1e4).round() / 1e4
+}
+
 impl fmt::Display for Range {
     fn fmt(&self, f: &mut fmt::Formatter<'_>) -> fmt::Result {
-        let Self { low, high, .. } = self;
+        let (low, high) = (short(self.low), short(self.high));
         let unit = match self.unit {
             "" | "pH" => String::new(),
             "%" => "%".to_owned(),
@@ -80,7 +85,7 @@ impl fmt::Display for Range {
             (true, true) => write!(f, "more than {low} to {high}{unit}"),
             (true, false) => write!(f, "more than {low}{unit}"),
             (false, true) => write!(f, "{low} to {high}{unit}"),
-            (false, false) => write!(f, "{low}{unit} or more"),
+            (false, false) => write!(f, "at least {low}{unit}"),
         }
     }
 }
@@ -97,7 +102,7 @@ pub struct OutOfRange {
 impl fmt::Display for OutOfRange {
     fn fmt(&self, f: &mut fmt::Formatter<'_>) -> fmt::Result {
         let quantity = self.range.quantity;
-        let value = (self.value * 1e4).round() / 1e4;
+        let value = short(self.value);
         write!(
             f,
             "`{quantity}` is {value}, and this holds for {}",

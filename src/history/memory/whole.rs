@@ -10,6 +10,8 @@ use crate::vocabulary::{EventId, ReadingId, SignId, Vocabulary};
 /// Instruments that read within so many seconds of each other read the same water.
 const TOGETHER: i64 = 15 * 60;
 const ODD_KEPT: usize = 16;
+/// The present of a memory that has seen nothing: long before any log, and far from overflow when windows are taken off.
+const BEFORE_EVERYTHING: i64 = i64::MIN / 4;
 
 /// What is remembered of one reading.
 #[derive(Debug, Clone, Default)]
@@ -108,7 +110,7 @@ impl Memory {
     /// An empty memory for these words.
     pub fn new(vocabulary: &Vocabulary) -> Self {
         Self {
-            now: i64::MIN,
+            now: BEFORE_EVERYTHING,
             begun: None,
             readings: vec![ReadingTrack::default(); vocabulary.readings.len()],
             local: vocabulary.readings.iter().map(|r| r.local).collect(),

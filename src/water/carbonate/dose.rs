@@ -150,7 +150,7 @@ fn unreachable_target(
     let (a, b) = (rounded(sample.ph), rounded(farthest));
     OutOfRange {
         value: target_ph,
-        range: Range::new("target_ph", a.min(b), a.max(b), "pH"),
+        range: Range::new("target_ph", a.min(b), a.max(b), "with this chemical"),
     }
 }
 

@@ -71,6 +71,11 @@ pub static SUBSTANCES: &[Substance] = &[
     },
 ];
 
+/// Names of all.
+pub static NAMES: &[&str] = &[
+    "NaHCO3", "KHCO3", "Na2CO3", "K2CO3", "NaOH", "KOH", "Ca(OH)2", "CaCO3", "MgO", "MgCO3", "HCl",
+    "HNO3", "H2SO4", "H3PO4",
+];
 /// Names of the bases.
 pub static BASES: &[&str] = &[
     "NaHCO3", "KHCO3", "Na2CO3", "K2CO3", "NaOH", "KOH", "Ca(OH)2", "CaCO3", "MgO", "MgCO3",
@@ -95,6 +100,7 @@ mod tests {
             let chosen = SUBSTANCES.iter().filter(|s| s.is_base() == bases);
             chosen.map(|s| s.name).collect()
         };
+        assert_eq!([named(true), named(false)].concat(), NAMES);
         assert_eq!(named(true), BASES);
         assert_eq!(named(false), ACIDS);
     }

@@ -196,6 +196,44 @@ pub static PRESSURE: &[Unit] = &[
 ];
 /// A mass of fish.
 pub static KILOGRAMS: &[Unit] = &[unit("kg", 1.0), unit("g", 1e-3), unit("lb", KG_PER_POUND)];
+/// A mass of one fish.
+pub static GRAMS: &[Unit] = &[
+    unit("g", 1.0),
+    unit("kg", 1e3),
+    unit("lb", 1e3 * KG_PER_POUND),
+];
+/// A mass of something dissolved.
+pub static GRAMS_PER_LITER: &[Unit] = &[unit("g/L", 1.0), unit("mg/L", 1e-3)];
+/// A length of grain.
+pub static MILLIMETERS: &[Unit] = &[unit("mm", 1.0), unit("cm", 10.0), unit("in", 25.4)];
+/// Nitrogen in any form.
+pub static NITROGEN: &[Unit] = &[unit("mg/L as N", 1.0), assuming("mg/L", "as N")];
+/// Amount of substance, small.
+pub static MICROMOLES: &[Unit] = &[unit("umol/L", 1.0), unit("mmol/L", 1e3)];
+/// Amount of substance.
+pub static MILLIMOLES: &[Unit] = &[unit("mmol/L", 1.0), unit("umol/L", 1e-3)];
+/// Exchange of water.
+pub static LITERS_PER_DAY: &[Unit] = &[
+    unit("L/day", 1.0),
+    unit("m3/day", 1e3),
+    unit("gal/day", LITERS_PER_GALLON),
+];
+/// A rate of growth.
+pub static PER_DAY: &[Unit] = &[unit("1/day", 1.0), unit("1/h", 24.0)];
+/// A factor for each degree.
+pub static THETA: &[Unit] = &[unit("1/C", 1.0)];
+/// An activation energy.
+pub static KJ_PER_MOL: &[Unit] = &[unit("kJ/mol", 1.0), unit("J/mol", 1e-3)];
+/// Moles for moles.
+pub static MOLAR_RATIO: &[Unit] = &[unit("mol/mol", 1.0)];
+/// Chloride for nitrite ion.
+pub static CHLORIDE_PER_NITRITE: &[Unit] = &[unit("mg Cl per mg NO2", 1.0)];
+/// Feed for an area of plants.
+pub static FEED_RATE: &[Unit] = &[unit("g/m2/day", 1.0)];
+/// Tank volumes.
+pub static VOLUMES: &[Unit] = &[unit("volumes", 1.0)];
+/// Whatever unit the rest is in.
+pub static ANY: &[Unit] = &[];
 /// Carbon dioxide in air.
 pub static CO2_IN_AIR: &[Unit] = &[unit("ppm", 1.0)];
 /// Ionic strength.

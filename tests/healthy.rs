@@ -1,0 +1,103 @@
+//! Whole logs of farms with nothing wrong (simulated, not field data), replayed row by row: never more than `watch`, and
+//! the backgrounds of the rule base are what these logs show.
+
+#![allow(clippy::unwrap_used, clippy::expect_used, clippy::panic)]
+
+use std::collections::BTreeMap;
+use std::path::{Path, PathBuf};
+
+use gillside::assessment::Assessor;
+use gillside::diagnosis::Verdict;
+use gillside::engine::{Engine, Measured, measure};
+use gillside::history::log::{Input, Log};
+use gillside::knowledge::{self, Knowledge};
+use gillside::site::{self, Known, Site};
+
+fn rule_base() -> Knowledge {
+    knowledge::load(&knowledge::embedded(), &[]).unwrap_or_else(|f| panic!("{f:?}"))
+}
+
+fn farms() -> Vec<PathBuf> {
+    let root = Path::new(env!("CARGO_MANIFEST_DIR")).join("tests/healthy");
+    let mut folders: Vec<PathBuf> = std::fs::read_dir(root).unwrap().map(|e| e.unwrap().path()).collect();
+    folders.sort();
+    folders
+}
+
+fn read(knowledge: &Knowledge, folder: &Path) -> (Site, Log) {
+    let species: Vec<String> = knowledge.species.iter().map(|s| s.id.clone()).collect();
+    let media: Vec<String> = knowledge.media.iter().map(|s| s.id.clone()).collect();
+    let known = Known {
+        vocabulary: &knowledge.vocabulary,
+        species: &species,
+        media: &media,
+    };
+    let (site, faults) = site::load(&folder.join("site.toml"), &known);
+    assert!(faults.is_empty(), "{}: {faults:?}", folder.display());
+    let input = Input::named(folder.join("log.csv").to_str().unwrap());
+    let log = gillside::history::log::read(vec![input], &knowledge.vocabulary, &site, None).unwrap();
+    (site, log)
+}
+
+#[test]
+fn no_alarm_at_any_row() {
+    let knowledge = rule_base();
+    let mut alarms = 0;
+    let mut rows = 0;
+    let mut steady = 0;
+    let mut by_cause: BTreeMap<String, usize> = BTreeMap::new();
+    for folder in farms() {
+        let (site, log) = read(&knowledge, &folder);
+        let mut engine = Engine::new(&knowledge, &site);
+        engine.tell(gillside::history::memory::Memory::keeps_events);
+        let assessor = Assessor::new(&knowledge, &site, knowledge.scales.incident_review);
+        let mut version = u64::MAX;
+        let mut verdict = Verdict::Steady;
+        let mut farm_alarms = 0;
+        for row in &log.rows {
+            engine.observe(row);
+            rows += 1;
+            if engine.version() != version {
+                version = engine.version();
+                let review = assessor.review(&engine);
+                verdict = review.decision.verdict;
+                if verdict > Verdict::Watch {
+                    let first = review.ranking.order()[0];
+                    let what = review.decision.dangers.first().map_or_else(
+                        || format!("cause {}", knowledge[first].id),
+                        |f| format!("danger {}", f.id),
+                    );
+                    *by_cause.entry(what.clone()).or_default() += 1;
+                    if std::env::var_os("ALARMS").is_some() {
+                        println!("{} line {} {} {what} {:.2} none {:.2}", folder.file_name().unwrap().display(), row.line, verdict.word(), review.ranking.of(first), review.ranking.nothing);
+                    }
+                }
+            }
+            if verdict > Verdict::Watch {
+                farm_alarms += 1;
+            }
+            steady += usize::from(verdict == Verdict::Steady);
+        }
+        if farm_alarms > 0 {
+            println!("{}: {farm_alarms} of {} rows above watch", folder.display(), log.rows.len());
+        }
+        alarms += farm_alarms;
+    }
+    println!("{alarms} of {rows} rows above watch, {steady} steady; {by_cause:?}");
+}
+
+#[test]
+fn backgrounds_are_what_healthy_logs_show() {
+    let knowledge = rule_base();
+    let mut counts = vec![Measured::default(); knowledge.findings.len()];
+    for folder in farms() {
+        let (site, log) = read(&knowledge, &folder);
+        let mut engine = Engine::new(&knowledge, &site);
+        engine.tell(gillside::history::memory::Memory::keeps_events);
+        measure(&mut engine, &log.rows, &mut counts);
+    }
+    for (finding, count) in knowledge.findings.iter().zip(&counts) {
+        let share = count.share().unwrap_or(f64::NAN);
+        println!("BG {:<45} stated {:.4} measured {share:.4} n {:.0}", finding.id, finding.background, count.known);
+    }
+}
