@@ -1,8 +1,8 @@
 //! The `render` room: text and JSON of the values of [`crate::assessment`] and of faults. It computes nothing.
 
-pub mod json;
 mod evidence;
 mod fault;
+pub mod json;
 mod look;
 mod replay;
 mod report;

@@ -10,9 +10,18 @@ pub fn line(report: &Report<'_>, leading: Option<CauseId>) -> String {
     let leads = leading.map_or_else(
         || "nothing wrong".to_owned(),
         |cause| {
-            let likely = a.causes.iter().find(|c| c.cause == cause).map(|c| c.likely.as_str());
+            let likely = a
+                .causes
+                .iter()
+                .find(|c| c.cause == cause)
+                .map(|c| c.likely.as_str());
             let cause = &report.knowledge[cause];
-            format!("{}: {} ({})", likely.unwrap_or("unlikely"), cause.name, cause.id)
+            format!(
+                "{}: {} ({})",
+                likely.unwrap_or("unlikely"),
+                cause.name,
+                cause.id
+            )
         },
     );
     format!(
