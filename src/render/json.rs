@@ -70,6 +70,7 @@ fn cause(cause: &CauseReport, words: &Words<'_>) -> Value {
         "name": cause.name,
         "family": cause.family,
         "probability": rounded(cause.probability, 4),
+        "likely": cause.likely,
         "urgency": cause.urgency.word(),
         "place": cause.place,
         "for": pieces(&cause.evidence_for, words),
