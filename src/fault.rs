@@ -111,11 +111,21 @@ impl fmt::Display for Fault {
     }
 }
 
-/// The nearest of the known words to a word that is not known, if one is near enough to be meant.
+/// The nearest of the known words to a word that is not known, if one is near enough to be meant. Capitals, and which
+/// of hyphen, underscore and space stands between words, don't make a difference.
 pub fn nearest<'a>(word: &str, known: impl IntoIterator<Item = &'a str>) -> Option<&'a str> {
+    let plain = |text: &str| text.to_lowercase().replace(['_', ' '], "-");
+    let word = plain(word);
+    let likeness = |known: &str| {
+        let known = plain(known);
+        let alike = strsim::jaro_winkler(&word, &known);
+        // The measure is hard on short words: two letters swapped or one added are near, too.
+        let one_slip = strsim::osa_distance(&word, &known) <= 1 && word.len() > 1;
+        if one_slip { alike.max(0.9) } else { alike }
+    };
     known
         .into_iter()
-        .map(|k| (strsim::jaro_winkler(word, k), k))
+        .map(|k| (likeness(k), k))
         .filter(|(score, _)| *score > 0.80)
         .max_by(|a, b| a.0.total_cmp(&b.0))
         .map(|(_, k)| k)
@@ -183,5 +193,8 @@ mod tests {
     fn nearest_needs_likeness() {
         assert_eq!(nearest("nitrit", ["nitrite", "nitrate"]), Some("nitrite"));
         assert_eq!(nearest("zebra", ["nitrite", "ph"]), None);
+        assert_eq!(nearest("PH", ["nitrite", "ph"]), Some("ph"));
+        assert_eq!(nearest("hp", ["nitrite", "ph"]), Some("ph"));
+        assert_eq!(nearest("Volume L", ["volume_l"]), Some("volume_l"));
     }
 }

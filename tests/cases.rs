@@ -8,7 +8,7 @@ use std::fmt::Write as _;
 use std::path::{Path, PathBuf};
 
 use gillside::assessment::Assessor;
-use gillside::diagnosis::Verdict;
+use gillside::diagnosis::{Occasion, Verdict};
 use gillside::engine::Engine;
 use gillside::fault::Source;
 use gillside::history::answers::{self, Happened};
@@ -17,6 +17,26 @@ use gillside::knowledge::{self, Knowledge};
 use gillside::site::{self, Known, Site};
 
 fn rule_base() -> Knowledge {
+    let mut k = rule_base0();
+    for kv in std::env::var("TUNE").unwrap_or_default().split(',').filter(|s| !s.is_empty()) {
+        let (key, v) = kv.split_once('=').unwrap();
+        let v: f64 = v.parse().unwrap();
+        match key {
+            "evidence" => k.scales.evidence = v,
+            "second" => k.scales.second_cause = v,
+            "triggers" => k.scales.triggers = v,
+            "review" => k.scales.incident_review = v,
+            "walk" => k.scales.incident_walk = v,
+            "event" => k.scales.event_not_noted = v,
+            "seen" => for c in &mut k.causes { for e in &mut c.effects { e.seen_in = e.seen_in.clamp(v, 1.0 - v); } },
+            "bg" => for f in &mut k.findings { f.background = f.background.clamp(v, 1.0 - v); },
+            _ => panic!(),
+        }
+    }
+    k
+}
+
+fn rule_base0() -> Knowledge {
     let faults = |f: Vec<gillside::fault::Fault>| f.iter().map(ToString::to_string).collect::<Vec<_>>().join("\n");
     knowledge::load(&knowledge::embedded(), &[]).unwrap_or_else(|f| panic!("{}", faults(f)))
 }
@@ -126,7 +146,7 @@ fn from_log(knowledge: &Knowledge, case: &Case) -> Outcome {
     for row in &log.rows {
         engine.observe(row);
     }
-    let assessor = Assessor::new(knowledge, &site, knowledge.scales.incident_review);
+    let assessor = Assessor::new(knowledge, &site, Occasion::Review);
     let last = log.rows.last().map_or(0, |r| r.time);
     outcome(&assessor, &engine, last)
 }
@@ -144,6 +164,7 @@ fn from_answers(knowledge: &Knowledge, case: &Case) -> Outcome {
     row.values = answers.readings.iter().map(|(id, amount)| (*id, Value { amount: *amount, below: false })).collect();
     row.signs = answers.signs;
     let mut engine = Engine::new(knowledge, &site);
+    engine.observe(&row);
     engine.tell(|memory| {
         let mut events: Vec<_> = answers
             .events
@@ -162,8 +183,7 @@ fn from_answers(knowledge: &Knowledge, case: &Case) -> Outcome {
             }
         }
     });
-    engine.observe(&row);
-    let assessor = Assessor::new(knowledge, &site, knowledge.scales.incident_walk);
+    let assessor = Assessor::new(knowledge, &site, Occasion::Walk);
     outcome(&assessor, &engine, now)
 }
 

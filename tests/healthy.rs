@@ -7,7 +7,7 @@ use std::collections::BTreeMap;
 use std::path::{Path, PathBuf};
 
 use gillside::assessment::Assessor;
-use gillside::diagnosis::Verdict;
+use gillside::diagnosis::{Occasion, Verdict};
 use gillside::engine::{Engine, Measured, measure};
 use gillside::history::log::{Input, Log};
 use gillside::knowledge::{self, Knowledge};
@@ -50,7 +50,7 @@ fn no_alarm_at_any_row() {
         let (site, log) = read(&knowledge, &folder);
         let mut engine = Engine::new(&knowledge, &site);
         engine.tell(gillside::history::memory::Memory::keeps_events);
-        let assessor = Assessor::new(&knowledge, &site, knowledge.scales.incident_review);
+        let assessor = Assessor::new(&knowledge, &site, Occasion::Review);
         let mut version = u64::MAX;
         let mut verdict = Verdict::Steady;
         let mut farm_alarms = 0;

@@ -5,14 +5,16 @@ use super::{
     Assessment, Avoid, CauseReport, Derived, Missing, StepReport, Tell, VerifyReport,
 };
 use crate::course::{Advised, Ground, advise};
-use crate::diagnosis::{Decision, Doctor, Ranking, Told};
+use crate::diagnosis::{Decision, Doctor, Occasion, Ranking, Told};
 use crate::engine::{Engine, Limits};
 use crate::knowledge::{CauseId, Knowledge, Verify};
 use crate::site::Site;
 use crate::vocabulary::ReadingId;
 
-/// Causes less likely than this are not reported (data contract, section 8).
+/// Causes likelier than this are all reported (data contract, section 8), and the likeliest few in any case: what is
+/// thought of and found unlikely is worth knowing too.
 const REPORTED: f64 = 0.01;
+const REPORTED_IN_ANY_CASE: usize = 5;
 /// So many causes get a balance sheet and the question of what would tell.
 const WITH_SHEET: usize = 8;
 /// Lines of a sheet, and of what would tell, that are kept.
@@ -39,20 +41,18 @@ pub struct Assessor<'k> {
     site: Site,
     limits: Limits<'k>,
     doctor: Doctor<'k>,
-    incident: f64,
     /// What is taken for now where that is later than what is known; unix seconds.
     present: i64,
 }
 
 impl<'k> Assessor<'k> {
-    /// An assessor for a site; `incident` is how likely it is beforehand that anything is wrong.
-    pub fn new(knowledge: &'k Knowledge, site: &Site, incident: f64) -> Self {
+    /// An assessor for a site and an occasion.
+    pub fn new(knowledge: &'k Knowledge, site: &Site, occasion: Occasion) -> Self {
         Self {
             knowledge,
             site: site.clone(),
             limits: Limits::new(knowledge, site),
-            doctor: Doctor::new(knowledge),
-            incident,
+            doctor: Doctor::new(knowledge, occasion),
             present: i64::MIN,
         }
     }
@@ -91,7 +91,7 @@ impl<'k> Assessor<'k> {
 
     /// Ranking and verdict as the facts stand.
     pub fn review(&self, engine: &Engine<'k>) -> Review<'k> {
-        let ranking = self.doctor.rank(engine, self.incident);
+        let ranking = self.doctor.rank(engine);
         let due = !self.overdue(engine).is_empty();
         let decision = self.doctor.decide(engine, &ranking, due);
         Review { ranking, decision }
@@ -190,8 +190,8 @@ impl<'k> Assessor<'k> {
         ranking
             .order()
             .into_iter()
-            .take_while(|c| ranking.of(*c) > REPORTED)
             .enumerate()
+            .take_while(|(rank, c)| *rank < REPORTED_IN_ANY_CASE || ranking.of(*c) > REPORTED)
             .map(|(rank, id)| {
                 let cause = &self.knowledge[id];
                 let (mut pro, mut contra) =

@@ -100,7 +100,7 @@ fn item(knowledge: &Knowledge, evidence: Evidence, groups: &mut HashMap<String, 
     let next = groups.len();
     Item {
         evidence,
-        background,
+        background: background.max(knowledge.scales.least_background),
         group: *groups.entry(key).or_insert(next),
         alarming,
         causes: Vec::new(),

@@ -339,6 +339,8 @@ pub struct Scales {
     pub sign_not_noted: f64,
     /// How much of the evidence counts (1 = as if every finding were independent).
     pub evidence: f64,
+    /// No background counts as smaller than this.
+    pub least_background: f64,
     /// The most that all triggers of one cause together multiply its odds by.
     pub triggers: f64,
     /// Penalty on each cause beyond the first in a set, as a factor on its odds.
@@ -351,6 +353,8 @@ pub struct Scales {
     pub act_days: f64,
     /// Summed probability of anything for `watch`.
     pub watch: f64,
+    /// The same in a walk.
+    pub watch_walk: f64,
     /// Degree from which a danger finding decides.
     pub danger: f64,
     /// Below this no step is advised for a cause.

@@ -41,12 +41,6 @@ words! {
     }
 }
 
-impl Default for Units {
-    fn default() -> Self {
-        Self::Metric
-    }
-}
-
 words! {
     /// A kind of crop.
     Crop {
