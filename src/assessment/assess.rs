@@ -1,8 +1,9 @@
 //! Puts a diagnosis together: facts, causes, verdict, steps, what is missing, cautions.
 
+use super::overrides::overrides;
 use super::routine::{Overdue, missing, overdue};
 use super::{
-    Assessment, Avoid, CauseReport, Derived, Missing, StepReport, Tell, VerifyReport,
+    family, Assessment, Avoid, CauseReport, Derived, Missing, StepReport, Tell, VerifyReport,
 };
 use crate::course::{Advised, Ground, advise};
 use crate::diagnosis::{Decision, Doctor, Occasion, Ranking, Told};
@@ -120,7 +121,13 @@ impl<'k> Assessor<'k> {
         let now = engine.memory().now();
         let step = |a: &Advised| self.step(a, now);
         let causes = self.causes(engine, ranking, &told, places);
-        let leading_family = self.leading_family(ranking);
+        let leading_family = family::leading(
+            self.knowledge,
+            ranking,
+            &advice,
+            |f| self.doctor.family(ranking, f),
+            |p| self.likely(p),
+        );
         Assessment {
             site: self.site.name.clone(),
             as_of: now,
@@ -133,7 +140,7 @@ impl<'k> Assessor<'k> {
                 .first_aid
                 .then(|| self.minutes_left(engine))
                 .flatten(),
-            best_question: self.best_question(ranking, &told, leading_family.as_deref()),
+            best_question: self.best_question(ranking, &told, leading_family.as_ref().map(|f| f.id.as_str())),
             leading_family,
             causes,
             nothing_wrong: ranking.nothing,
@@ -154,7 +161,7 @@ impl<'k> Assessor<'k> {
             missing: self.missing(&ground, &told),
             derived: self.derived(engine),
             projections: Vec::new(),
-            overrides: Vec::new(),
+            overrides: overrides(self.knowledge, &self.site),
             cautions: self
                 .knowledge
                 .cautions
@@ -221,24 +228,6 @@ impl<'k> Assessor<'k> {
                 }
             })
             .collect()
-    }
-
-    /// The family that leads as a whole: several of its members are likely, none stands out.
-    fn leading_family(&self, ranking: &Ranking) -> Option<String> {
-        /// A member that holds this share of its family stands out.
-        const STANDS_OUT: f64 = 0.7;
-        /// A family this likely leads.
-        const LEADS: f64 = 0.4;
-        let first = ranking.order().into_iter().next()?;
-        let family = &self.knowledge[first].family;
-        let whole = self.doctor.family(ranking, family);
-        let members = self
-            .knowledge
-            .family(family)
-            .filter(|c| ranking.of(*c) > 0.08 * whole)
-            .count();
-        (whole >= LEADS && members >= 2 && ranking.of(first) < STANDS_OUT * whole)
-            .then(|| family.clone())
     }
 
     fn best_question(

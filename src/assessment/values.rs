@@ -42,6 +42,23 @@ pub struct CauseReport {
     pub leaves_unexplained: Vec<String>,
 }
 
+/// A family whose members can't be told apart and that leads the page as a whole.
+#[derive(Debug, Clone, PartialEq)]
+pub struct LeadingFamily {
+    /// Its id.
+    pub id: String,
+    /// Its name, a sentence without full stop.
+    pub name: String,
+    /// Probability that any of its causes is there.
+    pub probability: f64,
+    /// The word for it.
+    pub likely: String,
+    /// Ids of the causes that can't be told apart, likeliest first.
+    pub members: Vec<String>,
+    /// Ids of the steps that help under every one of them, best first.
+    pub first_steps: Vec<String>,
+}
+
 /// What shows that a step worked.
 #[derive(Debug, Clone, PartialEq, Eq)]
 pub struct VerifyReport {
@@ -155,7 +172,7 @@ pub struct Assessment {
     /// Causes above one percent, best first.
     pub causes: Vec<CauseReport>,
     /// The family whose members can't be told apart and lead together, if one does.
-    pub leading_family: Option<String>,
+    pub leading_family: Option<LeadingFamily>,
     /// The question that would tell the leading causes apart: reading or sign id and the question.
     pub best_question: Option<(String, String)>,
     /// Probability that nothing is wrong.

@@ -6,7 +6,7 @@ use super::output::Output;
 use super::review;
 use super::stop::Stop;
 use crate::assessment::Assessor;
-use crate::diagnosis::Verdict;
+use crate::diagnosis::{Occasion, Verdict};
 use crate::history::log::Log;
 use crate::render::{self, Report};
 
@@ -18,7 +18,7 @@ pub(super) fn run(
     out: &mut Output,
 ) -> Result<Verdict, Stop> {
     let knowledge = &context.knowledge;
-    let assessor = Assessor::new(knowledge, &context.site, knowledge.scales.incident_review);
+    let assessor = Assessor::new(knowledge, &context.site, Occasion::Review);
     let mut engine = review::engine(context, log);
     let mut before = None;
     let mut verdict = Verdict::Steady;

@@ -8,7 +8,7 @@ use super::output::Output;
 use super::stop::Stop;
 use super::{Exit, replay};
 use crate::assessment::Assessor;
-use crate::diagnosis::Verdict;
+use crate::diagnosis::{Occasion, Verdict};
 use crate::engine::Engine;
 use crate::fault::{Fault, Place};
 use crate::history::log::{self, Effect, Input, Log};
@@ -179,7 +179,7 @@ fn now(
     };
     let knowledge = &context.knowledge;
     let assessor =
-        Assessor::new(knowledge, &context.site, knowledge.scales.incident_review).at(present);
+        Assessor::new(knowledge, &context.site, Occasion::Review).at(present);
     let last_row = log.rows.last().map(|row| row.time);
     let assessment = assessor.assess(&engine, &log.places, last_row);
     let report = Report {

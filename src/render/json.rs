@@ -44,7 +44,10 @@ pub fn value(report: &Report<'_>) -> Value {
         "first_aid": steps(&a.first_aid),
         "minutes_left": a.minutes_left,
         "causes": a.causes.iter().map(|c| cause(c, &words)).collect::<Vec<_>>(),
-        "leading_family": a.leading_family,
+        "leading_family": a.leading_family.as_ref().map(|f| json!({
+            "id": f.id, "name": f.name, "probability": rounded(f.probability, 4), "likely": f.likely,
+            "members": f.members, "first_steps": f.first_steps,
+        })),
         "best_question": a.best_question.as_ref().map(|(id, text)| json!({"id": id, "text": text})),
         "nothing_wrong": rounded(a.nothing_wrong, 4),
         "steps": steps(&a.steps),

@@ -25,12 +25,16 @@ fn converted(reading: &Reading, value: f64, system: Units) -> (f64, &str) {
     {
         return (value, unit);
     }
+    if reading.unit == "share" {
+        return (value * 100.0, "%");
+    }
     (value, &reading.unit)
 }
 
 /// As many decimals as the reading has; a small number that would round to nothing keeps two figures.
 fn number_of(reading: &Reading, value: f64) -> String {
-    let text = format!("{value:.*}", reading.decimals);
+    let decimals = if reading.unit == "share" { 0 } else { reading.decimals };
+    let text = format!("{value:.decimals$}");
     let nothing = text.trim_start_matches('-').chars().all(|c| matches!(c, '0' | '.'));
     if nothing && value != 0.0 {
         #[allow(clippy::cast_possible_truncation, clippy::cast_sign_loss)] // clamped
@@ -42,7 +46,8 @@ fn number_of(reading: &Reading, value: f64) -> String {
 
 fn with_unit(number: &str, unit: &str) -> String {
     match unit {
-        "" | "pH" | "count" => number.to_owned(),
+        "" | "pH" | "count" | "ratio" | "degree" => number.to_owned(),
+        "%" | "%/day" => format!("{number}{unit}"),
         unit => format!("{number} {unit}"),
     }
 }
