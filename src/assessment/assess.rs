@@ -12,6 +12,8 @@ use crate::knowledge::{CauseId, Knowledge, Verify};
 use crate::site::Site;
 use crate::vocabulary::ReadingId;
 
+/// A shift where the site names none, seconds.
+const SHIFT: i64 = 8 * 3600;
 /// Causes likelier than this are all reported (data contract, section 8), and the likeliest few in any case: what is
 /// thought of and found unlikely is worth knowing too.
 const REPORTED: f64 = 0.01;
@@ -132,6 +134,9 @@ impl<'k> Assessor<'k> {
             site: self.site.name.clone(),
             as_of: now,
             last_row,
+            last_row_age: last_row
+                .map(|time| self.present.max(now).saturating_sub(time))
+                .filter(|age| *age > self.site.longest_shift().unwrap_or(SHIFT)),
             verdict: review.decision.verdict,
             dangers: review.decision.dangers.iter().map(|f| f.name.clone()).collect(),
             first_aid: advice.first_aid.iter().map(step).collect(),

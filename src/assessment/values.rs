@@ -161,6 +161,8 @@ pub struct Assessment {
     pub as_of: i64,
     /// Unix seconds of the last row; `None` without any.
     pub last_row: Option<i64>,
+    /// How old the last row is in seconds, when that is more than a shift.
+    pub last_row_age: Option<i64>,
     /// What the whole asks for.
     pub verdict: Verdict,
     /// The findings of direct danger that hold, as clauses.

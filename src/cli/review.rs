@@ -192,7 +192,8 @@ fn now(
     };
     let text = match format {
         Format::Json => render::json::page(&report),
-        _ => render::json::page(&report),
+        Format::Markdown => render::markdown(&render::diagnosis(&report)),
+        Format::Text | Format::Html => render::text(&render::diagnosis(&report), out.look()),
     };
     out.write(&text)?;
     Ok(assessment.verdict)

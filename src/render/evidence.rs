@@ -70,7 +70,7 @@ impl Words<'_> {
                 (format!("{sign}{}{when}", units::amount(reading, shown, system)), *place)
             }
             Saw::Moved { early, late, span: over, place } => (
-                format!("from {} in {}", units::from_to(reading, *early, *late, system), span(*over)),
+                format!("from about {} in {}", units::from_to(reading, *early, *late, system), span(*over)),
                 *place,
             ),
             Saw::Against { value, usual, place } => (

@@ -137,13 +137,14 @@ fn log(log: &Log) -> Value {
 /// A number with so many decimals.
 fn rounded(number: f64, decimals: i32) -> Value {
     let scale = 10_f64.powi(decimals);
-    json!((number * scale).round() / scale)
+    // Adding zero makes a negative zero an ordinary one.
+    json!((number * scale).round() / scale + 0.0)
 }
 
 /// A number with four figures.
 fn figures(number: f64) -> Value {
-    if number == 0.0 || !number.is_finite() {
-        return json!(number);
+    if number == 0.0 {
+        return json!(0.0);
     }
     let text = format!("{number:.3e}");
     text.parse::<f64>().map_or(Value::Null, |n| json!(n))
