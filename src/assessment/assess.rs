@@ -1,7 +1,10 @@
 //! Puts a diagnosis together: facts, causes, verdict, steps, what is missing, cautions.
 
+use super::overrides::overrides;
 use super::routine::{Overdue, missing, overdue};
-use super::{Assessment, Avoid, CauseReport, Derived, Missing, StepReport, Tell, VerifyReport};
+use super::{
+    family, Assessment, Avoid, CauseReport, Derived, Missing, StepReport, Tell, VerifyReport,
+};
 use crate::course::{Advised, Ground, advise};
 use crate::diagnosis::{Decision, Doctor, Occasion, Ranking, Told};
 use crate::engine::{Engine, Limits};
@@ -9,6 +12,8 @@ use crate::knowledge::{CauseId, Knowledge, Verify};
 use crate::site::Site;
 use crate::vocabulary::ReadingId;
 
+/// A shift where the site names none, seconds.
+const SHIFT: i64 = 8 * 3600;
 /// Causes likelier than this are all reported (data contract, section 8), and the likeliest few in any case: what is
 /// thought of and found unlikely is worth knowing too.
 const REPORTED: f64 = 0.01;
@@ -123,11 +128,20 @@ impl<'k> Assessor<'k> {
         let now = engine.memory().now();
         let step = |a: &Advised| self.step(a, now);
         let causes = self.causes(engine, ranking, &told, places);
-        let leading_family = self.leading_family(ranking);
+        let leading_family = family::leading(
+            self.knowledge,
+            ranking,
+            &advice,
+            |f| self.doctor.family(ranking, f),
+            |p| self.likely(p),
+        );
         Assessment {
             site: self.site.name.clone(),
             as_of: now,
             last_row,
+            last_row_age: last_row
+                .map(|time| self.present.max(now).saturating_sub(time))
+                .filter(|age| *age > self.site.longest_shift().unwrap_or(SHIFT)),
             verdict: review.decision.verdict,
             dangers: review
                 .decision
@@ -141,7 +155,7 @@ impl<'k> Assessor<'k> {
                 .first_aid
                 .then(|| self.minutes_left(engine))
                 .flatten(),
-            best_question: self.best_question(ranking, &told, leading_family.as_deref()),
+            best_question: self.best_question(ranking, &told, leading_family.as_ref().map(|f| f.id.as_str())),
             leading_family,
             causes,
             nothing_wrong: ranking.nothing,
@@ -162,7 +176,7 @@ impl<'k> Assessor<'k> {
             missing: self.missing(&ground, &told),
             derived: self.derived(engine),
             projections: Vec::new(),
-            overrides: Vec::new(),
+            overrides: overrides(self.knowledge, &self.site),
             cautions: self
                 .knowledge
                 .cautions
@@ -239,24 +253,6 @@ impl<'k> Assessor<'k> {
                 }
             })
             .collect()
-    }
-
-    /// The family that leads as a whole: several of its members are likely, none stands out.
-    fn leading_family(&self, ranking: &Ranking) -> Option<String> {
-        /// A member that holds this share of its family stands out.
-        const STANDS_OUT: f64 = 0.7;
-        /// A family this likely leads.
-        const LEADS: f64 = 0.4;
-        let first = ranking.order().into_iter().next()?;
-        let family = &self.knowledge[first].family;
-        let whole = self.doctor.family(ranking, family);
-        let members = self
-            .knowledge
-            .family(family)
-            .filter(|c| ranking.of(*c) > 0.08 * whole)
-            .count();
-        (whole >= LEADS && members >= 2 && ranking.of(first) < STANDS_OUT * whole)
-            .then(|| family.clone())
     }
 
     fn best_question(

@@ -180,7 +180,8 @@ fn now(
         _ => context.now.max(moment),
     };
     let knowledge = &context.knowledge;
-    let assessor = Assessor::new(knowledge, &context.site, Occasion::Review).at(present);
+    let assessor =
+        Assessor::new(knowledge, &context.site, Occasion::Review).at(present);
     let last_row = log.rows.last().map(|row| row.time);
     let assessment = assessor.assess(&engine, &log.places, last_row);
     let report = Report {
@@ -193,7 +194,8 @@ fn now(
     };
     let text = match format {
         Format::Json => render::json::page(&report),
-        _ => render::json::page(&report),
+        Format::Markdown => render::markdown(&render::diagnosis(&report)),
+        Format::Text | Format::Html => render::text(&render::diagnosis(&report), out.look()),
     };
     out.write(&text)?;
     Ok(assessment.verdict)

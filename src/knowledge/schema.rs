@@ -309,6 +309,17 @@ pub struct Media {
     pub source: Vec<String>,
 }
 
+/// A family of causes that a log often can't tell apart.
+#[derive(Debug, Clone)]
+pub struct Family {
+    /// Kebab-case id.
+    pub id: String,
+    /// A sentence without its full stop.
+    pub name: String,
+    /// Where it is written.
+    pub place: Option<Place>,
+}
+
 /// A publication.
 #[derive(Debug, Clone)]
 pub struct Reference {
@@ -390,6 +401,8 @@ pub struct Knowledge {
     pub rounds: Vec<Round>,
     /// Filter media.
     pub media: Vec<Media>,
+    /// Families of causes.
+    pub families: Vec<Family>,
     /// Publications.
     pub references: Vec<Reference>,
     /// Priors and thresholds.

@@ -85,17 +85,8 @@ impl Words<'_> {
                     *place,
                 )
             }
-            Saw::Moved {
-                early,
-                late,
-                span: over,
-                place,
-            } => (
-                format!(
-                    "from {} in {}",
-                    units::from_to(reading, *early, *late, system),
-                    span(*over)
-                ),
+            Saw::Moved { early, late, span: over, place } => (
+                format!("from about {} in {}", units::from_to(reading, *early, *late, system), span(*over)),
                 *place,
             ),
             Saw::Against {

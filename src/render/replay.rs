@@ -2,13 +2,14 @@
 
 use super::Report;
 use super::when;
+use crate::diagnosis::Verdict;
 use crate::knowledge::CauseId;
 
 /// One line: time, verdict, what leads.
 pub fn line(report: &Report<'_>, leading: Option<CauseId>) -> String {
     let a = report.assessment;
     let leads = leading.map_or_else(
-        || "nothing wrong".to_owned(),
+        || if a.verdict == Verdict::Steady { "nothing wrong" } else { "nothing stands out" }.to_owned(),
         |cause| {
             let likely = a
                 .causes

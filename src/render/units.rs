@@ -25,16 +25,17 @@ fn converted(reading: &Reading, value: f64, system: Units) -> (f64, &str) {
     {
         return (value, unit);
     }
+    if reading.unit == "share" {
+        return (value * 100.0, "%");
+    }
     (value, &reading.unit)
 }
 
 /// As many decimals as the reading has; a small number that would round to nothing keeps two figures.
 fn number_of(reading: &Reading, value: f64) -> String {
-    let text = format!("{value:.*}", reading.decimals);
-    let nothing = text
-        .trim_start_matches('-')
-        .chars()
-        .all(|c| matches!(c, '0' | '.'));
+    let decimals = if reading.unit == "share" { 0 } else { reading.decimals };
+    let text = format!("{value:.decimals$}");
+    let nothing = text.trim_start_matches('-').chars().all(|c| matches!(c, '0' | '.'));
     if nothing && value != 0.0 {
         #[allow(clippy::cast_possible_truncation, clippy::cast_sign_loss)] // clamped
         let decimals = (1.0 - value.abs().log10().floor()).clamp(0.0, 9.0) as usize;
@@ -49,7 +50,8 @@ fn number_of(reading: &Reading, value: f64) -> String {
 
 fn with_unit(number: &str, unit: &str) -> String {
     match unit {
-        "" | "pH" | "count" => number.to_owned(),
+        "" | "pH" | "count" | "ratio" | "degree" => number.to_owned(),
+        "%" | "%/day" => format!("{number}{unit}"),
         unit => format!("{number} {unit}"),
     }
 }

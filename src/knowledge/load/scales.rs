@@ -1,12 +1,21 @@
-//! `scales.toml`: priors, thresholds of the verdict, words.
+//! `scales.toml`: priors, thresholds of the verdict, words, names of families.
 
-use super::entry::within;
+use super::entry::{id, place, within, words};
 use super::rest::Made;
 use crate::decode::Section;
-use crate::knowledge::Scales;
+use crate::knowledge::{Family, Scales};
 
-/// Reads the scales, if this is the file that holds them.
+/// Reads the scales and the names of families, if this is a file that holds them.
 pub(super) fn read(root: &mut Section<'_>, made: &mut Made) {
+    for mut section in root.sections("family") {
+        let id = id(&mut section, |id| made.families.iter().any(|f| f.id == id));
+        let name = words(&mut section, "name");
+        let place = place(&section);
+        section.finish();
+        if let (Some(id), Some(name)) = (id, name) {
+            made.families.push(Family { id, name, place });
+        }
+    }
     let Some(mut table) = root.section("scales") else {
         return;
     };

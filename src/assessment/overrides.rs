@@ -1,0 +1,33 @@
+//! What a farm has changed in the limits that are shipped: its own comfort bands.
+
+use super::Override;
+use crate::engine::Limits;
+use crate::knowledge::{Knowledge, Side};
+use crate::site::Site;
+
+/// The site's own targets where they differ from what would hold without them.
+pub(super) fn overrides(knowledge: &Knowledge, site: &Site) -> Vec<Override> {
+    let plain = Site { targets: std::collections::BTreeMap::new(), ..site.clone() };
+    let shipped = Limits::new(knowledge, &plain);
+    let mut list = Vec::new();
+    for (reading, band) in &site.targets {
+        let about = &knowledge.vocabulary[*reading];
+        for (side, word, own) in [(Side::Low, "low", band.low), (Side::High, "high", band.high)] {
+            let (Some(own), before) = (own, shipped.target(*reading, side)) else { continue };
+            if before == Some(own) {
+                continue;
+            }
+            let number = |value: f64| format!("{value} {}", about.unit);
+            list.push(Override {
+                id: format!("target.{}.{word}", about.id),
+                from: before.map_or_else(|| "none".to_owned(), number),
+                to: number(own),
+                loosens: before.is_some_and(|b| match side {
+                    Side::Low => own < b,
+                    Side::High => own > b,
+                }),
+            });
+        }
+    }
+    list
+}
