@@ -3,6 +3,8 @@
 use std::fmt;
 use std::sync::OnceLock;
 
+use serde::{Deserialize, Serialize};
+
 /// A text with a name: a file, standard input, or an embedded file of the rule base.
 #[derive(Debug, Clone)]
 pub struct Source {
@@ -53,7 +55,7 @@ impl Source {
 }
 
 /// Where a fault is.
-#[derive(Debug, Clone, PartialEq, Eq)]
+#[derive(Debug, Clone, PartialEq, Eq, Serialize, Deserialize)]
 pub struct Place {
     /// The name of the text.
     pub file: String,

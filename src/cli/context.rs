@@ -106,6 +106,9 @@ fn rule_base(common: &Common, site_file: Option<&Path>) -> Result<Knowledge, Sto
         Some(folder) => knowledge::folder(folder).map_err(|fault| Stop::Rules(vec![fault]))?,
         None => Vec::new(),
     };
+    if house.is_empty() {
+        return knowledge::shipped().map_err(Stop::Rules);
+    }
     let mut base = knowledge::load(&knowledge::embedded(), &house).map_err(Stop::Rules)?;
     if !house.is_empty() {
         base.house_rules = folder.map(|f| f.display().to_string());
