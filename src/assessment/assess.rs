@@ -3,7 +3,7 @@
 use super::overrides::overrides;
 use super::routine::{Overdue, missing, overdue};
 use super::{
-    family, Assessment, Avoid, CauseReport, Derived, Missing, StepReport, Tell, VerifyReport,
+    Assessment, Avoid, CauseReport, Derived, Missing, StepReport, Tell, VerifyReport, family,
 };
 use crate::course::{Advised, Ground, advise};
 use crate::diagnosis::{Decision, Doctor, Occasion, Ranking, Told};
@@ -107,7 +107,12 @@ impl<'k> Assessor<'k> {
     }
 
     /// The whole outcome. `places` are the names of the log's places, `last_row` the time of its last row.
-    pub fn assess(&self, engine: &Engine<'k>, places: &[String], last_row: Option<i64>) -> Assessment {
+    pub fn assess(
+        &self,
+        engine: &Engine<'k>,
+        places: &[String],
+        last_row: Option<i64>,
+    ) -> Assessment {
         let review = self.review(engine);
         let ranking = &review.ranking;
         let told = self.doctor.tell(engine, ranking);
@@ -138,14 +143,23 @@ impl<'k> Assessor<'k> {
                 .map(|time| self.present.max(now).saturating_sub(time))
                 .filter(|age| *age > self.site.longest_shift().unwrap_or(SHIFT)),
             verdict: review.decision.verdict,
-            dangers: review.decision.dangers.iter().map(|f| f.name.clone()).collect(),
+            dangers: review
+                .decision
+                .dangers
+                .iter()
+                .map(|f| f.name.clone())
+                .collect(),
             first_aid: advice.first_aid.iter().map(step).collect(),
             minutes_left: review
                 .decision
                 .first_aid
                 .then(|| self.minutes_left(engine))
                 .flatten(),
-            best_question: self.best_question(ranking, &told, leading_family.as_ref().map(|f| f.id.as_str())),
+            best_question: self.best_question(
+                ranking,
+                &told,
+                leading_family.as_ref().map(|f| f.id.as_str()),
+            ),
             leading_family,
             causes,
             nothing_wrong: ranking.nothing,
@@ -178,7 +192,10 @@ impl<'k> Assessor<'k> {
     }
 
     fn ids(&self, causes: &[CauseId]) -> Vec<String> {
-        causes.iter().map(|c| self.knowledge[*c].id.clone()).collect()
+        causes
+            .iter()
+            .map(|c| self.knowledge[*c].id.clone())
+            .collect()
     }
 
     /// The word for a probability.
@@ -206,8 +223,11 @@ impl<'k> Assessor<'k> {
             .take_while(|(rank, c)| *rank < REPORTED_IN_ANY_CASE || ranking.of(*c) > REPORTED)
             .map(|(rank, id)| {
                 let cause = &self.knowledge[id];
-                let (mut pro, mut contra) =
-                    if rank < WITH_SHEET { books.sheet(id) } else { (Vec::new(), Vec::new()) };
+                let (mut pro, mut contra) = if rank < WITH_SHEET {
+                    books.sheet(id)
+                } else {
+                    (Vec::new(), Vec::new())
+                };
                 pro.truncate(SHEET_LINES);
                 contra.truncate(SHEET_LINES);
                 CauseReport {
@@ -227,7 +247,11 @@ impl<'k> Assessor<'k> {
                         .take(TELL_LINES)
                         .map(|(id, bits)| Tell { id, bits })
                         .collect(),
-                    leaves_unexplained: if rank < WITH_SHEET { books.unexplained(id) } else { Vec::new() },
+                    leaves_unexplained: if rank < WITH_SHEET {
+                        books.unexplained(id)
+                    } else {
+                        Vec::new()
+                    },
                     evidence_for: pro,
                     evidence_against: contra,
                 }
@@ -243,7 +267,11 @@ impl<'k> Assessor<'k> {
     ) -> Option<(String, String)> {
         let family = family?;
         let mut all = told.all(|c| {
-            if self.knowledge[c].family == family { ranking.of(c).max(0.05) } else { 0.0 }
+            if self.knowledge[c].family == family {
+                ranking.of(c).max(0.05)
+            } else {
+                0.0
+            }
         });
         all.retain(|(_, bits)| *bits > 0.0);
         all.into_iter()
@@ -270,7 +298,11 @@ impl<'k> Assessor<'k> {
             detail: step.detail.clone(),
             when: step.when,
             because: self.ids(&advised.because),
-            check_first: if advised.check_first { vec![step.check_first.clone()] } else { Vec::new() },
+            check_first: if advised.check_first {
+                vec![step.check_first.clone()]
+            } else {
+                Vec::new()
+            },
             verify: step
                 .verify
                 .as_ref()
@@ -295,7 +327,13 @@ impl<'k> Assessor<'k> {
         if ground.decision.verdict == crate::diagnosis::Verdict::Steady {
             return list;
         }
-        let likely = told.all(|c| if ground.ranking.of(c) > 0.03 { 1.0 } else { 0.0 });
+        let likely = told.all(|c| {
+            if ground.ranking.of(c) > 0.03 {
+                1.0
+            } else {
+                0.0
+            }
+        });
         for (id, bits) in likely.into_iter().take(TELL_MISSING) {
             if bits >= WORTH_ASKING && !list.iter().any(|m| m.id == id) {
                 let causes: Vec<&str> = ground

@@ -9,6 +9,6 @@ mod values;
 pub use assess::{Assessor, Review};
 pub use routine::span;
 pub use values::{
-    Assessment, Avoid, CauseReport, Derived, LeadingFamily, Missing, Override, Projection, StepReport, Tell,
-    VerifyReport,
+    Assessment, Avoid, CauseReport, Derived, LeadingFamily, Missing, Override, Projection,
+    StepReport, Tell, VerifyReport,
 };

@@ -12,7 +12,13 @@ use super::water::WaterArgs;
 /// Exit status: 0 done; 1 something failed that is not your doing; 2 wrong usage; 3 an input can't be used; 4 the rule
 /// base can't be used; 10 `--alert-at` was given and the verdict is at that level or above; 130 interrupted.
 #[derive(Debug, Parser)]
-#[command(name = "gillside", version, max_term_width = 100, help_expected = true, infer_long_args = false)]
+#[command(
+    name = "gillside",
+    version,
+    max_term_width = 100,
+    help_expected = true,
+    infer_long_args = false
+)]
 pub(super) struct Options {
     /// Options of every command
     #[command(flatten)]
@@ -32,10 +38,22 @@ pub(super) struct Common {
     #[arg(long, global = true, value_name = "DIR", help_heading = "Everywhere")]
     pub house_rules: Option<PathBuf>,
     /// How the answer is written
-    #[arg(long, global = true, value_enum, default_value = "text", help_heading = "Everywhere")]
+    #[arg(
+        long,
+        global = true,
+        value_enum,
+        default_value = "text",
+        help_heading = "Everywhere"
+    )]
     pub format: Format,
     /// When to use color (the variable NO_COLOR turns it off as well)
-    #[arg(long, global = true, value_enum, default_value = "auto", help_heading = "Everywhere")]
+    #[arg(
+        long,
+        global = true,
+        value_enum,
+        default_value = "auto",
+        help_heading = "Everywhere"
+    )]
     pub color: Color,
     /// What is taken for now, such as `2026-03-04 07:30` [default: the machine's clock]
     #[arg(long, global = true, value_name = "TIME", help_heading = "Everywhere")]

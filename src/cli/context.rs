@@ -103,9 +103,7 @@ fn rule_base(common: &Common, site_file: Option<&Path>) -> Result<Knowledge, Sto
         beside.is_dir().then_some(beside)
     });
     let house = match &folder {
-        Some(folder) => {
-            knowledge::folder(folder).map_err(|fault| Stop::Rules(vec![fault]))?
-        }
+        Some(folder) => knowledge::folder(folder).map_err(|fault| Stop::Rules(vec![fault]))?,
         None => Vec::new(),
     };
     let mut base = knowledge::load(&knowledge::embedded(), &house).map_err(Stop::Rules)?;

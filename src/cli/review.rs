@@ -77,20 +77,22 @@ pub(super) fn run(args: &ReviewArgs, common: &Common, out: &mut Output) -> Resul
     } else {
         now(&context, &log, as_of, common.format, out)?
     };
-    let alert = args.alert_at.is_some_and(|level| verdict >= level.verdict());
+    let alert = args
+        .alert_at
+        .is_some_and(|level| verdict >= level.verdict());
     Ok(if alert { Exit::Alert } else { Exit::Done })
 }
 
 /// The log, or why it can't be used.
-pub(super) fn read(
-    args: &ReviewArgs,
-    context: &Context,
-    as_of: Option<i64>,
-) -> Result<Log, Stop> {
+pub(super) fn read(args: &ReviewArgs, context: &Context, as_of: Option<i64>) -> Result<Log, Stop> {
     let inputs = inputs(&args.logs, context)?;
     let log = log::read(inputs, &context.knowledge.vocabulary, &context.site, as_of)
         .map_err(Stop::Input)?;
-    let refused = || log.problems.iter().filter(|p| p.effect == Effect::RowRefused);
+    let refused = || {
+        log.problems
+            .iter()
+            .filter(|p| p.effect == Effect::RowRefused)
+    };
     if args.strict && log.rows_refused > 0 {
         return Err(Stop::Input(refused().map(fault_of).collect()));
     }
@@ -178,8 +180,7 @@ fn now(
         _ => context.now.max(moment),
     };
     let knowledge = &context.knowledge;
-    let assessor =
-        Assessor::new(knowledge, &context.site, Occasion::Review).at(present);
+    let assessor = Assessor::new(knowledge, &context.site, Occasion::Review).at(present);
     let last_row = log.rows.last().map(|row| row.time);
     let assessment = assessor.assess(&engine, &log.places, last_row);
     let report = Report {

@@ -76,7 +76,11 @@ impl<'k> Doctor<'k> {
         rank::rank(
             &self.table,
             &self.degrees(engine),
-            &odds::log_odds(self.knowledge, engine, self.occasion.incident(self.knowledge)),
+            &odds::log_odds(
+                self.knowledge,
+                engine,
+                self.occasion.incident(self.knowledge),
+            ),
             self.knowledge.scales.second_cause,
             self.knowledge.scales.evidence,
         )
@@ -84,12 +88,24 @@ impl<'k> Doctor<'k> {
 
     /// Decides what the ranking and the direct dangers ask for. `due`: routine readings are overdue.
     pub fn decide(&self, engine: &Engine<'k>, ranking: &Ranking, due: bool) -> Decision<'k> {
-        verdict::decide(self.knowledge, engine, ranking, self.occasion.watch(self.knowledge), due)
+        verdict::decide(
+            self.knowledge,
+            engine,
+            ranking,
+            self.occasion.watch(self.knowledge),
+            due,
+        )
     }
 
     /// What would tell most.
     pub fn tell(&self, engine: &Engine<'_>, ranking: &Ranking) -> Told {
-        tell::tell(self.knowledge, engine, &self.table, &self.degrees(engine), ranking)
+        tell::tell(
+            self.knowledge,
+            engine,
+            &self.table,
+            &self.degrees(engine),
+            ranking,
+        )
     }
 
     /// The books from which balance sheets are drawn up.

@@ -158,7 +158,10 @@ impl Scorer<'_> {
             .collect();
         items.sort_unstable();
         items.dedup();
-        let gain: f64 = items.iter().map(|item| self.gain(*item, self.seen(*item, causes))).sum();
+        let gain: f64 = items
+            .iter()
+            .map(|item| self.gain(*item, self.seen(*item, causes)))
+            .sum();
         let odds: f64 = causes.iter().map(|c| self.log_odds[*c]).sum();
         let extra = causes.len().saturating_sub(1);
         #[allow(clippy::cast_precision_loss)] // two or three
@@ -175,17 +178,21 @@ impl Scorer<'_> {
     }
 
     fn unexplained(&self, degrees: &[Degree], causes: &[usize]) -> Option<usize> {
-        self.table.items.iter().zip(degrees).position(|(item, degree)| {
-            item.alarming
-                && degree.lo >= 0.5
-                && shows(
-                    item.background,
-                    item.causes
-                        .iter()
-                        .filter(|(c, _)| causes.contains(&c.index()))
-                        .map(|(_, seen)| *seen),
-                ) < EXPLAINED
-        })
+        self.table
+            .items
+            .iter()
+            .zip(degrees)
+            .position(|(item, degree)| {
+                item.alarming
+                    && degree.lo >= 0.5
+                    && shows(
+                        item.background,
+                        item.causes
+                            .iter()
+                            .filter(|(c, _)| causes.contains(&c.index()))
+                            .map(|(_, seen)| *seen),
+                    ) < EXPLAINED
+            })
     }
 }
 
@@ -197,11 +204,14 @@ fn triples(
     scores: &mut Vec<(Vec<usize>, f64)>,
 ) {
     const PAIRS_TRIED: usize = 12;
-    let mut pairs: Vec<(Vec<usize>, f64)> = scores.iter().filter(|s| s.0.len() == 2).cloned().collect();
+    let mut pairs: Vec<(Vec<usize>, f64)> =
+        scores.iter().filter(|s| s.0.len() == 2).cloned().collect();
     pairs.sort_by(|a, b| b.1.total_cmp(&a.1));
     let mut seen: Vec<Vec<usize>> = Vec::new();
     for (pair, _) in pairs.iter().take(PAIRS_TRIED) {
-        let Some(item) = scorer.unexplained(degrees, pair) else { continue };
+        let Some(item) = scorer.unexplained(degrees, pair) else {
+            continue;
+        };
         for (cause, shown) in &scorer.table.items[item].causes {
             let third = cause.index();
             if *shown < EXPLAINED || pair.contains(&third) || !singles[third].is_finite() {
@@ -275,7 +285,8 @@ pub(super) fn enumerate(
             continue;
         }
         let mut score: f64 = members.iter().map(|c| log_odds[*c]).sum();
-        score += second.ln() * f64::from(u32::try_from(members.len().saturating_sub(1)).unwrap_or(0));
+        score +=
+            second.ln() * f64::from(u32::try_from(members.len().saturating_sub(1)).unwrap_or(0));
         for (item, weight) in table.items.iter().zip(&weights) {
             let seen = item
                 .causes

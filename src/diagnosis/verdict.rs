@@ -59,9 +59,8 @@ pub(super) fn decide<'k>(
 ) -> Decision<'k> {
     let scales = &knowledge.scales;
     let holding = |f: &&(usize, &'k Finding)| {
-        u16::try_from(f.0).is_ok_and(|i| {
-            engine.finding(crate::knowledge::FindingId(i)).lo >= scales.danger
-        })
+        u16::try_from(f.0)
+            .is_ok_and(|i| engine.finding(crate::knowledge::FindingId(i)).lo >= scales.danger)
     };
     let alarms: Vec<(usize, &Finding)> = knowledge
         .findings

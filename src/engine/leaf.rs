@@ -308,7 +308,14 @@ impl Leaf {
         let (Some((time, _)), Some(shift)) = (series.last(), series.shift(*within)) else {
             return Judged::unknown();
         };
-        let least = resolution.0.max(resolution.1 * shift.early.abs());
+        let about = shift
+            .early
+            .max(shift.early + shift.change)
+            .max(shift.early + shift.jump);
+        let least = resolution
+            .0
+            .max(resolution.1 * shift.early.abs())
+            .max(series.step(about));
         let scale = if *share {
             shift.early.abs().max(least).max(f64::MIN_POSITIVE)
         } else {
@@ -353,7 +360,10 @@ impl Leaf {
         let Some(usual) = series.usual(USUAL_WINDOW, USUAL_RECENT, USUAL_DAYS) else {
             return Judged::unknown();
         };
-        let least = resolution.0.max(resolution.1 * usual.middle.abs());
+        let least = resolution
+            .0
+            .max(resolution.1 * usual.middle.abs())
+            .max(series.step(usual.middle));
         let spread = usual.spread.max(least).max(f64::MIN_POSITIVE);
         let away = match side {
             Side::High => value - usual.middle,

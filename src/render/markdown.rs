@@ -17,7 +17,10 @@ pub fn markdown(page: &[Block]) -> String {
 }
 
 fn is_item(block: &Block) -> bool {
-    !matches!(block, Block::Title(..) | Block::Heading(_) | Block::Para(_) | Block::Claim(_))
+    !matches!(
+        block,
+        Block::Title(..) | Block::Heading(_) | Block::Para(_) | Block::Claim(_)
+    )
 }
 
 fn one(block: &Block) -> String {
@@ -40,8 +43,10 @@ fn escaped(text: &str) -> String {
     let paired = text.matches('`').count() % 2 == 0;
     let mut out = String::with_capacity(text.len());
     for c in text.chars() {
-        let special = matches!(c, '\\' | '*' | '_' | '[' | ']' | '<' | '>' | '#' | '|' | '~')
-            || (c == '`' && !paired);
+        let special = matches!(
+            c,
+            '\\' | '*' | '_' | '[' | ']' | '<' | '>' | '#' | '|' | '~'
+        ) || (c == '`' && !paired);
         if special {
             out.push('\\');
         }

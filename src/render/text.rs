@@ -33,9 +33,9 @@ fn needs_room(block: &Block, before: Option<&Block>) -> bool {
 fn one(block: &Block, look: Look) -> String {
     let style = |s: Style| s.force_styling(look.color);
     match block {
-        Block::Title(verdict, text) => {
-            style(of(*verdict)).apply_to(filled(text, "", "", look)).to_string()
-        }
+        Block::Title(verdict, text) => style(of(*verdict))
+            .apply_to(filled(text, "", "", look))
+            .to_string(),
         Block::Heading(text) => style(Style::new().bold())
             .apply_to(filled(&text.to_uppercase(), "", "", look))
             .to_string(),

@@ -33,15 +33,26 @@ fn converted(reading: &Reading, value: f64, system: Units) -> (f64, &str) {
 
 /// As many decimals as the reading has; a small number that would round to nothing keeps two figures.
 fn number_of(reading: &Reading, value: f64) -> String {
-    let decimals = if reading.unit == "share" { 0 } else { reading.decimals };
+    let decimals = if reading.unit == "share" {
+        0
+    } else {
+        reading.decimals
+    };
     let text = format!("{value:.decimals$}");
-    let nothing = text.trim_start_matches('-').chars().all(|c| matches!(c, '0' | '.'));
+    let nothing = text
+        .trim_start_matches('-')
+        .chars()
+        .all(|c| matches!(c, '0' | '.'));
     if nothing && value != 0.0 {
         #[allow(clippy::cast_possible_truncation, clippy::cast_sign_loss)] // clamped
         let decimals = (1.0 - value.abs().log10().floor()).clamp(0.0, 9.0) as usize;
         return format!("{value:.decimals$}");
     }
-    if nothing { text.trim_start_matches('-').to_owned() } else { text }
+    if nothing {
+        text.trim_start_matches('-').to_owned()
+    } else {
+        text
+    }
 }
 
 fn with_unit(number: &str, unit: &str) -> String {
