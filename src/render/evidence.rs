@@ -60,6 +60,11 @@ impl Words<'_> {
             .any(|e| e.name == clause)
     }
 
+    /// A time as the site's clocks show it.
+    pub fn time(&self, time: i64) -> String {
+        when::short(time, &self.site.timezone)
+    }
+
     /// What was seen of a reading; `beside` is the clause it stands behind, which need not be said again.
     pub fn saw(&self, id: ReadingId, saw: &Saw, beside: &str) -> Option<String> {
         let reading = &self.knowledge.vocabulary[id];

@@ -19,13 +19,15 @@ pub fn markdown(page: &[Block]) -> String {
 fn is_item(block: &Block) -> bool {
     !matches!(
         block,
-        Block::Title(..) | Block::Heading(_) | Block::Para(_) | Block::Claim(_)
+        Block::Title(..) | Block::Head(_) | Block::Heading(_) | Block::Para(_) | Block::Claim(_)
     )
 }
 
 fn one(block: &Block) -> String {
     match block {
         Block::Title(_, text) => format!("# {}", escaped(text)),
+        Block::Head(text) => format!("# {}", escaped(text)),
+        Block::Branch(depth, text) => format!("{}- {}", "  ".repeat(*depth), escaped(text)),
         Block::Heading(text) => format!("## {}", escaped(text)),
         Block::Para(text) => escaped(text),
         Block::Numbered(number, text) => format!("{number}. {}", escaped(text)),

@@ -18,6 +18,13 @@ pub fn from_to(reading: &Reading, from: f64, to: f64, system: Units) -> String {
     with_unit(&format!("{from} to {}", number_of(reading, to)), unit)
 }
 
+/// A difference of a reading with its unit: half a degree is half a degree, not a temperature.
+pub fn difference(reading: &Reading, by: f64, system: Units) -> String {
+    let (from, _) = converted(reading, 0.0, system);
+    let (to, unit) = converted(reading, by, system);
+    with_unit(&number_of(reading, to - from), unit)
+}
+
 fn converted(reading: &Reading, value: f64, system: Units) -> (f64, &str) {
     if system == Units::Us
         && let Some(unit) = units::us(&reading.id)
