@@ -3,7 +3,7 @@
 use super::overrides::overrides;
 use super::routine::{Overdue, missing, overdue};
 use super::{
-    family, Assessment, Avoid, CauseReport, Derived, Missing, StepReport, Tell, VerifyReport,
+    Assessment, Avoid, CauseReport, Derived, Missing, StepReport, Tell, VerifyReport, family,
 };
 use crate::course::{Advised, Ground, advise};
 use crate::diagnosis::{Decision, Doctor, Occasion, Ranking, Told};
@@ -155,7 +155,11 @@ impl<'k> Assessor<'k> {
                 .first_aid
                 .then(|| self.minutes_left(engine))
                 .flatten(),
-            best_question: self.best_question(ranking, &told, leading_family.as_ref().map(|f| f.id.as_str())),
+            best_question: self.best_question(
+                ranking,
+                &told,
+                leading_family.as_ref().map(|f| f.id.as_str()),
+            ),
             leading_family,
             causes,
             nothing_wrong: ranking.nothing,

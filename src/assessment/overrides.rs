@@ -7,13 +7,21 @@ use crate::site::Site;
 
 /// The site's own targets where they differ from what would hold without them.
 pub(super) fn overrides(knowledge: &Knowledge, site: &Site) -> Vec<Override> {
-    let plain = Site { targets: std::collections::BTreeMap::new(), ..site.clone() };
+    let plain = Site {
+        targets: std::collections::BTreeMap::new(),
+        ..site.clone()
+    };
     let shipped = Limits::new(knowledge, &plain);
     let mut list = Vec::new();
     for (reading, band) in &site.targets {
         let about = &knowledge.vocabulary[*reading];
-        for (side, word, own) in [(Side::Low, "low", band.low), (Side::High, "high", band.high)] {
-            let (Some(own), before) = (own, shipped.target(*reading, side)) else { continue };
+        for (side, word, own) in [
+            (Side::Low, "low", band.low),
+            (Side::High, "high", band.high),
+        ] {
+            let (Some(own), before) = (own, shipped.target(*reading, side)) else {
+                continue;
+            };
             if before == Some(own) {
                 continue;
             }

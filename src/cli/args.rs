@@ -4,8 +4,10 @@ use std::path::PathBuf;
 
 use clap::{Args, Parser, Subcommand, ValueEnum};
 
+use super::knowledge::KnowledgeArgs;
 use super::review::ReviewArgs;
 use super::water::WaterArgs;
+use super::why::WhyArgs;
 
 /// Finds what is most likely wrong with the water of a fish farm, and what to do first.
 ///
@@ -101,6 +103,10 @@ pub(super) enum Color {
 pub(super) enum Command {
     /// Diagnoses from logged readings: what is most likely wrong, and what to do first
     Review(ReviewArgs),
+    /// Explains a cause, finding, step, reading, sign, event, limit or source
+    Why(WhyArgs),
+    /// Checks and lists the rule base, and says what it rests on
+    Knowledge(KnowledgeArgs),
     /// Makes one calculation about water; alone it lists the calculations there are
     Water(WaterArgs),
 }

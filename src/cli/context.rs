@@ -6,7 +6,7 @@ use jiff::Timestamp;
 
 use super::args::{Common, Format};
 use super::stop::Stop;
-use crate::fault::Fault;
+use crate::fault::{Fault, Source};
 use crate::history::log;
 use crate::knowledge::{self, Knowledge};
 use crate::site::{self, Known, Site};
@@ -34,10 +34,7 @@ const HOUSE_RULES: &str = "house-rules";
 impl Context {
     /// Reads rule base, house rules, site and clock.
     pub fn load(common: &Common) -> Result<Self, Stop> {
-        let site_file = common.site.clone().or_else(|| {
-            let here = PathBuf::from(SITE_FILE);
-            here.is_file().then_some(here)
-        });
+        let site_file = site_file(common);
         let knowledge = rule_base(common, site_file.as_deref())?;
         let site = match &site_file {
             Some(path) => read_site(path, &knowledge)?,
@@ -98,22 +95,36 @@ impl Context {
 }
 
 fn rule_base(common: &Common, site_file: Option<&Path>) -> Result<Knowledge, Stop> {
+    let Some((folder, files)) = house_rules(common, site_file)? else {
+        return knowledge::shipped().map_err(Stop::Rules);
+    };
+    let mut base = knowledge::load(&knowledge::embedded(), &files).map_err(Stop::Rules)?;
+    base.house_rules = Some(folder);
+    Ok(base)
+}
+
+/// The folder of house rules and its files, where there are any.
+pub(super) fn house_rules(
+    common: &Common,
+    site_file: Option<&Path>,
+) -> Result<Option<(String, Vec<Source>)>, Stop> {
     let folder = common.house_rules.clone().or_else(|| {
         let beside = site_file?.parent()?.join(HOUSE_RULES);
         beside.is_dir().then_some(beside)
     });
-    let house = match &folder {
-        Some(folder) => knowledge::folder(folder).map_err(|fault| Stop::Rules(vec![fault]))?,
-        None => Vec::new(),
+    let Some(folder) = folder else {
+        return Ok(None);
     };
-    if house.is_empty() {
-        return knowledge::shipped().map_err(Stop::Rules);
-    }
-    let mut base = knowledge::load(&knowledge::embedded(), &house).map_err(Stop::Rules)?;
-    if !house.is_empty() {
-        base.house_rules = folder.map(|f| f.display().to_string());
-    }
-    Ok(base)
+    let files = knowledge::folder(&folder).map_err(|fault| Stop::Rules(vec![fault]))?;
+    Ok((!files.is_empty()).then(|| (folder.display().to_string(), files)))
+}
+
+/// The site file that is named, or the one that is here.
+pub(super) fn site_file(common: &Common) -> Option<PathBuf> {
+    common.site.clone().or_else(|| {
+        let here = PathBuf::from(SITE_FILE);
+        here.is_file().then_some(here)
+    })
 }
 
 fn read_site(path: &Path, knowledge: &Knowledge) -> Result<Site, Stop> {

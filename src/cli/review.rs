@@ -71,7 +71,7 @@ pub(super) fn run(args: &ReviewArgs, common: &Common, out: &mut Output) -> Resul
         Some(text) => Some(context.time("--as-of", text)?),
         None => None,
     };
-    let log = read(args, &context, as_of)?;
+    let log = read(&args.logs, args.strict, &context, as_of)?;
     let verdict = if args.replay {
         replay::run(&context, &log, common.format, out)?
     } else {
@@ -84,8 +84,13 @@ pub(super) fn run(args: &ReviewArgs, common: &Common, out: &mut Output) -> Resul
 }
 
 /// The log, or why it can't be used.
-pub(super) fn read(args: &ReviewArgs, context: &Context, as_of: Option<i64>) -> Result<Log, Stop> {
-    let inputs = inputs(&args.logs, context)?;
+pub(super) fn read(
+    named: &[String],
+    strict: bool,
+    context: &Context,
+    as_of: Option<i64>,
+) -> Result<Log, Stop> {
+    let inputs = inputs(named, context)?;
     let log = log::read(inputs, &context.knowledge.vocabulary, &context.site, as_of)
         .map_err(Stop::Input)?;
     let refused = || {
@@ -93,7 +98,7 @@ pub(super) fn read(args: &ReviewArgs, context: &Context, as_of: Option<i64>) -> 
             .iter()
             .filter(|p| p.effect == Effect::RowRefused)
     };
-    if args.strict && log.rows_refused > 0 {
+    if strict && log.rows_refused > 0 {
         return Err(Stop::Input(refused().map(fault_of).collect()));
     }
     if !log.is_usable() {
@@ -116,7 +121,7 @@ pub(super) fn read(args: &ReviewArgs, context: &Context, as_of: Option<i64>) -> 
 }
 
 /// The logs that are named, or the site's.
-pub(super) fn inputs(named: &[String], context: &Context) -> Result<Vec<Input>, Stop> {
+fn inputs(named: &[String], context: &Context) -> Result<Vec<Input>, Stop> {
     if !named.is_empty() {
         return Ok(named.iter().map(|n| Input::named(n)).collect());
     }
@@ -158,6 +163,18 @@ pub(super) fn engine<'k>(context: &'k Context, log: &Log) -> Engine<'k> {
     engine
 }
 
+/// An engine that has taken in the log, as of its last row or of the time that was asked for.
+pub(super) fn taken_in<'k>(context: &'k Context, log: &Log, as_of: Option<i64>) -> Engine<'k> {
+    let mut engine = engine(context, log);
+    for row in &log.rows {
+        engine.observe(row);
+    }
+    if let Some(time) = as_of {
+        engine.advance(time);
+    }
+    engine
+}
+
 /// The diagnosis as of the last row, or of the time that was asked for.
 fn now(
     context: &Context,
@@ -166,13 +183,7 @@ fn now(
     format: Format,
     out: &mut Output,
 ) -> Result<Verdict, Stop> {
-    let mut engine = engine(context, log);
-    for row in &log.rows {
-        engine.observe(row);
-    }
-    if let Some(time) = as_of {
-        engine.advance(time);
-    }
+    let engine = taken_in(context, log, as_of);
     let moment = engine.memory().now();
     // Who asks how things stood at a time asks what was due then, unless the clock is given too.
     let present = match as_of {
@@ -180,8 +191,7 @@ fn now(
         _ => context.now.max(moment),
     };
     let knowledge = &context.knowledge;
-    let assessor =
-        Assessor::new(knowledge, &context.site, Occasion::Review).at(present);
+    let assessor = Assessor::new(knowledge, &context.site, Occasion::Review).at(present);
     let last_row = log.rows.last().map(|row| row.time);
     let assessment = assessor.assess(&engine, &log.places, last_row);
     let report = Report {

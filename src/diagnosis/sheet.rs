@@ -120,6 +120,11 @@ impl<'k> Books<'_, 'k> {
         }
     }
 
+    /// What the n-th trigger of a cause does to the log of its odds.
+    pub fn trigger_weight(&self, cause: CauseId, n: usize) -> f64 {
+        odds::trigger(self.engine, cause, n)
+    }
+
     /// The proof of a test.
     pub fn prove(&self, test: &'k Test) -> Proof<'k> {
         prove(test, self.engine, self.site, self.limits, &|causes| {

@@ -122,7 +122,9 @@ fn causes(knowledge: &Knowledge, faults: &mut Vec<Fault>) {
 fn families(knowledge: &Knowledge, faults: &mut Vec<Fault>) {
     for (index, cause) in knowledge.causes.iter().enumerate() {
         let named = knowledge.families.iter().any(|f| f.id == cause.family);
-        let told = knowledge.causes[..index].iter().any(|c| c.family == cause.family);
+        let told = knowledge.causes[..index]
+            .iter()
+            .any(|c| c.family == cause.family);
         if !named && !told {
             faults.push(fault(
                 cause.place.as_ref(),

@@ -7,6 +7,8 @@ use crate::diagnosis::Verdict;
 pub enum Block {
     /// The first line: the verdict in words.
     Title(Verdict, String),
+    /// The name of what is explained.
+    Head(String),
     /// The head of a section.
     Heading(String),
     /// A paragraph.
@@ -23,11 +25,16 @@ pub enum Block {
     For(String),
     /// Speaks against the claim before.
     Against(String),
+    /// A line of a tree, so many steps in.
+    Branch(usize, String),
 }
 
 /// A heading as a sentence begins: the first letter large.
 pub(super) fn sentence(text: &str) -> String {
     let mut chars = text.chars();
+    if chars.clone().nth(1).is_some_and(char::is_uppercase) {
+        return text.to_owned(); // pH stays pH
+    }
     chars.next().map_or_else(String::new, |first| {
         first.to_uppercase().chain(chars).collect()
     })

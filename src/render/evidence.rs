@@ -60,6 +60,11 @@ impl Words<'_> {
             .any(|e| e.name == clause)
     }
 
+    /// A time as the site's clocks show it.
+    pub fn time(&self, time: i64) -> String {
+        when::short(time, &self.site.timezone)
+    }
+
     /// What was seen of a reading; `beside` is the clause it stands behind, which need not be said again.
     pub fn saw(&self, id: ReadingId, saw: &Saw, beside: &str) -> Option<String> {
         let reading = &self.knowledge.vocabulary[id];
@@ -85,8 +90,17 @@ impl Words<'_> {
                     *place,
                 )
             }
-            Saw::Moved { early, late, span: over, place } => (
-                format!("from about {} in {}", units::from_to(reading, *early, *late, system), span(*over)),
+            Saw::Moved {
+                early,
+                late,
+                span: over,
+                place,
+            } => (
+                format!(
+                    "from about {} in {}",
+                    units::from_to(reading, *early, *late, system),
+                    span(*over)
+                ),
                 *place,
             ),
             Saw::Against {

@@ -51,7 +51,7 @@ fn one(text: &mut String, fault: &Fault, color: bool) {
             );
         }
     }
-    let _ = writeln!(text, "  {} {}", blue.apply_to("so"), fault.cure);
+    let _ = writeln!(text, "  {} {}", blue.apply_to("fix:"), fault.cure);
 }
 
 /// Characters of a line that are shown around what is meant.

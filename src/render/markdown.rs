@@ -17,12 +17,17 @@ pub fn markdown(page: &[Block]) -> String {
 }
 
 fn is_item(block: &Block) -> bool {
-    !matches!(block, Block::Title(..) | Block::Heading(_) | Block::Para(_) | Block::Claim(_))
+    !matches!(
+        block,
+        Block::Title(..) | Block::Head(_) | Block::Heading(_) | Block::Para(_) | Block::Claim(_)
+    )
 }
 
 fn one(block: &Block) -> String {
     match block {
         Block::Title(_, text) => format!("# {}", escaped(text)),
+        Block::Head(text) => format!("# {}", escaped(text)),
+        Block::Branch(depth, text) => format!("{}- {}", "  ".repeat(*depth), escaped(text)),
         Block::Heading(text) => format!("## {}", escaped(text)),
         Block::Para(text) => escaped(text),
         Block::Numbered(number, text) => format!("{number}. {}", escaped(text)),
@@ -40,8 +45,10 @@ fn escaped(text: &str) -> String {
     let paired = text.matches('`').count() % 2 == 0;
     let mut out = String::with_capacity(text.len());
     for c in text.chars() {
-        let special = matches!(c, '\\' | '*' | '_' | '[' | ']' | '<' | '>' | '#' | '|' | '~')
-            || (c == '`' && !paired);
+        let special = matches!(
+            c,
+            '\\' | '*' | '_' | '[' | ']' | '<' | '>' | '#' | '|' | '~'
+        ) || (c == '`' && !paired);
         if special {
             out.push('\\');
         }

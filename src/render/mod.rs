@@ -4,6 +4,7 @@ mod block;
 mod evidence;
 mod fault;
 pub mod json;
+pub mod listing;
 mod look;
 mod markdown;
 mod page;
@@ -13,6 +14,7 @@ mod safe;
 mod text;
 mod units;
 mod when;
+pub mod why;
 
 pub use block::Block;
 

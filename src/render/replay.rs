@@ -9,7 +9,14 @@ use crate::knowledge::CauseId;
 pub fn line(report: &Report<'_>, leading: Option<CauseId>) -> String {
     let a = report.assessment;
     let leads = leading.map_or_else(
-        || if a.verdict == Verdict::Steady { "nothing wrong" } else { "nothing stands out" }.to_owned(),
+        || {
+            if a.verdict == Verdict::Steady {
+                "nothing wrong"
+            } else {
+                "nothing stands out"
+            }
+            .to_owned()
+        },
         |cause| {
             let likely = a
                 .causes

@@ -8,6 +8,9 @@ use super::block::Block;
 use super::safe::safe;
 use crate::diagnosis::Verdict;
 
+/// Lines of a tree move in no further than this many steps.
+const DEEPEST: usize = 9;
+
 /// Writes a page.
 pub fn text(page: &[Block], look: Look) -> String {
     let mut out = String::new();
@@ -24,8 +27,11 @@ pub fn text(page: &[Block], look: Look) -> String {
 /// An empty line stands before headings, and around paragraphs that follow a list.
 fn needs_room(block: &Block, before: Option<&Block>) -> bool {
     match block {
-        Block::Heading(_) => true,
-        Block::Para(_) => !matches!(before, Some(Block::Heading(_) | Block::Title(..))),
+        Block::Head(_) | Block::Heading(_) => true,
+        Block::Para(_) => !matches!(
+            before,
+            Some(Block::Head(_) | Block::Heading(_) | Block::Title(..))
+        ),
         _ => false,
     }
 }
@@ -33,9 +39,12 @@ fn needs_room(block: &Block, before: Option<&Block>) -> bool {
 fn one(block: &Block, look: Look) -> String {
     let style = |s: Style| s.force_styling(look.color);
     match block {
-        Block::Title(verdict, text) => {
-            style(of(*verdict)).apply_to(filled(text, "", "", look)).to_string()
-        }
+        Block::Title(verdict, text) => style(of(*verdict))
+            .apply_to(filled(text, "", "", look))
+            .to_string(),
+        Block::Head(text) => style(Style::new().bold())
+            .apply_to(filled(text, "", "", look))
+            .to_string(),
         Block::Heading(text) => style(Style::new().bold())
             .apply_to(filled(&text.to_uppercase(), "", "", look))
             .to_string(),
@@ -47,6 +56,10 @@ fn one(block: &Block, look: Look) -> String {
             .apply_to(filled(text, "", "  ", look))
             .to_string(),
         Block::For(text) => filled(text, "  + ", "    ", look),
+        Block::Branch(depth, text) => {
+            let indent = "  ".repeat((*depth).min(DEEPEST));
+            filled(text, &indent, &format!("{indent}    "), look)
+        }
         Block::Against(text) => filled(text, "  - ", "    ", look),
     }
 }

@@ -157,7 +157,11 @@ impl Shift {
             i64::from(t.hour()) * 3600 + i64::from(t.minute()) * 60 + i64::from(t.second())
         };
         let between = second(self.end) - second(self.start);
-        if self.crosses_midnight() { between + DAY } else { between }
+        if self.crosses_midnight() {
+            between + DAY
+        } else {
+            between
+        }
     }
 
     /// Whether a time of day is in the shift: from its start, up to but not at its end.

@@ -8,8 +8,8 @@ use super::tests::test;
 use crate::decode::Section;
 use crate::fault::Fault;
 use crate::knowledge::{
-    Cause, CauseId, Caution, Family, Finding, FindingId, Knowledge, Media, Reference, Round, Scales,
-    Species, Step, StepId,
+    Cause, CauseId, Caution, Family, Finding, FindingId, Knowledge, Media, Reference, Round,
+    Scales, Species, Step, StepId,
 };
 use crate::vocabulary::{ReadingId, Vocabulary};
 

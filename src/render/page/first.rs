@@ -44,7 +44,9 @@ pub(super) fn block(report: &Report<'_>, page: &mut Vec<Block>) -> Vec<String> {
             let named = named(&first, page);
             if let Some(minutes) = a.minutes_left {
                 let s = if minutes == 1 { "" } else { "s" };
-                page.push(Block::Para(format!("You may have {minutes} minute{s} or less.")));
+                page.push(Block::Para(format!(
+                    "You may have {minutes} minute{s} or less."
+                )));
             }
             named
         }
@@ -54,14 +56,21 @@ pub(super) fn block(report: &Report<'_>, page: &mut Vec<Block>) -> Vec<String> {
 /// The steps that fit every member of a family that leads as a whole, else the best there are.
 fn first_steps<'a>(report: &Report<'a>) -> Vec<&'a StepReport> {
     let a = report.assessment;
-    let common: Vec<&StepReport> = a.leading_family.iter().flat_map(|f| &f.first_steps)
+    let common: Vec<&StepReport> = a
+        .leading_family
+        .iter()
+        .flat_map(|f| &f.first_steps)
         .filter_map(|id| a.steps.iter().find(|s| s.id == *id))
         .collect();
     if !common.is_empty() {
         return common.into_iter().take(FIRST).collect();
     }
     let now: Vec<&StepReport> = a.steps.iter().filter(|s| s.when == When::Now).collect();
-    let best = if now.is_empty() { a.steps.iter().collect() } else { now };
+    let best = if now.is_empty() {
+        a.steps.iter().collect()
+    } else {
+        now
+    };
     best.into_iter().take(FIRST).collect()
 }
 

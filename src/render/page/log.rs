@@ -33,10 +33,17 @@ fn rows(count: usize) -> String {
 }
 
 fn said(problem: &Problem, many_files: bool) -> String {
-    let file = if many_files { format!("{}, ", problem.file) } else { String::new() };
+    let file = if many_files {
+        format!("{}, ", problem.file)
+    } else {
+        String::new()
+    };
     let column = problem
         .column
         .as_ref()
         .map_or_else(String::new, |c| format!(", column `{c}`"));
-    format!("{file}line {}{column}: {}; {}", problem.line, problem.reason, problem.cure)
+    format!(
+        "{file}line {}{column}: {}; {}",
+        problem.line, problem.reason, problem.cure
+    )
 }

@@ -30,7 +30,9 @@ pub(super) fn projections(report: &Report<'_>) -> Vec<String> {
     let zone = &report.site.timezone;
     let at = |p: &crate::assessment::Projection| {
         let earliest = when::short(p.earliest, zone);
-        let latest = p.latest.map_or_else(String::new, |l| format!(", by {} at the latest", when::short(l, zone)));
+        let latest = p.latest.map_or_else(String::new, |l| {
+            format!(", by {} at the latest", when::short(l, zone))
+        });
         format!("{}: from {earliest} at the earliest{latest}", p.limit)
     };
     report.assessment.projections.iter().map(at).collect()
@@ -39,7 +41,11 @@ pub(super) fn projections(report: &Report<'_>) -> Vec<String> {
 /// What the farm has changed.
 pub(super) fn overrides(report: &Report<'_>) -> Vec<String> {
     let told = |o: &crate::assessment::Override| {
-        let how = if o.loosens { " (less careful than shipped)" } else { "" };
+        let how = if o.loosens {
+            " (less careful than shipped)"
+        } else {
+            ""
+        };
         format!("{}: {} instead of {}{how}", o.id, o.to, o.from)
     };
     report.assessment.overrides.iter().map(told).collect()

@@ -24,12 +24,20 @@ pub fn diagnosis(report: &Report<'_>) -> Vec<Block> {
         if a.verdict > Verdict::Watch {
             reasons::missing(report, &mut page);
         }
-        list(&mut page, "Leave alone", a.avoid.iter().map(|w| w.text.clone()));
+        list(
+            &mut page,
+            "Leave alone",
+            a.avoid.iter().map(|w| w.text.clone()),
+        );
         steps::calls(report, &mut page);
     }
     list(&mut page, "If nothing is done", made::projections(report));
     list(&mut page, "Changed for this farm", made::overrides(report));
-    list(&mut page, "Cautions", a.cautions.iter().map(|(_, text)| text.clone()));
+    list(
+        &mut page,
+        "Cautions",
+        a.cautions.iter().map(|(_, text)| text.clone()),
+    );
     log::block(report, &mut page);
     made::block(report, &mut page);
     page

@@ -2,9 +2,9 @@
 
 use crate::assessment::{Assessment, CauseReport, Missing};
 use crate::fault::shown;
+use crate::render::Report;
 use crate::render::block::{Block, sentence};
 use crate::render::evidence::Words;
-use crate::render::Report;
 
 /// So many causes are shown, and so many lines for and against each.
 const CAUSES: usize = 3;
@@ -13,7 +13,9 @@ const LINES: usize = 3;
 /// Dangers, then the leading causes.
 pub(super) fn block(report: &Report<'_>, page: &mut Vec<Block>) {
     let a = report.assessment;
-    page.push(Block::Heading("Why (+ speaks for it, - against it)".to_owned()));
+    page.push(Block::Heading(
+        "Why (+ speaks for it, - against it)".to_owned(),
+    ));
     if !a.dangers.is_empty() {
         page.push(Block::Para(format!("Danger: {}.", a.dangers.join("; "))));
     }
@@ -40,17 +42,34 @@ pub(super) fn block(report: &Report<'_>, page: &mut Vec<Block>) {
 fn worth_showing<'a>(report: &Report<'a>) -> Vec<&'a CauseReport> {
     let least = report.knowledge.scales.words.last().map(|(_, word)| word);
     let likely = |c: &&CauseReport| Some(&c.likely) != least;
-    report.assessment.causes.iter().filter(likely).take(CAUSES).collect()
+    report
+        .assessment
+        .causes
+        .iter()
+        .filter(likely)
+        .take(CAUSES)
+        .collect()
 }
 
 fn claim(cause: &CauseReport, words: &Words<'_>, page: &mut Vec<Block>) {
-    let place = cause.place.as_ref().map_or_else(String::new, |p| format!(" (at {})", shown(p)));
-    page.push(Block::Claim(format!("{}: {}{place}.", sentence(&cause.likely), cause.name)));
+    let place = cause
+        .place
+        .as_ref()
+        .map_or_else(String::new, |p| format!(" (at {})", shown(p)));
+    page.push(Block::Claim(format!(
+        "{}: {}{place}.",
+        sentence(&cause.likely),
+        cause.name
+    )));
     let lines = |pieces: &[crate::diagnosis::Piece]| -> Vec<String> {
         pieces.iter().take(LINES).map(|p| words.piece(p)).collect()
     };
     page.extend(lines(&cause.evidence_for).into_iter().map(Block::For));
-    page.extend(lines(&cause.evidence_against).into_iter().map(Block::Against));
+    page.extend(
+        lines(&cause.evidence_against)
+            .into_iter()
+            .map(Block::Against),
+    );
     if !cause.leaves_unexplained.is_empty() {
         page.push(Block::Under(format!(
             "It does not explain: {}.",

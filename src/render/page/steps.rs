@@ -18,7 +18,10 @@ const VERIFY: usize = 4;
 /// All steps but those that were named before.
 pub(super) fn block(report: &Report<'_>, named: &[String], page: &mut Vec<Block>) {
     let a = report.assessment;
-    let mut shown: Vec<&StepReport> = a.first_aid.iter().chain(&a.steps)
+    let mut shown: Vec<&StepReport> = a
+        .first_aid
+        .iter()
+        .chain(&a.steps)
         .filter(|s| named.contains(&s.id))
         .collect();
     let mut left = 0;
@@ -50,7 +53,9 @@ pub(super) fn block(report: &Report<'_>, named: &[String], page: &mut Vec<Block>
 
 /// What to look at before the step.
 pub(super) fn check_first(step: &StepReport) -> impl Iterator<Item = Block> {
-    step.check_first.iter().map(|c| Block::Under(format!("Check first: {c}")))
+    step.check_first
+        .iter()
+        .map(|c| Block::Under(format!("Check first: {c}")))
 }
 
 /// How it shows that the steps work, each sign once.
@@ -75,7 +80,11 @@ fn success(report: &Report<'_>, verify: &VerifyReport) -> String {
         return format!("over by {by}: {}", words[sign].name);
     }
     let name = words.reading(id).map_or(id, |r| words[r].name.as_str());
-    let direction = if verify.direction == "gone" { "no longer read" } else { &verify.direction };
+    let direction = if verify.direction == "gone" {
+        "no longer read"
+    } else {
+        &verify.direction
+    };
     format!("{name} is {direction} by {by}")
 }
 
