@@ -56,7 +56,7 @@ impl Context {
     /// A time given on the command line, in the site's zone where it says none.
     pub fn time(&self, option: &str, text: &str) -> Result<i64, Stop> {
         log::read_time(text, &self.site.timezone).map_err(|fault| {
-            Stop::Usage(Fault {
+            Stop::usage(Fault {
                 reason: format!("`{option}`: {}", fault.reason),
                 ..fault
             })
@@ -146,7 +146,7 @@ pub(super) fn only(format: Format, command: &str, has: &[Format]) -> Result<(), 
         return Ok(());
     }
     let names: Vec<&str> = has.iter().map(|f| f.word()).collect();
-    Err(Stop::Usage(Fault::whole(
+    Err(Stop::usage(Fault::whole(
         "no-such-format",
         format!("`{command}` can't be written as {}", format.word()),
         format!("use --format {}", names.join(" or ")),

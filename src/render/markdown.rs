@@ -42,7 +42,7 @@ fn one(block: &Block) -> String {
 /// Marks that would be read as Markdown or HTML, behind a backslash; code marks that pair up stay.
 fn escaped(text: &str) -> String {
     let text = safe(text);
-    let paired = text.matches('`').count() % 2 == 0;
+    let paired = text.matches('`').count().is_multiple_of(2);
     let mut out = String::with_capacity(text.len());
     for c in text.chars() {
         let special = matches!(

@@ -36,7 +36,7 @@ DO FIRST
         "\nLEAVE ALONE\n- Do not heat the water fast",
         "\nCAUTIONS\n",
         "61 of 61 rows read and used, 0 refused.",
-        "no house rules; site file ",
+        "no house rules; site file",
     ] {
         assert!(
             came.out.contains(part),
