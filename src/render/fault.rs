@@ -4,7 +4,8 @@ use std::fmt::Write as _;
 
 use console::Style;
 
-use crate::fault::{Fault, shown};
+use super::safe::safe;
+use crate::fault::Fault;
 
 /// All faults of one run; empty for none.
 pub fn faults(faults: &[Fault], color: bool) -> String {
@@ -24,11 +25,11 @@ fn one(text: &mut String, fault: &Fault, color: bool) {
         text,
         "{}: {} [{}]",
         red.apply_to("error"),
-        fault.reason,
+        safe(&fault.reason),
         fault.code
     );
     if let Some(place) = &fault.place {
-        let file = shown(&place.file);
+        let file = safe(&place.file);
         let _ = writeln!(
             text,
             "  {} {file}:{}:{}",
@@ -51,7 +52,7 @@ fn one(text: &mut String, fault: &Fault, color: bool) {
             );
         }
     }
-    let _ = writeln!(text, "  {} {}", blue.apply_to("fix:"), fault.cure);
+    let _ = writeln!(text, "  {} {}", blue.apply_to("fix:"), safe(&fault.cure));
 }
 
 /// Characters of a line that are shown around what is meant.

@@ -34,6 +34,11 @@ pub(super) fn block(report: &Report<'_>, named: &[String], page: &mut Vec<Block>
         if steps.is_empty() {
             continue;
         }
+        let heading = if time == When::Now && named.is_empty() {
+            "Now"
+        } else {
+            heading
+        };
         page.push(Block::Heading(heading.to_owned()));
         for step in steps.iter().take(most) {
             page.push(Block::Bullet(step.text.clone()));
