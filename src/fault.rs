@@ -1,6 +1,9 @@
 //! One fault in something a person wrote: where it is, what is wrong, what to do.
 
 use std::fmt;
+use std::sync::OnceLock;
+
+use serde::{Deserialize, Serialize};
 
 /// A text with a name: a file, standard input, or an embedded file of the rule base.
 #[derive(Debug, Clone)]
@@ -9,6 +12,8 @@ pub struct Source {
     pub name: String,
     /// The whole text.
     pub text: String,
+    /// Where each line begins, counted when a place is first asked for.
+    lines: OnceLock<Vec<usize>>,
 }
 
 impl Source {
@@ -17,7 +22,23 @@ impl Source {
         Self {
             name: name.into(),
             text: text.into(),
+            lines: OnceLock::new(),
         }
+    }
+
+    fn line_starts(&self) -> &[usize] {
+        self.lines.get_or_init(|| {
+            let ends = self.text.match_indices('\n').map(|(at, _)| at + 1);
+            std::iter::once(0).chain(ends).collect()
+        })
+    }
+
+    /// A line, from 1, without its end.
+    fn line(&self, number: usize) -> &str {
+        let starts = self.line_starts();
+        let start = number.checked_sub(1).and_then(|i| starts.get(i));
+        let rest = start.and_then(|start| self.text.get(*start..)).unwrap_or("");
+        rest.lines().next().unwrap_or("")
     }
 
     /// Line and column (both from 1, column in characters) of a byte offset; an offset past the end is the end.
@@ -26,15 +47,15 @@ impl Source {
         while !self.text.is_char_boundary(end) {
             end -= 1;
         }
-        let before = &self.text[..end];
-        let line = before.matches('\n').count() + 1;
-        let start = before.rfind('\n').map_or(0, |i| i + 1);
-        (line, before[start..].chars().count() + 1)
+        let starts = self.line_starts();
+        let line = starts.partition_point(|start| *start <= end);
+        let start = line.checked_sub(1).and_then(|i| starts.get(i)).copied().unwrap_or(0);
+        (line, self.text[start..end].chars().count() + 1)
     }
 }
 
 /// Where a fault is.
-#[derive(Debug, Clone, PartialEq, Eq)]
+#[derive(Debug, Clone, PartialEq, Eq, Serialize, Deserialize)]
 pub struct Place {
     /// The name of the text.
     pub file: String,
@@ -71,7 +92,7 @@ impl Fault {
         cure: impl Into<String>,
     ) -> Self {
         let (line, column) = source.position(span.start);
-        let excerpt = source.text.lines().nth(line - 1).unwrap_or("").to_owned();
+        let excerpt = source.line(line).to_owned();
         let rest = excerpt.chars().count().saturating_sub(column - 1);
         let wanted = source
             .text

@@ -92,10 +92,11 @@ impl Context {
 }
 
 fn rule_base(common: &Common, site_file: Option<&Path>) -> Result<Knowledge, Stop> {
-    let house = house_rules(common, site_file)?;
-    let files = house.as_ref().map_or(&[][..], |(_, files)| files);
-    let mut base = knowledge::load(&knowledge::embedded(), files).map_err(Stop::Rules)?;
-    base.house_rules = house.map(|(folder, _)| folder);
+    let Some((folder, files)) = house_rules(common, site_file)? else {
+        return knowledge::shipped().map_err(Stop::Rules);
+    };
+    let mut base = knowledge::load(&knowledge::embedded(), &files).map_err(Stop::Rules)?;
+    base.house_rules = Some(folder);
     Ok(base)
 }
 

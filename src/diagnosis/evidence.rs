@@ -30,7 +30,7 @@ pub struct Table {
     pub items: Vec<Item>,
     /// By cause: item index and how often it shows, by rising index.
     pub by_cause: Vec<Vec<(usize, f64)>>,
-    groups: usize,
+    pub(super) groups: usize,
 }
 
 impl Table {

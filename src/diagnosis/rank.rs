@@ -303,3 +303,68 @@ pub(super) fn enumerate(
     }
     probabilities.iter().map(|p| p / total).collect()
 }
+
+#[cfg(test)]
+mod tests {
+    use proptest::prelude::*;
+
+    use super::super::evidence::Item;
+    use super::*;
+    use crate::knowledge::{Evidence, FindingId};
+
+    const CAUSES: usize = 6;
+    const ITEMS: usize = 9;
+
+    /// A random small rule base: backgrounds, groups and how often each cause shows each item.
+    fn table(numbers: &[(f64, usize, Vec<Option<f64>>)]) -> Table {
+        let mut by_cause = vec![Vec::new(); CAUSES];
+        let items = numbers
+            .iter()
+            .enumerate()
+            .map(|(at, (background, group, seen))| {
+                let causes: Vec<(CauseId, f64)> = seen
+                    .iter()
+                    .enumerate()
+                    .filter_map(|(c, s)| Some((CauseId(u16::try_from(c).ok()?), (*s)?)))
+                    .collect();
+                for (c, s) in &causes {
+                    by_cause[c.index()].push((at, *s));
+                }
+                Item {
+                    evidence: Evidence::Finding(FindingId(u16::try_from(at).unwrap_or(0))),
+                    background: *background,
+                    group: *group,
+                    alarming: false,
+                    expected: causes.iter().map(|c| c.1).fold(0.0, f64::max),
+                    causes,
+                }
+            })
+            .collect();
+        Table {
+            items,
+            by_cause,
+            groups: ITEMS,
+        }
+    }
+
+    proptest! {
+        #[test]
+        fn pruning_stays_within_a_millionth_of_full_enumeration(
+            numbers in prop::collection::vec(
+                (0.005..0.9_f64, 0..ITEMS, prop::collection::vec(prop::option::of(0.01..0.99_f64), CAUSES)),
+                ITEMS,
+            ),
+            known in prop::collection::vec((0.0..=1.0_f64, 0.0..=1.0_f64), ITEMS),
+            log_odds in prop::collection::vec(-9.0..4.0_f64, CAUSES),
+            second in 0.05..1.0_f64,
+        ) {
+            let table = table(&numbers);
+            let degrees: Vec<Degree> = known.iter().map(|(a, b)| Degree::between(*a, *b)).collect();
+            let quick = rank(&table, &degrees, &log_odds, second, 0.7);
+            let full = enumerate(&table, &degrees, &log_odds, second, 0.7, 2);
+            for (a, b) in quick.causes.iter().zip(full) {
+                prop_assert!((a - b).abs() < 1e-6, "{a} {b}");
+            }
+        }
+    }
+}

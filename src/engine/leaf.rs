@@ -169,6 +169,8 @@ fn fade(time: i64, now: i64, good_for: i64) -> (f64, i64) {
 
 /// A jump of the last reading alone, not yet confirmed by another, counts for no more than this.
 const UNCONFIRMED: f64 = 0.6;
+/// How much a value that stands alone is faded until it is borne out; more than half, so that it decides nothing alone.
+const DOUBTED: f64 = 0.6;
 /// How far back the farm's own usual reaches, what of it is too recent to be usual, and how many days must tell.
 const USUAL_WINDOW: i64 = 35 * 86_400;
 const USUAL_RECENT: i64 = 3 * 86_400;
@@ -452,8 +454,14 @@ fn places(
             }
         });
     }
+    // A value that nothing bears out yet is read again before it is believed.
+    let doubt = if memory.is_doubtful(reading) { DOUBTED } else { 0.0 };
     match chosen {
-        Some(judged) => Judged { until, ..judged },
+        Some(judged) => Judged {
+            until,
+            degree: judged.degree.faded(doubt),
+            ..judged
+        },
         None => Judged {
             until,
             ..Judged::unknown()

@@ -1,13 +1,14 @@
 //! What the rule base is made of. Field by field this is `knowledge/README.md`.
 
 use std::collections::BTreeMap;
+use serde::{Deserialize, Serialize};
 
 use super::{CauseId, FindingId, LimitLevel, Side, StepId, Test};
 use crate::fault::Place;
 use crate::vocabulary::{ReadingId, SignId, Vocabulary};
 
 /// How soon something harms.
-#[derive(Debug, Clone, Copy, PartialEq, Eq, PartialOrd, Ord, Hash)]
+#[derive(Debug, Clone, Copy, PartialEq, Eq, PartialOrd, Ord, Hash, Serialize, Deserialize)]
 pub enum Urgency {
     /// Plants, stock growth.
     Weeks,
@@ -39,7 +40,7 @@ impl Urgency {
 }
 
 /// When a step is due.
-#[derive(Debug, Clone, Copy, PartialEq, Eq, PartialOrd, Ord, Hash)]
+#[derive(Debug, Clone, Copy, PartialEq, Eq, PartialOrd, Ord, Hash, Serialize, Deserialize)]
 pub enum When {
     /// In the first minutes.
     Now,
@@ -71,7 +72,7 @@ impl When {
 }
 
 /// What follows from readings, signs, events and other findings.
-#[derive(Debug, Clone)]
+#[derive(Debug, Clone, Serialize, Deserialize)]
 pub struct Finding {
     /// Kebab-case id.
     pub id: String,
@@ -96,7 +97,7 @@ pub struct Finding {
 }
 
 /// What an effect looks at.
-#[derive(Debug, Clone, Copy, PartialEq, Eq, Hash)]
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Hash, Serialize, Deserialize)]
 pub enum Evidence {
     /// A finding.
     Finding(FindingId),
@@ -105,7 +106,7 @@ pub enum Evidence {
 }
 
 /// What makes a cause likelier before any effect is seen.
-#[derive(Debug, Clone)]
+#[derive(Debug, Clone, Serialize, Deserialize)]
 pub struct Trigger {
     /// When it holds.
     pub when: Test,
@@ -118,7 +119,7 @@ pub struct Trigger {
 }
 
 /// What a cause does, and how often it shows.
-#[derive(Debug, Clone)]
+#[derive(Debug, Clone, Serialize, Deserialize)]
 pub struct Effect {
     /// The finding or sign.
     pub evidence: Evidence,
@@ -131,7 +132,7 @@ pub struct Effect {
 }
 
 /// Which reading or sign shows recovery, which way, by when.
-#[derive(Debug, Clone)]
+#[derive(Debug, Clone, Serialize, Deserialize)]
 pub struct Verify {
     /// Reading or sign id.
     pub id: String,
@@ -142,7 +143,7 @@ pub struct Verify {
 }
 
 /// A cause that looks like another.
-#[derive(Debug, Clone)]
+#[derive(Debug, Clone, Serialize, Deserialize)]
 pub struct Lookalike {
     /// The other one.
     pub cause: CauseId,
@@ -151,7 +152,7 @@ pub struct Lookalike {
 }
 
 /// What may be wrong.
-#[derive(Debug, Clone)]
+#[derive(Debug, Clone, Serialize, Deserialize)]
 pub struct Cause {
     /// Contract id.
     pub id: String,
@@ -186,7 +187,7 @@ pub struct Cause {
 }
 
 /// What to do, or to leave alone.
-#[derive(Debug, Clone)]
+#[derive(Debug, Clone, Serialize, Deserialize)]
 pub struct Step {
     /// Kebab-case id.
     pub id: String,
@@ -229,7 +230,7 @@ pub struct Step {
 }
 
 /// What is said with every answer it applies to.
-#[derive(Debug, Clone)]
+#[derive(Debug, Clone, Serialize, Deserialize)]
 pub struct Caution {
     /// Kebab-case id.
     pub id: String,
@@ -246,7 +247,7 @@ pub struct Caution {
 }
 
 /// One species and its limits.
-#[derive(Debug, Clone)]
+#[derive(Debug, Clone, Serialize, Deserialize)]
 pub struct Species {
     /// Contract id.
     pub id: String,
@@ -274,7 +275,7 @@ impl Species {
 }
 
 /// What is looked at how often.
-#[derive(Debug, Clone)]
+#[derive(Debug, Clone, Serialize, Deserialize)]
 pub struct Round {
     /// Kebab-case id.
     pub id: String,
@@ -297,7 +298,7 @@ pub struct Round {
 }
 
 /// Wetted area of a filter medium.
-#[derive(Debug, Clone)]
+#[derive(Debug, Clone, Serialize, Deserialize)]
 pub struct Media {
     /// Kebab-case id.
     pub id: String,
@@ -310,7 +311,7 @@ pub struct Media {
 }
 
 /// A family of causes that a log often can't tell apart.
-#[derive(Debug, Clone)]
+#[derive(Debug, Clone, Serialize, Deserialize)]
 pub struct Family {
     /// Kebab-case id.
     pub id: String,
@@ -321,7 +322,7 @@ pub struct Family {
 }
 
 /// A publication.
-#[derive(Debug, Clone)]
+#[derive(Debug, Clone, Serialize, Deserialize)]
 pub struct Reference {
     /// Key.
     pub key: String,
@@ -338,7 +339,7 @@ pub struct Reference {
 }
 
 /// Priors, thresholds of the verdict and words: `knowledge/scales.toml`.
-#[derive(Debug, Clone)]
+#[derive(Debug, Clone, Serialize, Deserialize)]
 pub struct Scales {
     /// How likely it is that anything is wrong, in a routine review.
     pub incident_review: f64,
@@ -379,7 +380,7 @@ pub struct Scales {
 }
 
 /// The whole rule base.
-#[derive(Debug, Clone)]
+#[derive(Debug, Clone, Serialize, Deserialize)]
 pub struct Knowledge {
     /// Readings, signs and events.
     pub vocabulary: Vocabulary,

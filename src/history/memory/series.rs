@@ -212,6 +212,22 @@ impl Series {
         shift(&thinned(points))
     }
 
+    /// Whether the last value lies far outside what is usual here while the one before it did not; `None` where there is
+    /// no usual yet.
+    pub fn outlier(&self) -> Option<bool> {
+        /// Weeks make a usual; the last reading but one may be of yesterday.
+        const WINDOW: i64 = 35 * DAY;
+        const DAYS: usize = 6;
+        /// So many robust spreads away is far outside.
+        const FAR: f64 = 6.0;
+        let usual = self.usual(WINDOW, DAY / 2, DAYS)?;
+        let (last, before) = (self.last()?.1, self.before_last()?.1);
+        // A spread smaller than a twentieth of the level would make an outlier of ordinary wobble.
+        let spread = usual.spread.max(self.step(usual.middle)).max(0.05 * usual.middle.abs());
+        let far = |value: f64| (value - usual.middle).abs() > FAR * spread;
+        Some(far(last) && !far(before))
+    }
+
     /// What was usual in the `window` seconds that ended `recent` seconds before the last value; at least `days` days
     /// must tell.
     pub fn usual(&self, window: i64, recent: i64, days: usize) -> Option<Usual> {
