@@ -59,7 +59,8 @@ fn calculate(args: &WaterArgs, common: &Common, output: &mut Output) -> Result<E
     };
     let context = Context::load(common)?;
     let mut text = Vec::new();
-    water::run(args, format, &context.site_values(), &mut text).map_err(Stop::Water)?;
+    water::run(args, format, &context.site_values(), &mut text)
+        .map_err(|error| Stop::Water(Box::new(error)))?;
     output.write(&String::from_utf8_lossy(&text))?;
     Ok(Exit::Done)
 }

@@ -430,6 +430,12 @@ impl Knowledge {
         position(&self.steps, |s| s.id == id).map(StepId)
     }
 
+    /// Wetted square meters in a cubic meter of a kind of media.
+    pub fn media_m2_per_m3(&self, kind: &str) -> Option<f64> {
+        let media = self.media.iter().find(|m| m.id == kind)?;
+        Some(media.area_m2_per_l * 1000.0)
+    }
+
     /// The causes of a family.
     pub fn family<'k>(&'k self, family: &'k str) -> impl Iterator<Item = CauseId> + 'k {
         self.causes
