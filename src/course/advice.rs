@@ -57,8 +57,10 @@ const LEAST_OF_ITS_TIME: f64 = 0.2;
 const LEAST_OF_ALL: f64 = 0.06;
 /// Causes named with a step.
 const BECAUSE: usize = 4;
-/// A cause this likely may be acted on, and not only looked at, while nothing is urgent.
-const ACT_ON_WATCH: f64 = 0.25;
+/// A cause this likely may be acted on, and not only looked at, while nothing is urgent; the smaller one where it takes
+/// weeks to harm, and a wrong step does little.
+const ACT_ON_WATCH: f64 = 0.5;
+const ACT_ON_WATCH_WEEKS: f64 = 0.25;
 /// What is forbidden but would help is named under avoid with this share of its good as harm.
 const TEMPTS: f64 = 0.4;
 /// When fish may die within minutes, a cause that kills in minutes counts at least so likely for first aid.
@@ -239,8 +241,10 @@ struct Weighed {
     standing: Standing,
     good: Vec<(CauseId, f64)>,
     harm: Vec<(CauseId, f64)>,
-    /// The likeliest cause that it helps under.
+    /// How likely the likeliest cause is that it helps under.
     likeliest: f64,
+    /// One of those causes is likely enough to act on while nothing is urgent.
+    on_watch: bool,
 }
 
 fn sum(shares: &[(CauseId, f64)]) -> f64 {
@@ -256,6 +260,13 @@ fn weigh(ground: &Ground<'_, '_>, step: &Step) -> Weighed {
             .iter()
             .map(|(c, _)| ground.ranking.of(*c))
             .fold(0.0, f64::max),
+        on_watch: good.iter().any(|(c, _)| {
+            let least = match ground.knowledge[*c].urgency {
+                Urgency::Weeks => ACT_ON_WATCH_WEEKS,
+                _ => ACT_ON_WATCH,
+            };
+            ground.ranking.of(*c) >= least
+        }),
         good,
     }
 }
@@ -270,10 +281,10 @@ impl Weighed {
     }
 
     fn advised(&self, ground: &Ground<'_, '_>, step: &Step) -> bool {
-        // Nothing urgent: to look costs little; to act takes a cause that is likely, and no harm under another.
+        // Nothing urgent: to look costs little; to act takes a likely cause, and hardly any harm under another.
         let fits = step.looks
             || ground.decision.verdict > Verdict::Watch
-            || (self.likeliest >= ACT_ON_WATCH && self.harm.is_empty());
+            || (self.on_watch && sum(&self.harm) < sum(&self.good) / 4.0);
         !step.temptation
             && fits
             && self.worth() > ground.knowledge.scales.step_floor / 4.0
@@ -316,11 +327,7 @@ fn one_of_each_choice<'g, T>(list: &mut Vec<T>, choice: impl Fn(&T) -> &'g str) 
 fn shorten(ground: &Ground<'_, '_>, steps: &mut Vec<Advised>, aid: &[StepId]) {
     let when = |a: &Advised| ground.knowledge[a.step].when;
     let in_aid = |a: &Advised| aid.contains(&a.step);
-    steps.sort_by(|a, b| {
-        in_aid(b)
-            .cmp(&in_aid(a))
-            .then(b.worth.total_cmp(&a.worth))
-    });
+    steps.sort_by(|a, b| in_aid(b).cmp(&in_aid(a)).then(b.worth.total_cmp(&a.worth)));
     one_of_each_choice(steps, |a| choice(ground, a.step));
     steps.sort_by(|a, b| when(a).cmp(&when(b)).then(b.worth.total_cmp(&a.worth)));
     let best = |of: Option<When>| {
