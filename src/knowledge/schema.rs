@@ -203,6 +203,10 @@ pub struct Step {
     pub people_first: bool,
     /// Never advised, only ever named under avoid.
     pub temptation: bool,
+    /// It only looks or measures: no harm under any cause.
+    pub looks: bool,
+    /// Steps of one choice stand for one another, and only the one worth most is said; empty for none.
+    pub choice: String,
     /// Minutes of work.
     pub effort: f64,
     /// Good done under a cause, 0 to 1.
