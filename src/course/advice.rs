@@ -130,6 +130,12 @@ impl Ground<'_, '_> {
         standing
     }
 
+    /// The law or a life hangs on it: when what it needs is known to hold it leads its list and is never left out.
+    fn pinned(&self, step: StepId) -> bool {
+        let step = &self.knowledge[step];
+        step.pinned && step.needs.as_ref().is_none_or(|n| self.holds(n))
+    }
+
     /// First aid can't wait for measurements: only what is known to forbid it stops a step. What it needs must be known.
     fn fit_for_first_aid(&self, step: &Step) -> bool {
         let needed = step.needs.as_ref().is_none_or(|n| self.holds(n));
@@ -229,7 +235,10 @@ pub fn advise(ground: &Ground<'_, '_>) -> Advice {
             });
         }
     }
-    advice.avoid.sort_by(|a, b| b.harm.total_cmp(&a.harm));
+    let pinned = |w: &Warned| ground.pinned(w.step);
+    advice
+        .avoid
+        .sort_by(|a, b| pinned(b).cmp(&pinned(a)).then(b.harm.total_cmp(&a.harm)));
     one_of_each_choice(&mut advice.avoid, |w| choice(ground, w.step));
     advice.avoid.truncate(AVOID);
     shorten(ground, &mut advice.steps, &aid);
@@ -329,7 +338,13 @@ fn shorten(ground: &Ground<'_, '_>, steps: &mut Vec<Advised>, aid: &[StepId]) {
     let in_aid = |a: &Advised| aid.contains(&a.step);
     steps.sort_by(|a, b| in_aid(b).cmp(&in_aid(a)).then(b.worth.total_cmp(&a.worth)));
     one_of_each_choice(steps, |a| choice(ground, a.step));
-    steps.sort_by(|a, b| when(a).cmp(&when(b)).then(b.worth.total_cmp(&a.worth)));
+    let pinned = |a: &Advised| ground.pinned(a.step);
+    steps.sort_by(|a, b| {
+        when(a)
+            .cmp(&when(b))
+            .then(pinned(b).cmp(&pinned(a)))
+            .then(b.worth.total_cmp(&a.worth))
+    });
     let best = |of: Option<When>| {
         steps
             .iter()
@@ -353,7 +368,7 @@ fn shorten(ground: &Ground<'_, '_>, steps: &mut Vec<Advised>, aid: &[StepId]) {
         let (Some((_, least, most)), Some(count)) = (least.get(at), counted.get_mut(at)) else {
             return true;
         };
-        let kept = a.worth >= *least && *count < *most;
+        let kept = (a.worth >= *least || pinned(a)) && *count < *most;
         *count += usize::from(kept);
         kept
     });
@@ -381,7 +396,7 @@ fn first_aid(ground: &Ground<'_, '_>) -> Vec<Advised> {
             let good = ground.expected(step.helps.iter(), least);
             let harm = ground.expected(step.harms.iter(), |_| 0.0);
             let worth = sum(&good) - sum(&harm);
-            (worth > 0.0 || step.people_first).then(|| Advised {
+            (worth > 0.0 || step.people_first || ground.pinned(id)).then(|| Advised {
                 step: id,
                 because: good.iter().map(|s| s.0).take(BECAUSE).collect(),
                 check_first: false,
@@ -394,6 +409,10 @@ fn first_aid(ground: &Ground<'_, '_>) -> Vec<Advised> {
     // The line for people opens first aid, whatever it is worth to the fish.
     let people = |a: &Advised| ground.knowledge[a.step].people_first;
     let opening = aid.iter().position(people).map(|at| aid.remove(at));
-    aid.truncate(FIRST_AID - usize::from(opening.is_some()));
+    let most = FIRST_AID - usize::from(opening.is_some());
+    while aid.len() > most {
+        let least = aid.iter().rposition(|a| !ground.pinned(a.step));
+        aid.remove(least.unwrap_or(most));
+    }
     opening.into_iter().chain(aid).collect()
 }

@@ -205,6 +205,8 @@ pub struct Step {
     pub temptation: bool,
     /// It only looks or measures: no harm under any cause.
     pub looks: bool,
+    /// The law or a life hangs on it: when its `needs` holds it leads its list and is never left out.
+    pub pinned: bool,
     /// Steps of one choice stand for one another, and only the one worth most is said; empty for none.
     pub choice: String,
     /// Minutes of work.

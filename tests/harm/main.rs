@@ -12,6 +12,7 @@ mod words;
 
 use gillside::assessment::{Assessor, Review};
 use gillside::course::{Advice, Ground, advise};
+use gillside::diagnosis::Doctor;
 use gillside::engine::Engine;
 use gillside::knowledge::{self, Knowledge, StepId, When};
 
@@ -104,6 +105,6 @@ impl<'k> Page<'k> {
 
     fn probability(&self, cause: &str) -> f64 {
         let id = self.knowledge.cause(cause).expect("a known cause");
-        self.review.ranking.of(id)
+        Doctor::any_of(&self.review.ranking, &[id])
     }
 }

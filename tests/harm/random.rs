@@ -90,6 +90,40 @@ pub fn site(knowledge: &Knowledge, dice: &mut Dice) -> Site {
     site
 }
 
+/// What kind of days a farm has.
+#[derive(Debug, Clone, Copy, PartialEq, Eq)]
+pub enum Days {
+    /// Anything may be read, seen and done.
+    Wild,
+    /// Good water, and now and then one thing that is odd.
+    Calm,
+    /// Good water, and fish that show something.
+    Sick,
+}
+
+impl Days {
+    pub fn random(dice: &mut Dice) -> Self {
+        match dice.below(4) {
+            0 | 1 => Self::Wild,
+            2 => Self::Calm,
+            _ => Self::Sick,
+        }
+    }
+}
+
+/// Good water for most fish of a planted loop.
+const GOOD: [(&str, f64); 9] = [
+    ("dissolved-oxygen", 7.0),
+    ("temperature", 22.0),
+    ("ph", 6.9),
+    ("total-ammonia", 0.15),
+    ("nitrite", 0.03),
+    ("nitrate", 40.0),
+    ("alkalinity", 80.0),
+    ("chloride", 60.0),
+    ("conductivity", 800.0),
+];
+
 /// A value anywhere in what is plausible, low ones more often: poisons and nutrients live near zero.
 fn value(range: (f64, f64), dice: &mut Dice) -> f64 {
     let bend = [1.0, 2.0, 4.0, 8.0][dice.below(4)];
@@ -97,7 +131,7 @@ fn value(range: (f64, f64), dice: &mut Dice) -> f64 {
 }
 
 /// A row some time after the last one: readings, signs looked for, and events, each known or not.
-pub fn row(knowledge: &Knowledge, after: i64, dice: &mut Dice) -> Row {
+pub fn row(knowledge: &Knowledge, days: Days, after: i64, dice: &mut Dice) -> Row {
     let words = &knowledge.vocabulary;
     let gap = [600, 3600, 6 * 3600, 86_400, 4 * 86_400][dice.below(5)];
     #[allow(clippy::cast_possible_truncation)]
@@ -106,33 +140,48 @@ pub fn row(knowledge: &Knowledge, after: i64, dice: &mut Dice) -> Row {
         time: after + wait,
         ..Row::default()
     };
-    let known = dice.share().powi(2);
+    let (known, looked, seen, happened) = match days {
+        Days::Wild => (dice.share().powi(2), dice.share().powi(2), 0.3, 0.4),
+        Days::Calm => (0.01, 0.1, 0.01, 0.02),
+        Days::Sick => (0.01, 0.5, 0.2, 0.05),
+    };
+    let seen = seen * dice.share();
     for (n, reading) in words.readings.iter().enumerate() {
-        if !reading.derived && dice.chance(known) {
-            let id = ReadingId(u16::try_from(n).unwrap());
-            let amount = value(reading.plausible, dice);
-            row.values.push((
-                id,
-                Value {
-                    amount,
-                    below: false,
-                },
-            ));
+        let id = ReadingId(u16::try_from(n).unwrap());
+        let good = GOOD.iter().find(|(id, _)| *id == reading.id);
+        let amount = match good {
+            _ if reading.derived => continue,
+            _ if dice.chance(known) => value(reading.plausible, dice),
+            Some((_, good)) if days != Days::Wild && dice.chance(0.9) => {
+                good * (0.97 + 0.06 * dice.share())
+            }
+            _ => continue,
+        };
+        row.values.push((
+            id,
+            Value {
+                amount,
+                below: false,
+            },
+        ));
+    }
+    for (n, sign) in words.signs.iter().enumerate() {
+        let of_fish = FISH.iter().any(|word| sign.id.contains(word));
+        if dice.chance(looked) && (of_fish || days != Days::Sick) {
+            let id = SignId(u16::try_from(n).unwrap());
+            row.signs.push((id, dice.chance(seen)));
         }
     }
-    let (looked, seen) = (dice.share().powi(2), 0.3 * dice.share());
-    for n in 0..words.signs.len() {
-        if dice.chance(looked) {
-            row.signs
-                .push((SignId(u16::try_from(n).unwrap()), dice.chance(seen)));
-        }
-    }
-    if dice.chance(0.4) {
+    if dice.chance(happened) {
         for _ in 0..=dice.below(3) {
-            row.events.push(EventId(
-                u16::try_from(dice.below(words.events.len())).unwrap(),
-            ));
+            let event = dice.below(words.events.len());
+            row.events.push(EventId(u16::try_from(event).unwrap()));
         }
     }
     row
 }
+
+/// Words in the ids of signs that fish show.
+const FISH: [&str; 9] = [
+    "fish", "gills", "skin", "fins", "eyes", "tufts", "spots", "slime", "tank",
+];

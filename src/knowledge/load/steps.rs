@@ -59,6 +59,7 @@ fn one(section: &mut Section<'_>, names: &Names, made: &Made) -> Option<Step> {
         detail: section.text("detail").unwrap_or_default(),
         first_aid: section.flag("first_aid").unwrap_or(false),
         people_first: section.flag("people_first").unwrap_or(false),
+        pinned: section.flag("pinned").unwrap_or(false),
         looks: section.flag("looks").unwrap_or(false),
         choice: section.text("choice").unwrap_or_default(),
         helps: amounts(section, "helps", names),
