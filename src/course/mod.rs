@@ -1,5 +1,6 @@
 //! What to do: steps ranked by most good for least harm, what to leave alone, first aid, cautions.
 
 mod advice;
+pub mod projection;
 
 pub use advice::{Advice, Advised, Ground, Warned, advise};

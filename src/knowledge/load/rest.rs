@@ -26,6 +26,7 @@ pub(super) struct Made {
     pub media: Vec<Media>,
     pub references: Vec<Reference>,
     pub scales: Option<Scales>,
+    pub pace: super::pace::Parts,
     digest: String,
 }
 
@@ -42,6 +43,7 @@ pub(super) fn empty(digest: String) -> Made {
         media: Vec::new(),
         references: Vec::new(),
         scales: None,
+        pace: super::pace::Parts::default(),
         digest,
     }
 }
@@ -160,6 +162,7 @@ impl Made {
             ));
             return None;
         };
+        let pacing = super::pace::finish(self.pace, faults)?;
         let order = match order(&self.findings) {
             Ok(order) => order,
             Err(fault) => {
@@ -180,6 +183,7 @@ impl Made {
             media: self.media,
             references: self.references,
             scales,
+            pacing,
             digest: self.digest,
             house_rules: None,
         })
