@@ -5,6 +5,7 @@ mod routine;
 mod values;
 
 pub use assess::{Assessor, Review};
+pub use routine::span;
 pub use values::{
     Assessment, Avoid, CauseReport, Derived, Missing, Override, Projection, StepReport, Tell,
     VerifyReport,

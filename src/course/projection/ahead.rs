@@ -46,7 +46,7 @@ pub fn projections(
 }
 
 /// Wetted area (m2) by the site file and the rule base's media.
-pub(super) fn area(knowledge: &Knowledge, site: &Site) -> Option<f64> {
+pub fn area(knowledge: &Knowledge, site: &Site) -> Option<f64> {
     let per_m3 = |kind: &str| {
         let media = knowledge.media.iter().find(|m| m.id == kind)?;
         Some(1000.0 * media.area_m2_per_l)
@@ -93,13 +93,18 @@ fn watches(knowledge: &Knowledge, limits: &Limits<'_>, begin: &Begin<'_>) -> Vec
     let mut watch = |words: String, excess: Box<dyn Fn(&Point) -> f64>| {
         all.push(Watch { words, excess });
     };
+    let text = &knowledge.pacing.words;
+    let say = |text: &str, limit: f64| text.replace("{limit}", &limit.to_string());
     let (high, low) = (Side::High, Side::Low);
     if filter && carbonate && known("total-ammonia") {
-        let levels = [(LimitLevel::Comfort, ""), (LimitLevel::Stress, " (stress)")];
+        let levels = [
+            (LimitLevel::Comfort, &text.ahead_ammonia),
+            (LimitLevel::Stress, &text.ahead_ammonia_stress),
+        ];
         for (level, note) in levels {
             if let Some(top) = limit("un-ionized-ammonia", level, high) {
                 watch(
-                    format!("un-ionized ammonia passes {top} mg/L as N{note}"),
+                    say(note, top),
                     Box::new(move |p| p.un_ionized - top),
                 );
             }
@@ -108,7 +113,7 @@ fn watches(knowledge: &Knowledge, limits: &Limits<'_>, begin: &Begin<'_>) -> Vec
     if filter && known("nitrite") && known("chloride") {
         if let Some(ratio) = limit("chloride-to-nitrite", LimitLevel::Stress, low) {
             watch(
-                format!("chloride falls below {ratio} times nitrite as N"),
+                say(&text.ahead_chloride, ratio),
                 Box::new(move |p| {
                     let nitrite = Part::Nitrite.of(&p.y);
                     if nitrite < NO_NITRITE { -1.0 } else { ratio * nitrite - Part::Chloride.of(&p.y) }
@@ -119,7 +124,7 @@ fn watches(knowledge: &Knowledge, limits: &Limits<'_>, begin: &Begin<'_>) -> Vec
         && let Some(top) = limit("nitrite", LimitLevel::Stress, high)
     {
         watch(
-            format!("nitrite passes {top} mg/L as N (chloride is not known)"),
+            say(&text.ahead_nitrite, top),
             Box::new(move |p| Part::Nitrite.of(&p.y) - top),
         );
     }
@@ -127,14 +132,14 @@ fn watches(knowledge: &Knowledge, limits: &Limits<'_>, begin: &Begin<'_>) -> Vec
         && let Some(least) = limit("dissolved-oxygen", LimitLevel::Stress, low)
     {
         watch(
-            format!("oxygen falls below {least} mg/L"),
+            say(&text.ahead_oxygen, least),
             Box::new(move |p| least - Part::Oxygen.of(&p.y)),
         );
     }
     if filter && known("alkalinity") && begin.supply_known {
         let half = knowledge.pacing.kinetics.alkalinity_half.value;
         watch(
-            format!("alkalinity falls below {half} mg/L as CaCO3, where nitrification slows by half"),
+            say(&text.ahead_alkalinity, half),
             Box::new(move |p| half - Part::Alkalinity.of(&p.y)),
         );
     }
@@ -142,20 +147,20 @@ fn watches(knowledge: &Knowledge, limits: &Limits<'_>, begin: &Begin<'_>) -> Vec
         && let Some(least) = limit("ph", LimitLevel::Stress, low)
     {
         watch(
-            format!("pH falls below {least}"),
+            say(&text.ahead_ph, least),
             Box::new(move |p| least - p.ph),
         );
     }
     if known("temperature") {
         if let Some(least) = limit("temperature", LimitLevel::Stress, low) {
             watch(
-                format!("temperature falls below {least} C"),
+                say(&text.ahead_cold, least),
                 Box::new(move |p| least - Part::Temperature.of(&p.y)),
             );
         }
         if let Some(top) = limit("temperature", LimitLevel::Stress, high) {
             watch(
-                format!("temperature passes {top} C"),
+                say(&text.ahead_warm, top),
                 Box::new(move |p| Part::Temperature.of(&p.y) - top),
             );
         }

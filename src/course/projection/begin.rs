@@ -114,6 +114,7 @@ impl<'k> Begin<'k> {
             plants: per_liter(site.plant_area_m2.unwrap_or(0.0) * kinetics.plant_nitrogen.value),
             oxygen_exchange: 24.0 * kinetics.oxygen_transfer.value,
             respiration: 0.0,
+            carbon_exchange: 24.0 * kinetics.oxygen_transfer.value * kinetics.gas_ratio.value,
             breath: 0.0,
             ceiling: area_m2.map(|a| per_liter(a * kinetics.film_per_area.value)),
             pressure,
@@ -175,9 +176,7 @@ impl<'k> Begin<'k> {
         farm.respiration = (total - filter).max(0.0) / metabolism(feed);
         let (supply, supply_known) = supply(readings, &farm, &state, n.ammonia.0);
         farm.supply = supply;
-        let above_air = chem.carbon_dioxide(ph, carbon) - held;
-        farm.breath =
-            farm.oxygen_exchange * kinetics.gas_ratio.value * above_air / metabolism(feed);
+        breathe(&mut farm, &state, feed, chem.carbon_dioxide(ph, carbon) - held, n.ammonia.0);
         Ok(Self {
             farm,
             state,
@@ -197,6 +196,25 @@ impl<'k> Begin<'k> {
         Part::NitriteOxidizers.set(&mut state, nitrite);
         state
     }
+}
+
+/// Sets exchange and breath of carbon dioxide so that its present level, `above_air` (mmol/L), is where they hold it: the
+/// exchange that takes out what breathing (one for one with oxygen) and nitrification make, and the rest as breath.
+fn breathe(farm: &mut Farm<'_>, state: &State, feed: f64, above_air: f64, nitrified: f64) {
+    let nitrate = Part::Nitrate.of(state).max(0.0);
+    let plants = farm.plants * nitrate / (farm.kinetics.plant_half.value + nitrate);
+    let lost = farm.kinetics.denitrification.value * nitrate;
+    let freed = (nitrification::ALKALINITY_WITH_CELLS * nitrified
+        - nitrification::DENITRIFICATION_ALKALINITY * (plants + lost))
+        / crate::water::masses::CACO3_PER_MEQ;
+    let made = farm.respiration * metabolism(feed) / crate::water::masses::O2 + freed;
+    let by_oxygen = farm.oxygen_exchange * farm.kinetics.gas_ratio.value;
+    farm.carbon_exchange = if above_air > 0.2 * farm.air_carbon_dioxide && made > 0.0 {
+        (made / above_air).clamp(EXCHANGE.0, EXCHANGE.1)
+    } else {
+        by_oxygen
+    };
+    farm.breath = (farm.carbon_exchange * above_air - freed) / metabolism(feed);
 }
 
 /// Alkalinity that must have come in (mg/L as CaCO3 a day) for the log's to move as it did while the filter took its part.

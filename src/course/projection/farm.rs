@@ -17,7 +17,9 @@ pub struct Farm<'k> {
     pub oxygen_exchange: f64,
     /// Oxygen that fish and all that rots use with the usual feed, mg/L/day; nitrification apart.
     pub respiration: f64,
-    /// Carbon dioxide that comes with it, mmol/L/day.
+    /// Exchange of carbon dioxide with air, 1/day.
+    pub carbon_exchange: f64,
+    /// Carbon dioxide that comes with the usual feed, mmol/L/day; what nitrification frees from bicarbonate apart.
     pub breath: f64,
     /// The most that the wetted area turns over at 20 C, mg N/L/day.
     pub ceiling: Option<f64>,
@@ -40,8 +42,10 @@ pub struct Farm<'k> {
 /// How carbon dioxide passes between water and air.
 #[derive(Debug, Clone, Copy, PartialEq, Eq)]
 pub enum Gas {
-    /// Not at all: the first minutes after a dose, at its longest.
+    /// Not at all: for minutes, no water stays so for days.
     Closed,
+    /// At a quarter of the usual pace.
+    Slow,
     /// At the pace that keeps the present carbon dioxide where it is.
     Usual,
     /// So fast that it is always settled.
@@ -50,13 +54,15 @@ pub enum Gas {
 
 /// How much faster than usual gas passes in the open case; enough to settle within the hour, and not stiff.
 const OPEN_PER_DAY: f64 = 72.0;
+const SLOW: f64 = 0.25;
 
 impl Farm<'_> {
     /// Exchange (1/day) and breath (mmol/L/day) of carbon dioxide: with more exchange, more breath keeps the same level.
     pub fn gas(&self, gas: Gas) -> (f64, f64) {
-        let usual = self.oxygen_exchange * self.kinetics.gas_ratio.value;
+        let usual = self.carbon_exchange;
         match gas {
             Gas::Closed => (0.0, 0.0),
+            Gas::Slow => (usual * SLOW, self.breath * SLOW),
             Gas::Usual => (usual, self.breath),
             Gas::Open => {
                 let open = usual.max(OPEN_PER_DAY);

@@ -22,7 +22,7 @@ mod readings;
 mod run;
 mod state;
 
-pub use ahead::projections;
+pub use ahead::{area, projections};
 pub use begin::{Begin, Lacks};
 pub use capacity::{Capacity, Span};
 pub use dopri::{Exact, Stuck};

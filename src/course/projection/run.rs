@@ -163,10 +163,15 @@ pub fn run(
     let mut y = *start;
     let mut now = 0.0;
     let mut points = vec![system.point(0.0, &y, false)];
-    for action in actions.iter().filter(|a| a.at <= days) {
-        forward(&mut system, (now, action.at.max(now)), &mut y, manner, &mut points)?;
-        now = action.at.max(now);
-        act(&mut system, &mut y, action.deed);
+    let within = actions.iter().filter(|a| a.at <= days).collect::<Vec<_>>();
+    // What is done at one time is one change of the water.
+    for together in within.chunk_by(|a, b| (b.at - a.at).abs() < 1e-9) {
+        let at = together.first().map_or(now, |a| a.at.max(now));
+        forward(&mut system, (now, at), &mut y, manner, &mut points)?;
+        now = at;
+        for action in together {
+            act(&mut system, &mut y, action.deed);
+        }
         let after = system.point(now, &y, true);
         points.push(after);
     }
