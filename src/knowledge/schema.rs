@@ -414,6 +414,8 @@ pub struct Knowledge {
     pub references: Vec<Reference>,
     /// Priors and thresholds.
     pub scales: Scales,
+    /// What corrections and projections reckon with.
+    pub pacing: super::Pacing,
     /// SHA-256 of the shipped files, in hexadecimal.
     pub digest: String,
     /// The folder of house rules that were laid over it.

@@ -27,6 +27,7 @@ pub(super) struct Made {
     pub references: Vec<Reference>,
     pub families: Vec<Family>,
     pub scales: Option<Scales>,
+    pub pace: super::pace::Parts,
     digest: String,
 }
 
@@ -44,6 +45,7 @@ pub(super) fn empty(digest: String) -> Made {
         references: Vec::new(),
         families: Vec::new(),
         scales: None,
+        pace: super::pace::Parts::default(),
         digest,
     }
 }
@@ -162,6 +164,7 @@ impl Made {
             ));
             return None;
         };
+        let pacing = super::pace::finish(self.pace, faults)?;
         let order = match order(&self.findings) {
             Ok(order) => order,
             Err(fault) => {
@@ -183,6 +186,7 @@ impl Made {
             references: self.references,
             families: self.families,
             scales,
+            pacing,
             digest: self.digest,
             house_rules: None,
         })
