@@ -363,6 +363,29 @@ pub struct Scales {
     pub words: Vec<(f64, String)>,
 }
 
+/// What a walk asks first, and when it stops: `knowledge/walk.toml`.
+#[derive(Debug, Clone)]
+pub struct WalkRules {
+    /// The first screen.
+    pub opening: Vec<SignId>,
+    /// The second, when any line of the first is so.
+    pub alarm: Vec<SignId>,
+    /// Minutes that a question takes besides its effort.
+    pub asking: f64,
+    /// Probability from which the leading cause stands out.
+    pub stands_out: f64,
+    /// Expected information, weighted by urgency, per minute, from which a question is worth asking.
+    pub least_bits: f64,
+    /// Share of the best question's worth from which a line joins its screen.
+    pub together: f64,
+    /// Lines of a screen at the most.
+    pub lines: usize,
+    /// Probability that the first steps stay the same from which asking on is idle.
+    pub same_steps: f64,
+    /// Questions at the most.
+    pub most: usize,
+}
+
 /// The whole rule base.
 #[derive(Debug, Clone)]
 pub struct Knowledge {
@@ -390,6 +413,8 @@ pub struct Knowledge {
     pub references: Vec<Reference>,
     /// Priors and thresholds.
     pub scales: Scales,
+    /// How a walk goes.
+    pub walk: WalkRules,
     /// SHA-256 of the shipped files, in hexadecimal.
     pub digest: String,
     /// The folder of house rules that were laid over it.

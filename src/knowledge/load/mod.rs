@@ -11,6 +11,7 @@ mod species;
 mod steps;
 mod tests;
 mod vocabulary;
+mod walk;
 
 use sha2::{Digest, Sha256};
 
@@ -46,6 +47,7 @@ pub fn load(shipped: &[Source], house: &[Source]) -> Result<Knowledge, Vec<Fault
         rest::read(&mut root, &names, &mut made);
         species::read(&mut root, &names, &mut made);
         scales::read(&mut root, &mut made);
+        walk::read(&mut root, &names, &mut made);
         root.finish();
     }
     steps::join(&mut made);

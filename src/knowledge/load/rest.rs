@@ -9,7 +9,7 @@ use crate::decode::Section;
 use crate::fault::Fault;
 use crate::knowledge::{
     Cause, CauseId, Caution, Finding, FindingId, Knowledge, Media, Reference, Round, Scales,
-    Species, Step, StepId,
+    Species, Step, StepId, WalkRules,
 };
 use crate::vocabulary::{ReadingId, Vocabulary};
 
@@ -26,6 +26,7 @@ pub(super) struct Made {
     pub media: Vec<Media>,
     pub references: Vec<Reference>,
     pub scales: Option<Scales>,
+    pub walk: Option<WalkRules>,
     digest: String,
 }
 
@@ -42,6 +43,7 @@ pub(super) fn empty(digest: String) -> Made {
         media: Vec::new(),
         references: Vec::new(),
         scales: None,
+        walk: None,
         digest,
     }
 }
@@ -160,6 +162,14 @@ impl Made {
             ));
             return None;
         };
+        let Some(walk) = self.walk else {
+            faults.push(Fault::whole(
+                "no-walk",
+                "the rule base has no `[walk]`",
+                "add knowledge/walk.toml",
+            ));
+            return None;
+        };
         let order = match order(&self.findings) {
             Ok(order) => order,
             Err(fault) => {
@@ -180,6 +190,7 @@ impl Made {
             media: self.media,
             references: self.references,
             scales,
+            walk,
             digest: self.digest,
             house_rules: None,
         })
