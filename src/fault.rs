@@ -1,6 +1,9 @@
 //! One fault in something a person wrote: where it is, what is wrong, what to do.
 
 use std::fmt;
+use std::sync::OnceLock;
+
+use serde::{Deserialize, Serialize};
 
 /// A text with a name: a file, standard input, or an embedded file of the rule base.
 #[derive(Debug, Clone)]
@@ -9,6 +12,8 @@ pub struct Source {
     pub name: String,
     /// The whole text.
     pub text: String,
+    /// Where each line begins, counted when a place is first asked for.
+    lines: OnceLock<Vec<usize>>,
 }
 
 impl Source {
@@ -17,7 +22,23 @@ impl Source {
         Self {
             name: name.into(),
             text: text.into(),
+            lines: OnceLock::new(),
         }
+    }
+
+    fn line_starts(&self) -> &[usize] {
+        self.lines.get_or_init(|| {
+            let ends = self.text.match_indices('\n').map(|(at, _)| at + 1);
+            std::iter::once(0).chain(ends).collect()
+        })
+    }
+
+    /// A line, from 1, without its end.
+    fn line(&self, number: usize) -> &str {
+        let starts = self.line_starts();
+        let start = number.checked_sub(1).and_then(|i| starts.get(i));
+        let rest = start.and_then(|start| self.text.get(*start..)).unwrap_or("");
+        rest.lines().next().unwrap_or("")
     }
 
     /// Line and column (both from 1, column in characters) of a byte offset; an offset past the end is the end.
@@ -26,15 +47,15 @@ impl Source {
         while !self.text.is_char_boundary(end) {
             end -= 1;
         }
-        let before = &self.text[..end];
-        let line = before.matches('\n').count() + 1;
-        let start = before.rfind('\n').map_or(0, |i| i + 1);
-        (line, before[start..].chars().count() + 1)
+        let starts = self.line_starts();
+        let line = starts.partition_point(|start| *start <= end);
+        let start = line.checked_sub(1).and_then(|i| starts.get(i)).copied().unwrap_or(0);
+        (line, self.text[start..end].chars().count() + 1)
     }
 }
 
 /// Where a fault is.
-#[derive(Debug, Clone, PartialEq, Eq)]
+#[derive(Debug, Clone, PartialEq, Eq, Serialize, Deserialize)]
 pub struct Place {
     /// The name of the text.
     pub file: String,
@@ -71,7 +92,7 @@ impl Fault {
         cure: impl Into<String>,
     ) -> Self {
         let (line, column) = source.position(span.start);
-        let excerpt = source.text.lines().nth(line - 1).unwrap_or("").to_owned();
+        let excerpt = source.line(line).to_owned();
         let rest = excerpt.chars().count().saturating_sub(column - 1);
         let wanted = source
             .text
@@ -111,11 +132,21 @@ impl fmt::Display for Fault {
     }
 }
 
-/// The nearest of the known words to a word that is not known, if one is near enough to be meant.
+/// The nearest of the known words to a word that is not known, if one is near enough to be meant. Capitals, and which
+/// of hyphen, underscore and space stands between words, don't make a difference.
 pub fn nearest<'a>(word: &str, known: impl IntoIterator<Item = &'a str>) -> Option<&'a str> {
+    let plain = |text: &str| text.to_lowercase().replace(['_', ' '], "-");
+    let word = plain(word);
+    let likeness = |known: &str| {
+        let known = plain(known);
+        let alike = strsim::jaro_winkler(&word, &known);
+        // The measure is hard on short words: two letters swapped or one added are near, too.
+        let one_slip = strsim::osa_distance(&word, &known) <= 1 && word.len() > 1;
+        if one_slip { alike.max(0.9) } else { alike }
+    };
     known
         .into_iter()
-        .map(|k| (strsim::jaro_winkler(word, k), k))
+        .map(|k| (likeness(k), k))
         .filter(|(score, _)| *score > 0.80)
         .max_by(|a, b| a.0.total_cmp(&b.0))
         .map(|(_, k)| k)
@@ -183,5 +214,8 @@ mod tests {
     fn nearest_needs_likeness() {
         assert_eq!(nearest("nitrit", ["nitrite", "nitrate"]), Some("nitrite"));
         assert_eq!(nearest("zebra", ["nitrite", "ph"]), None);
+        assert_eq!(nearest("PH", ["nitrite", "ph"]), Some("ph"));
+        assert_eq!(nearest("hp", ["nitrite", "ph"]), Some("ph"));
+        assert_eq!(nearest("Volume L", ["volume_l"]), Some("volume_l"));
     }
 }

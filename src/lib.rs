@@ -19,6 +19,7 @@
 //! | [`render`] | text and JSON of the values above |
 //! | [`cli`] | one file a command: arguments in, a call, a page out |
 
+pub mod assessment;
 pub mod cli;
 pub mod course;
 pub mod decode;
@@ -27,7 +28,6 @@ pub mod engine;
 pub mod fault;
 pub mod history;
 pub mod knowledge;
-pub mod assessment;
 pub mod render;
 pub mod site;
 pub mod vocabulary;

@@ -8,7 +8,7 @@ use std::fmt::Write as _;
 use std::path::{Path, PathBuf};
 
 use gillside::assessment::Assessor;
-use gillside::diagnosis::Verdict;
+use gillside::diagnosis::{Occasion, Verdict};
 use gillside::engine::Engine;
 use gillside::fault::Source;
 use gillside::history::answers::{self, Happened};
@@ -17,7 +17,46 @@ use gillside::knowledge::{self, Knowledge};
 use gillside::site::{self, Known, Site};
 
 fn rule_base() -> Knowledge {
-    let faults = |f: Vec<gillside::fault::Fault>| f.iter().map(ToString::to_string).collect::<Vec<_>>().join("\n");
+    let mut k = rule_base0();
+    for kv in std::env::var("TUNE")
+        .unwrap_or_default()
+        .split(',')
+        .filter(|s| !s.is_empty())
+    {
+        let (key, v) = kv.split_once('=').unwrap();
+        let v: f64 = v.parse().unwrap();
+        match key {
+            "evidence" => k.scales.evidence = v,
+            "second" => k.scales.second_cause = v,
+            "triggers" => k.scales.triggers = v,
+            "review" => k.scales.incident_review = v,
+            "walk" => k.scales.incident_walk = v,
+            "event" => k.scales.event_not_noted = v,
+            "seen" => {
+                for c in &mut k.causes {
+                    for e in &mut c.effects {
+                        e.seen_in = e.seen_in.clamp(v, 1.0 - v);
+                    }
+                }
+            }
+            "bg" => {
+                for f in &mut k.findings {
+                    f.background = f.background.clamp(v, 1.0 - v);
+                }
+            }
+            _ => panic!(),
+        }
+    }
+    k
+}
+
+fn rule_base0() -> Knowledge {
+    let faults = |f: Vec<gillside::fault::Fault>| {
+        f.iter()
+            .map(ToString::to_string)
+            .collect::<Vec<_>>()
+            .join("\n")
+    };
     knowledge::load(&knowledge::embedded(), &[]).unwrap_or_else(|f| panic!("{}", faults(f)))
 }
 
@@ -32,14 +71,24 @@ struct Case {
 }
 
 fn texts(table: &toml::Table, key: &str) -> Vec<String> {
-    table.get(key).and_then(|v| v.as_array()).map_or_else(Vec::new, |a| {
-        a.iter().filter_map(|v| v.as_str().map(str::to_owned)).collect()
-    })
+    table
+        .get(key)
+        .and_then(|v| v.as_array())
+        .map_or_else(Vec::new, |a| {
+            a.iter()
+                .filter_map(|v| v.as_str().map(str::to_owned))
+                .collect()
+        })
 }
 
 fn cases(half: &str) -> Vec<Case> {
-    let root = Path::new(env!("CARGO_MANIFEST_DIR")).join("tests/cases").join(half);
-    let mut folders: Vec<PathBuf> = std::fs::read_dir(root).unwrap().map(|e| e.unwrap().path()).collect();
+    let root = Path::new(env!("CARGO_MANIFEST_DIR"))
+        .join("tests/cases")
+        .join(half);
+    let mut folders: Vec<PathBuf> = std::fs::read_dir(root)
+        .unwrap()
+        .map(|e| e.unwrap().path())
+        .collect();
     folders.sort();
     folders
         .into_iter()
@@ -52,7 +101,10 @@ fn cases(half: &str) -> Vec<Case> {
                 acceptable: texts(&table, "acceptable"),
                 urgency: table["urgency"].as_str().unwrap().to_owned(),
                 verdicts_ok: texts(&table, "verdicts_ok"),
-                negative: table.get("negative").and_then(|v| v.as_bool()).unwrap_or(false),
+                negative: table
+                    .get("negative")
+                    .and_then(|v| v.as_bool())
+                    .unwrap_or(false),
                 folder,
             }
         })
@@ -88,20 +140,54 @@ fn outcome(assessor: &Assessor<'_>, engine: &Engine<'_>, last: i64) -> Outcome {
         for c in assessment.causes.iter().take(5) {
             let _ = writeln!(detail, "  {:.3} {}", c.probability, c.id);
             for p in c.evidence_for.iter().take(9) {
-                let _ = writeln!(detail, "      {:+.2} {}{} {:?}", p.weight, if p.absent { "NOT " } else { "" }, p.clause, p.saw);
+                let _ = writeln!(
+                    detail,
+                    "      {:+.2} {}{} {:?}",
+                    p.weight,
+                    if p.absent { "NOT " } else { "" },
+                    p.clause,
+                    p.saw
+                );
             }
             for p in c.evidence_against.iter().take(9) {
-                let _ = writeln!(detail, "      {:+.2} {}{} {:?}", p.weight, if p.absent { "NOT " } else { "" }, p.clause, p.saw);
+                let _ = writeln!(
+                    detail,
+                    "      {:+.2} {}{} {:?}",
+                    p.weight,
+                    if p.absent { "NOT " } else { "" },
+                    p.clause,
+                    p.saw
+                );
             }
         }
-        for s in &assessment.first_aid { let _ = writeln!(detail, "  FIRST AID {}", s.id); }
-        for s in &assessment.steps { let _ = writeln!(detail, "  step {:?} {} {:.2} {:?}", s.when, s.id, s.worth, s.check_first); }
-        for s in &assessment.avoid { let _ = writeln!(detail, "  avoid {} {:.2}", s.id, s.harm); }
-        for s in &assessment.derived { let _ = writeln!(detail, "  derived {} {:.3}", s.id, s.value); }
-        let _ = writeln!(detail, "  dangers {:?} family {:?}", assessment.dangers, assessment.leading_family);
+        for s in &assessment.first_aid {
+            let _ = writeln!(detail, "  FIRST AID {}", s.id);
+        }
+        for s in &assessment.steps {
+            let _ = writeln!(
+                detail,
+                "  step {:?} {} {:.2} {:?}",
+                s.when, s.id, s.worth, s.check_first
+            );
+        }
+        for s in &assessment.avoid {
+            let _ = writeln!(detail, "  avoid {} {:.2}", s.id, s.harm);
+        }
+        for s in &assessment.derived {
+            let _ = writeln!(detail, "  derived {} {:.3}", s.id, s.value);
+        }
+        let _ = writeln!(
+            detail,
+            "  dangers {:?} family {:?}",
+            assessment.dangers, assessment.leading_family
+        );
     }
     Outcome {
-        causes: assessment.causes.iter().map(|c| (c.id.clone(), c.probability)).collect(),
+        causes: assessment
+            .causes
+            .iter()
+            .map(|c| (c.id.clone(), c.probability))
+            .collect(),
         nothing: assessment.nothing_wrong,
         verdict: assessment.verdict,
         detail,
@@ -126,7 +212,7 @@ fn from_log(knowledge: &Knowledge, case: &Case) -> Outcome {
     for row in &log.rows {
         engine.observe(row);
     }
-    let assessor = Assessor::new(knowledge, &site, knowledge.scales.incident_review);
+    let assessor = Assessor::new(knowledge, &site, Occasion::Review);
     let last = log.rows.last().map_or(0, |r| r.time);
     outcome(&assessor, &engine, last)
 }
@@ -140,10 +226,26 @@ fn from_answers(knowledge: &Knowledge, case: &Case) -> Outcome {
         eprintln!("{fault}");
     }
     let now = answers.time.unwrap_or(1_700_000_000);
-    let mut row = Row { time: now, ..Row::default() };
-    row.values = answers.readings.iter().map(|(id, amount)| (*id, Value { amount: *amount, below: false })).collect();
+    let mut row = Row {
+        time: now,
+        ..Row::default()
+    };
+    row.values = answers
+        .readings
+        .iter()
+        .map(|(id, amount)| {
+            (
+                *id,
+                Value {
+                    amount: *amount,
+                    below: false,
+                },
+            )
+        })
+        .collect();
     row.signs = answers.signs;
     let mut engine = Engine::new(knowledge, &site);
+    engine.observe(&row);
     engine.tell(|memory| {
         let mut events: Vec<_> = answers
             .events
@@ -162,8 +264,7 @@ fn from_answers(knowledge: &Knowledge, case: &Case) -> Outcome {
             }
         }
     });
-    engine.observe(&row);
-    let assessor = Assessor::new(knowledge, &site, knowledge.scales.incident_walk);
+    let assessor = Assessor::new(knowledge, &site, Occasion::Walk);
     outcome(&assessor, &engine, now)
 }
 
@@ -181,7 +282,10 @@ struct Score {
 
 fn judge(case: &Case, outcome: &Outcome, score: &mut Score, verbose: bool) {
     score.all += 1;
-    let rank = outcome.causes.iter().position(|(id, _)| case.truth.contains(id));
+    let rank = outcome
+        .causes
+        .iter()
+        .position(|(id, _)| case.truth.contains(id));
     let first_ok = |id: &String| case.truth.contains(id) || case.acceptable.contains(id);
     let verdict_ok = case.verdicts_ok.iter().any(|v| v == outcome.verdict.word());
     score.verdicts += usize::from(verdict_ok);
@@ -193,7 +297,8 @@ fn judge(case: &Case, outcome: &Outcome, score: &mut Score, verbose: bool) {
         score.incidents += 1;
         let led = outcome.causes.first().is_some_and(|(id, _)| first_ok(id));
         score.top1 += usize::from(led);
-        score.top3 += usize::from(rank.is_some_and(|r| r < 3) || (led && rank.is_some_and(|r| r < 4)));
+        score.top3 +=
+            usize::from(rank.is_some_and(|r| r < 3) || (led && rank.is_some_and(|r| r < 4)));
         let least = match case.urgency.as_str() {
             "minutes" => Verdict::ActNow,
             "hours" => Verdict::ActToday,
@@ -204,14 +309,34 @@ fn judge(case: &Case, outcome: &Outcome, score: &mut Score, verbose: bool) {
         }
     }
     for (id, probability) in &outcome.causes {
-        score.bins.push((*probability, case.truth.contains(id) || (case.acceptable.contains(id) && outcome.causes.first().is_some_and(|f| f.0 == *id))));
+        score.bins.push((
+            *probability,
+            case.truth.contains(id)
+                || (case.acceptable.contains(id)
+                    && outcome.causes.first().is_some_and(|f| f.0 == *id)),
+        ));
     }
-    let wrong = if case.negative { outcome.verdict > Verdict::Watch } else { rank != Some(0) };
+    let wrong = if case.negative {
+        outcome.verdict > Verdict::Watch
+    } else {
+        rank != Some(0)
+    };
     if verbose && (wrong || !verdict_ok || std::env::var_os("CASE").is_some()) {
-        let shown: Vec<String> = outcome.causes.iter().take(4).map(|(id, p)| format!("{id} {p:.2}")).collect();
+        let shown: Vec<String> = outcome
+            .causes
+            .iter()
+            .take(4)
+            .map(|(id, p)| format!("{id} {p:.2}"))
+            .collect();
         println!(
             "{:<50} truth {:?} rank {:?} {} (ok {:?}) | none {:.2} | {}",
-            case.id, case.truth, rank.map(|r| r + 1), outcome.verdict.word(), case.verdicts_ok, outcome.nothing, shown.join(", ")
+            case.id,
+            case.truth,
+            rank.map(|r| r + 1),
+            outcome.verdict.word(),
+            case.verdicts_ok,
+            outcome.nothing,
+            shown.join(", ")
         );
         print!("{}", outcome.detail);
     }
@@ -219,19 +344,37 @@ fn judge(case: &Case, outcome: &Outcome, score: &mut Score, verbose: bool) {
 
 #[allow(clippy::cast_precision_loss)]
 fn report(name: &str, score: &Score) -> (f64, f64) {
-    let share = |n: usize, of: usize| if of == 0 { 0.0 } else { 100.0 * n as f64 / of as f64 };
-    let (top1, top3) = (share(score.top1, score.incidents), share(score.top3, score.incidents));
+    let share = |n: usize, of: usize| {
+        if of == 0 {
+            0.0
+        } else {
+            100.0 * n as f64 / of as f64
+        }
+    };
+    let (top1, top3) = (
+        share(score.top1, score.incidents),
+        share(score.top3, score.incidents),
+    );
     println!(
         "{name}: {} cases, {} incidents; top-1 {top1:.1} %, top-3 {top3:.1} %, verdict in the accepted list {:.1} %",
-        score.all, score.incidents, share(score.verdicts, score.all)
+        score.all,
+        score.incidents,
+        share(score.verdicts, score.all)
     );
-    println!("  urgent ones below their verdict: {:?}", score.urgent_missed);
+    println!(
+        "  urgent ones below their verdict: {:?}",
+        score.urgent_missed
+    );
     println!("  false alarms: {:?}", score.false_alarms);
     (top1, top3)
 }
 
 /// Expected calibration error over ten bins, and the table.
-#[allow(clippy::cast_precision_loss, clippy::cast_possible_truncation, clippy::cast_sign_loss)]
+#[allow(
+    clippy::cast_precision_loss,
+    clippy::cast_possible_truncation,
+    clippy::cast_sign_loss
+)]
 fn reliability(bins: &[(f64, bool)]) -> f64 {
     let mut table = [(0usize, 0.0f64, 0usize); 10];
     for (p, hit) in bins {
@@ -247,7 +390,11 @@ fn reliability(bins: &[(f64, bool)]) -> f64 {
             continue;
         }
         let (mean, right) = (sum / *n as f64, *hits as f64 / *n as f64);
-        println!("  {:.1}-{:.1} {n:>7}  {mean:.2}   {right:.2}", i as f64 / 10.0, (i + 1) as f64 / 10.0);
+        println!(
+            "  {:.1}-{:.1} {n:>7}  {mean:.2}   {right:.2}",
+            i as f64 / 10.0,
+            (i + 1) as f64 / 10.0
+        );
         error += (mean - right).abs() * *n as f64 / bins.len() as f64;
     }
     println!("  expected calibration error {error:.3}");

@@ -7,7 +7,7 @@ use std::collections::BTreeMap;
 use std::path::{Path, PathBuf};
 
 use gillside::assessment::Assessor;
-use gillside::diagnosis::Verdict;
+use gillside::diagnosis::{Occasion, Verdict};
 use gillside::engine::{Engine, Measured, measure};
 use gillside::history::log::{Input, Log};
 use gillside::knowledge::{self, Knowledge};
@@ -19,7 +19,10 @@ fn rule_base() -> Knowledge {
 
 fn farms() -> Vec<PathBuf> {
     let root = Path::new(env!("CARGO_MANIFEST_DIR")).join("tests/healthy");
-    let mut folders: Vec<PathBuf> = std::fs::read_dir(root).unwrap().map(|e| e.unwrap().path()).collect();
+    let mut folders: Vec<PathBuf> = std::fs::read_dir(root)
+        .unwrap()
+        .map(|e| e.unwrap().path())
+        .collect();
     folders.sort();
     folders
 }
@@ -35,7 +38,8 @@ fn read(knowledge: &Knowledge, folder: &Path) -> (Site, Log) {
     let (site, faults) = site::load(&folder.join("site.toml"), &known);
     assert!(faults.is_empty(), "{}: {faults:?}", folder.display());
     let input = Input::named(folder.join("log.csv").to_str().unwrap());
-    let log = gillside::history::log::read(vec![input], &knowledge.vocabulary, &site, None).unwrap();
+    let log =
+        gillside::history::log::read(vec![input], &knowledge.vocabulary, &site, None).unwrap();
     (site, log)
 }
 
@@ -50,7 +54,7 @@ fn no_alarm_at_any_row() {
         let (site, log) = read(&knowledge, &folder);
         let mut engine = Engine::new(&knowledge, &site);
         engine.tell(gillside::history::memory::Memory::keeps_events);
-        let assessor = Assessor::new(&knowledge, &site, knowledge.scales.incident_review);
+        let assessor = Assessor::new(&knowledge, &site, Occasion::Review);
         let mut version = u64::MAX;
         let mut verdict = Verdict::Steady;
         let mut farm_alarms = 0;
@@ -69,7 +73,14 @@ fn no_alarm_at_any_row() {
                     );
                     *by_cause.entry(what.clone()).or_default() += 1;
                     if std::env::var_os("ALARMS").is_some() {
-                        println!("{} line {} {} {what} {:.2} none {:.2}", folder.file_name().unwrap().display(), row.line, verdict.word(), review.ranking.of(first), review.ranking.nothing);
+                        println!(
+                            "{} line {} {} {what} {:.2} none {:.2}",
+                            folder.file_name().unwrap().display(),
+                            row.line,
+                            verdict.word(),
+                            review.ranking.of(first),
+                            review.ranking.nothing
+                        );
                     }
                 }
             }
@@ -79,7 +90,11 @@ fn no_alarm_at_any_row() {
             steady += usize::from(verdict == Verdict::Steady);
         }
         if farm_alarms > 0 {
-            println!("{}: {farm_alarms} of {} rows above watch", folder.display(), log.rows.len());
+            println!(
+                "{}: {farm_alarms} of {} rows above watch",
+                folder.display(),
+                log.rows.len()
+            );
         }
         alarms += farm_alarms;
     }
@@ -98,6 +113,9 @@ fn backgrounds_are_what_healthy_logs_show() {
     }
     for (finding, count) in knowledge.findings.iter().zip(&counts) {
         let share = count.share().unwrap_or(f64::NAN);
-        println!("BG {:<45} stated {:.4} measured {share:.4} n {:.0}", finding.id, finding.background, count.known);
+        println!(
+            "BG {:<45} stated {:.4} measured {share:.4} n {:.0}",
+            finding.id, finding.background, count.known
+        );
     }
 }

@@ -1,18 +1,23 @@
 //! Puts a diagnosis together: facts, causes, verdict, steps, what is missing, cautions.
 
+use super::overrides::{overrides, site_notes};
 use super::routine::{Overdue, missing, overdue};
 use super::{
-    Assessment, Avoid, CauseReport, Derived, Missing, StepReport, Tell, VerifyReport,
+    Assessment, Avoid, CauseReport, Derived, Missing, StepReport, Tell, VerifyReport, family,
 };
 use crate::course::{Advised, Ground, advise};
-use crate::diagnosis::{Decision, Doctor, Ranking, Told};
+use crate::diagnosis::{Decision, Doctor, Occasion, Ranking, Told};
 use crate::engine::{Engine, Limits};
 use crate::knowledge::{CauseId, Knowledge, Verify};
 use crate::site::Site;
 use crate::vocabulary::ReadingId;
 
-/// Causes less likely than this are not reported (data contract, section 8).
+/// A shift where the site names none, seconds.
+const SHIFT: i64 = 8 * 3600;
+/// Causes likelier than this are all reported (data contract, section 8), and the likeliest few in any case: what is
+/// thought of and found unlikely is worth knowing too.
 const REPORTED: f64 = 0.01;
+const REPORTED_IN_ANY_CASE: usize = 5;
 /// So many causes get a balance sheet and the question of what would tell.
 const WITH_SHEET: usize = 8;
 /// Lines of a sheet, and of what would tell, that are kept.
@@ -39,20 +44,18 @@ pub struct Assessor<'k> {
     site: Site,
     limits: Limits<'k>,
     doctor: Doctor<'k>,
-    incident: f64,
     /// What is taken for now where that is later than what is known; unix seconds.
     present: i64,
 }
 
 impl<'k> Assessor<'k> {
-    /// An assessor for a site; `incident` is how likely it is beforehand that anything is wrong.
-    pub fn new(knowledge: &'k Knowledge, site: &Site, incident: f64) -> Self {
+    /// An assessor for a site and an occasion.
+    pub fn new(knowledge: &'k Knowledge, site: &Site, occasion: Occasion) -> Self {
         Self {
             knowledge,
             site: site.clone(),
             limits: Limits::new(knowledge, site),
-            doctor: Doctor::new(knowledge),
-            incident,
+            doctor: Doctor::new(knowledge, occasion),
             present: i64::MIN,
         }
     }
@@ -91,7 +94,7 @@ impl<'k> Assessor<'k> {
 
     /// Ranking and verdict as the facts stand.
     pub fn review(&self, engine: &Engine<'k>) -> Review<'k> {
-        let ranking = self.doctor.rank(engine, self.incident);
+        let ranking = self.doctor.rank(engine);
         let due = !self.overdue(engine).is_empty();
         let decision = self.doctor.decide(engine, &ranking, due);
         Review { ranking, decision }
@@ -104,7 +107,12 @@ impl<'k> Assessor<'k> {
     }
 
     /// The whole outcome. `places` are the names of the log's places, `last_row` the time of its last row.
-    pub fn assess(&self, engine: &Engine<'k>, places: &[String], last_row: Option<i64>) -> Assessment {
+    pub fn assess(
+        &self,
+        engine: &Engine<'k>,
+        places: &[String],
+        last_row: Option<i64>,
+    ) -> Assessment {
         let review = self.review(engine);
         let ranking = &review.ranking;
         let told = self.doctor.tell(engine, ranking);
@@ -120,20 +128,38 @@ impl<'k> Assessor<'k> {
         let now = engine.memory().now();
         let step = |a: &Advised| self.step(a, now);
         let causes = self.causes(engine, ranking, &told, places);
-        let leading_family = self.leading_family(ranking);
+        let leading_family = family::leading(
+            self.knowledge,
+            ranking,
+            &advice,
+            |f| self.doctor.family(ranking, f),
+            |p| self.likely(p),
+        );
         Assessment {
             site: self.site.name.clone(),
             as_of: now,
             last_row,
+            last_row_age: last_row
+                .map(|time| self.present.max(now).saturating_sub(time))
+                .filter(|age| *age > self.site.longest_shift().unwrap_or(SHIFT)),
             verdict: review.decision.verdict,
-            dangers: review.decision.dangers.iter().map(|f| f.name.clone()).collect(),
+            dangers: review
+                .decision
+                .dangers
+                .iter()
+                .map(|f| f.name.clone())
+                .collect(),
             first_aid: advice.first_aid.iter().map(step).collect(),
             minutes_left: review
                 .decision
                 .first_aid
                 .then(|| self.minutes_left(engine))
                 .flatten(),
-            best_question: self.best_question(ranking, &told, leading_family.as_deref()),
+            best_question: self.best_question(
+                ranking,
+                &told,
+                leading_family.as_ref().map(|f| f.id.as_str()),
+            ),
             leading_family,
             causes,
             nothing_wrong: ranking.nothing,
@@ -154,7 +180,8 @@ impl<'k> Assessor<'k> {
             missing: self.missing(&ground, &told),
             derived: self.derived(engine),
             projections: Vec::new(),
-            overrides: Vec::new(),
+            site_notes: site_notes(self.knowledge, &self.site),
+            overrides: overrides(self.knowledge, &self.site),
             cautions: self
                 .knowledge
                 .cautions
@@ -166,7 +193,10 @@ impl<'k> Assessor<'k> {
     }
 
     fn ids(&self, causes: &[CauseId]) -> Vec<String> {
-        causes.iter().map(|c| self.knowledge[*c].id.clone()).collect()
+        causes
+            .iter()
+            .map(|c| self.knowledge[*c].id.clone())
+            .collect()
     }
 
     /// The word for a probability.
@@ -190,12 +220,15 @@ impl<'k> Assessor<'k> {
         ranking
             .order()
             .into_iter()
-            .take_while(|c| ranking.of(*c) > REPORTED)
             .enumerate()
+            .take_while(|(rank, c)| *rank < REPORTED_IN_ANY_CASE || ranking.of(*c) > REPORTED)
             .map(|(rank, id)| {
                 let cause = &self.knowledge[id];
-                let (mut pro, mut contra) =
-                    if rank < WITH_SHEET { books.sheet(id) } else { (Vec::new(), Vec::new()) };
+                let (mut pro, mut contra) = if rank < WITH_SHEET {
+                    books.sheet(id)
+                } else {
+                    (Vec::new(), Vec::new())
+                };
                 pro.truncate(SHEET_LINES);
                 contra.truncate(SHEET_LINES);
                 CauseReport {
@@ -215,30 +248,16 @@ impl<'k> Assessor<'k> {
                         .take(TELL_LINES)
                         .map(|(id, bits)| Tell { id, bits })
                         .collect(),
-                    leaves_unexplained: if rank < WITH_SHEET { books.unexplained(id) } else { Vec::new() },
+                    leaves_unexplained: if rank < WITH_SHEET {
+                        books.unexplained(id)
+                    } else {
+                        Vec::new()
+                    },
                     evidence_for: pro,
                     evidence_against: contra,
                 }
             })
             .collect()
-    }
-
-    /// The family that leads as a whole: several of its members are likely, none stands out.
-    fn leading_family(&self, ranking: &Ranking) -> Option<String> {
-        /// A member that holds this share of its family stands out.
-        const STANDS_OUT: f64 = 0.7;
-        /// A family this likely leads.
-        const LEADS: f64 = 0.4;
-        let first = ranking.order().into_iter().next()?;
-        let family = &self.knowledge[first].family;
-        let whole = self.doctor.family(ranking, family);
-        let members = self
-            .knowledge
-            .family(family)
-            .filter(|c| ranking.of(*c) > 0.08 * whole)
-            .count();
-        (whole >= LEADS && members >= 2 && ranking.of(first) < STANDS_OUT * whole)
-            .then(|| family.clone())
     }
 
     fn best_question(
@@ -249,7 +268,11 @@ impl<'k> Assessor<'k> {
     ) -> Option<(String, String)> {
         let family = family?;
         let mut all = told.all(|c| {
-            if self.knowledge[c].family == family { ranking.of(c).max(0.05) } else { 0.0 }
+            if self.knowledge[c].family == family {
+                ranking.of(c).max(0.05)
+            } else {
+                0.0
+            }
         });
         all.retain(|(_, bits)| *bits > 0.0);
         all.into_iter()
@@ -276,7 +299,11 @@ impl<'k> Assessor<'k> {
             detail: step.detail.clone(),
             when: step.when,
             because: self.ids(&advised.because),
-            check_first: if advised.check_first { vec![step.check_first.clone()] } else { Vec::new() },
+            check_first: if advised.check_first {
+                vec![step.check_first.clone()]
+            } else {
+                Vec::new()
+            },
             verify: step
                 .verify
                 .as_ref()
@@ -301,7 +328,13 @@ impl<'k> Assessor<'k> {
         if ground.decision.verdict == crate::diagnosis::Verdict::Steady {
             return list;
         }
-        let likely = told.all(|c| if ground.ranking.of(c) > 0.03 { 1.0 } else { 0.0 });
+        let likely = told.all(|c| {
+            if ground.ranking.of(c) > 0.03 {
+                1.0
+            } else {
+                0.0
+            }
+        });
         for (id, bits) in likely.into_iter().take(TELL_MISSING) {
             if bits >= WORTH_ASKING && !list.iter().any(|m| m.id == id) {
                 let causes: Vec<&str> = ground

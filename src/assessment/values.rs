@@ -42,6 +42,23 @@ pub struct CauseReport {
     pub leaves_unexplained: Vec<String>,
 }
 
+/// A family whose members can't be told apart and that leads the page as a whole.
+#[derive(Debug, Clone, PartialEq)]
+pub struct LeadingFamily {
+    /// Its id.
+    pub id: String,
+    /// Its name, a sentence without full stop.
+    pub name: String,
+    /// Probability that any of its causes is there.
+    pub probability: f64,
+    /// The word for it.
+    pub likely: String,
+    /// Ids of the causes that can't be told apart, likeliest first.
+    pub members: Vec<String>,
+    /// Ids of the steps that help under every one of them, best first.
+    pub first_steps: Vec<String>,
+}
+
 /// What shows that a step worked.
 #[derive(Debug, Clone, PartialEq, Eq)]
 pub struct VerifyReport {
@@ -144,6 +161,8 @@ pub struct Assessment {
     pub as_of: i64,
     /// Unix seconds of the last row; `None` without any.
     pub last_row: Option<i64>,
+    /// How old the last row is in seconds, when that is more than a shift.
+    pub last_row_age: Option<i64>,
     /// What the whole asks for.
     pub verdict: Verdict,
     /// The findings of direct danger that hold, as clauses.
@@ -155,7 +174,7 @@ pub struct Assessment {
     /// Causes above one percent, best first.
     pub causes: Vec<CauseReport>,
     /// The family whose members can't be told apart and lead together, if one does.
-    pub leading_family: Option<String>,
+    pub leading_family: Option<LeadingFamily>,
     /// The question that would tell the leading causes apart: reading or sign id and the question.
     pub best_question: Option<(String, String)>,
     /// Probability that nothing is wrong.
@@ -170,6 +189,8 @@ pub struct Assessment {
     pub derived: Vec<Derived>,
     /// When limits will be passed if nothing is done.
     pub projections: Vec<Projection>,
+    /// What is odd about the site file, as sentences.
+    pub site_notes: Vec<String>,
     /// What this farm has changed in the rule base.
     pub overrides: Vec<Override>,
     /// Ids and texts of the cautions that apply.

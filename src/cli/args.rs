@@ -4,15 +4,23 @@ use std::path::PathBuf;
 
 use clap::{Args, Parser, Subcommand, ValueEnum};
 
+use super::knowledge::KnowledgeArgs;
 use super::review::ReviewArgs;
 use super::water::WaterArgs;
+use super::why::WhyArgs;
 
 /// Finds what is most likely wrong with the water of a fish farm, and what to do first.
 ///
 /// Exit status: 0 done; 1 something failed that is not your doing; 2 wrong usage; 3 an input can't be used; 4 the rule
 /// base can't be used; 10 `--alert-at` was given and the verdict is at that level or above; 130 interrupted.
 #[derive(Debug, Parser)]
-#[command(name = "gillside", version, max_term_width = 100, help_expected = true, infer_long_args = false)]
+#[command(
+    name = "gillside",
+    version,
+    max_term_width = 100,
+    help_expected = true,
+    infer_long_args = false
+)]
 pub(super) struct Options {
     /// Options of every command
     #[command(flatten)]
@@ -32,10 +40,22 @@ pub(super) struct Common {
     #[arg(long, global = true, value_name = "DIR", help_heading = "Everywhere")]
     pub house_rules: Option<PathBuf>,
     /// How the answer is written
-    #[arg(long, global = true, value_enum, default_value = "text", help_heading = "Everywhere")]
+    #[arg(
+        long,
+        global = true,
+        value_enum,
+        default_value = "text",
+        help_heading = "Everywhere"
+    )]
     pub format: Format,
     /// When to use color (the variable NO_COLOR turns it off as well)
-    #[arg(long, global = true, value_enum, default_value = "auto", help_heading = "Everywhere")]
+    #[arg(
+        long,
+        global = true,
+        value_enum,
+        default_value = "auto",
+        help_heading = "Everywhere"
+    )]
     pub color: Color,
     /// What is taken for now, such as `2026-03-04 07:30` [default: the machine's clock]
     #[arg(long, global = true, value_name = "TIME", help_heading = "Everywhere")]
@@ -83,6 +103,10 @@ pub(super) enum Color {
 pub(super) enum Command {
     /// Diagnoses from logged readings: what is most likely wrong, and what to do first
     Review(ReviewArgs),
+    /// Explains a cause, finding, step, reading, sign, event, limit or source
+    Why(WhyArgs),
+    /// Checks and lists the rule base, and says what it rests on
+    Knowledge(KnowledgeArgs),
     /// Makes one calculation about water; alone it lists the calculations there are
     Water(WaterArgs),
 }

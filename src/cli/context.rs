@@ -6,7 +6,7 @@ use jiff::Timestamp;
 
 use super::args::{Common, Format};
 use super::stop::Stop;
-use crate::fault::Fault;
+use crate::fault::{Fault, Source};
 use crate::history::log;
 use crate::knowledge::{self, Knowledge};
 use crate::site::{self, Known, Site};
@@ -34,10 +34,7 @@ const HOUSE_RULES: &str = "house-rules";
 impl Context {
     /// Reads rule base, house rules, site and clock.
     pub fn load(common: &Common) -> Result<Self, Stop> {
-        let site_file = common.site.clone().or_else(|| {
-            let here = PathBuf::from(SITE_FILE);
-            here.is_file().then_some(here)
-        });
+        let site_file = site_file(common);
         let knowledge = rule_base(common, site_file.as_deref())?;
         let site = match &site_file {
             Some(path) => read_site(path, &knowledge)?,
@@ -59,7 +56,7 @@ impl Context {
     /// A time given on the command line, in the site's zone where it says none.
     pub fn time(&self, option: &str, text: &str) -> Result<i64, Stop> {
         log::read_time(text, &self.site.timezone).map_err(|fault| {
-            Stop::Usage(Fault {
+            Stop::usage(Fault {
                 reason: format!("`{option}`: {}", fault.reason),
                 ..fault
             })
@@ -77,10 +74,7 @@ impl Context {
     /// What the site knows, for single calculations.
     pub fn site_values(&self) -> SiteValues {
         let site = &self.site;
-        let per_m3 = |kind: &str| {
-            let media = self.knowledge.media.iter().find(|m| m.id == kind)?;
-            Some(media.area_m2_per_l * 1000.0)
-        };
+        let area = site.biofilter_area(|kind| self.knowledge.media_m2_per_m3(kind));
         SiteValues {
             salinity: None,
             elevation_m: site.elevation_m,
@@ -88,7 +82,7 @@ impl Context {
             biomass_kg: site.biomass_kg,
             feed_kg_per_day: site.feed_kg_per_day,
             feed_protein_percent: site.feed_protein_percent,
-            biofilter_area_m2: site.biofilter_area(per_m3).map(|area| area.m2),
+            biofilter_area_m2: area.map(|area| area.m2),
             plant_area_m2: site.plant_area_m2,
             makeup_ph: site.makeup.ph,
             makeup_alkalinity: site.makeup.alkalinity,
@@ -98,21 +92,36 @@ impl Context {
 }
 
 fn rule_base(common: &Common, site_file: Option<&Path>) -> Result<Knowledge, Stop> {
+    let Some((folder, files)) = house_rules(common, site_file)? else {
+        return knowledge::shipped().map_err(Stop::Rules);
+    };
+    let mut base = knowledge::load(&knowledge::embedded(), &files).map_err(Stop::Rules)?;
+    base.house_rules = Some(folder);
+    Ok(base)
+}
+
+/// The folder of house rules and its files, where there are any.
+pub(super) fn house_rules(
+    common: &Common,
+    site_file: Option<&Path>,
+) -> Result<Option<(String, Vec<Source>)>, Stop> {
     let folder = common.house_rules.clone().or_else(|| {
         let beside = site_file?.parent()?.join(HOUSE_RULES);
         beside.is_dir().then_some(beside)
     });
-    let house = match &folder {
-        Some(folder) => {
-            knowledge::folder(folder).map_err(|fault| Stop::Rules(vec![fault]))?
-        }
-        None => Vec::new(),
+    let Some(folder) = folder else {
+        return Ok(None);
     };
-    let mut base = knowledge::load(&knowledge::embedded(), &house).map_err(Stop::Rules)?;
-    if !house.is_empty() {
-        base.house_rules = folder.map(|f| f.display().to_string());
-    }
-    Ok(base)
+    let files = knowledge::folder(&folder).map_err(|fault| Stop::Rules(vec![fault]))?;
+    Ok((!files.is_empty()).then(|| (folder.display().to_string(), files)))
+}
+
+/// The site file that is named, or the one that is here.
+pub(super) fn site_file(common: &Common) -> Option<PathBuf> {
+    common.site.clone().or_else(|| {
+        let here = PathBuf::from(SITE_FILE);
+        here.is_file().then_some(here)
+    })
 }
 
 fn read_site(path: &Path, knowledge: &Knowledge) -> Result<Site, Stop> {
@@ -135,7 +144,7 @@ pub(super) fn only(format: Format, command: &str, has: &[Format]) -> Result<(), 
         return Ok(());
     }
     let names: Vec<&str> = has.iter().map(|f| f.word()).collect();
-    Err(Stop::Usage(Fault::whole(
+    Err(Stop::usage(Fault::whole(
         "no-such-format",
         format!("`{command}` can't be written as {}", format.word()),
         format!("use --format {}", names.join(" or ")),

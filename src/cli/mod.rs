@@ -6,11 +6,13 @@
 mod args;
 mod context;
 mod exit;
+mod knowledge;
 mod output;
 mod replay;
 mod review;
 mod stop;
 pub mod water;
+mod why;
 
 use std::ffi::OsString;
 
@@ -33,6 +35,8 @@ pub fn run(args: impl IntoIterator<Item = OsString>) -> Exit {
     let mut output = Output::new(options.common.color);
     let ended = match &options.command {
         Command::Review(args) => review::run(args, &options.common, &mut output),
+        Command::Why(args) => why::run(args, &options.common, &mut output),
+        Command::Knowledge(args) => knowledge::run(args, &options.common, &mut output),
         Command::Water(args) => calculate(args, &options.common, &mut output),
     };
     let ended = ended.and_then(|exit| output.finish().map(|()| exit));
@@ -55,7 +59,8 @@ fn calculate(args: &WaterArgs, common: &Common, output: &mut Output) -> Result<E
     };
     let context = Context::load(common)?;
     let mut text = Vec::new();
-    water::run(args, format, &context.site_values(), &mut text).map_err(Stop::Water)?;
+    water::run(args, format, &context.site_values(), &mut text)
+        .map_err(|error| Stop::Water(Box::new(error)))?;
     output.write(&String::from_utf8_lossy(&text))?;
     Ok(Exit::Done)
 }

@@ -6,7 +6,7 @@ use super::output::Output;
 use super::review;
 use super::stop::Stop;
 use crate::assessment::Assessor;
-use crate::diagnosis::Verdict;
+use crate::diagnosis::{Occasion, Verdict};
 use crate::history::log::Log;
 use crate::render::{self, Report};
 
@@ -18,7 +18,7 @@ pub(super) fn run(
     out: &mut Output,
 ) -> Result<Verdict, Stop> {
     let knowledge = &context.knowledge;
-    let assessor = Assessor::new(knowledge, &context.site, knowledge.scales.incident_review);
+    let assessor = Assessor::new(knowledge, &context.site, Occasion::Review);
     let mut engine = review::engine(context, log);
     let mut before = None;
     let mut verdict = Verdict::Steady;
@@ -26,8 +26,9 @@ pub(super) fn run(
     for (at, row) in log.rows.iter().enumerate() {
         engine.observe(row);
         let last = at + 1 == log.rows.len();
-        // The same facts rank the same; only what is due changes with time alone.
-        if !last && version == Some(engine.version()) && verdict > Verdict::Watch {
+        // The same facts rank the same, but for what falls due with time and how often an event is noted.
+        let same = version == Some(engine.version()) && row.events.is_empty();
+        if !last && same && verdict > Verdict::Watch {
             continue;
         }
         version = Some(engine.version());

@@ -8,7 +8,7 @@ use super::output::Output;
 use super::stop::Stop;
 use super::{Exit, replay};
 use crate::assessment::Assessor;
-use crate::diagnosis::Verdict;
+use crate::diagnosis::{Occasion, Verdict};
 use crate::engine::Engine;
 use crate::fault::{Fault, Place};
 use crate::history::log::{self, Effect, Input, Log};
@@ -71,31 +71,39 @@ pub(super) fn run(args: &ReviewArgs, common: &Common, out: &mut Output) -> Resul
         Some(text) => Some(context.time("--as-of", text)?),
         None => None,
     };
-    let log = read(args, &context, as_of)?;
+    let log = read(&args.logs, args.strict, &context, as_of)?;
     let verdict = if args.replay {
         replay::run(&context, &log, common.format, out)?
     } else {
         now(&context, &log, as_of, common.format, out)?
     };
-    let alert = args.alert_at.is_some_and(|level| verdict >= level.verdict());
+    let alert = args
+        .alert_at
+        .is_some_and(|level| verdict >= level.verdict());
     Ok(if alert { Exit::Alert } else { Exit::Done })
 }
 
 /// The log, or why it can't be used.
 pub(super) fn read(
-    args: &ReviewArgs,
+    named: &[String],
+    strict: bool,
     context: &Context,
     as_of: Option<i64>,
 ) -> Result<Log, Stop> {
-    let inputs = inputs(&args.logs, context)?;
+    let inputs = inputs(named, context)?;
     let log = log::read(inputs, &context.knowledge.vocabulary, &context.site, as_of)
         .map_err(Stop::Input)?;
-    let refused = || log.problems.iter().filter(|p| p.effect == Effect::RowRefused);
-    if args.strict && log.rows_refused > 0 {
+    let refused = || {
+        log.problems
+            .iter()
+            .filter(|p| p.effect == Effect::RowRefused)
+    };
+    if strict && log.rows_refused > 0 {
         return Err(Stop::Input(refused().map(fault_of).collect()));
     }
     if !log.is_usable() {
-        let mut faults: Vec<Fault> = refused().map(fault_of).collect();
+        // All that was noticed may be why, not only what cost a row.
+        let mut faults: Vec<Fault> = log.problems.iter().map(fault_of).collect();
         faults.push(match as_of {
             Some(_) if log.rows_read == 0 => Fault::whole(
                 "no-rows",
@@ -114,13 +122,13 @@ pub(super) fn read(
 }
 
 /// The logs that are named, or the site's.
-pub(super) fn inputs(named: &[String], context: &Context) -> Result<Vec<Input>, Stop> {
+fn inputs(named: &[String], context: &Context) -> Result<Vec<Input>, Stop> {
     if !named.is_empty() {
         return Ok(named.iter().map(|n| Input::named(n)).collect());
     }
     match &context.site.log {
         Some(path) => Ok(vec![Input::Path(context.beside_site(path))]),
-        None => Err(Stop::Usage(Fault::whole(
+        None => Err(Stop::usage(Fault::whole(
             "no-log",
             "no log is named",
             "name one, such as `gillside review log.csv`, or put `log = \"log.csv\"` into the site file",
@@ -156,6 +164,18 @@ pub(super) fn engine<'k>(context: &'k Context, log: &Log) -> Engine<'k> {
     engine
 }
 
+/// An engine that has taken in the log, as of its last row or of the time that was asked for.
+pub(super) fn taken_in<'k>(context: &'k Context, log: &Log, as_of: Option<i64>) -> Engine<'k> {
+    let mut engine = engine(context, log);
+    for row in &log.rows {
+        engine.observe(row);
+    }
+    if let Some(time) = as_of {
+        engine.advance(time);
+    }
+    engine
+}
+
 /// The diagnosis as of the last row, or of the time that was asked for.
 fn now(
     context: &Context,
@@ -164,13 +184,7 @@ fn now(
     format: Format,
     out: &mut Output,
 ) -> Result<Verdict, Stop> {
-    let mut engine = engine(context, log);
-    for row in &log.rows {
-        engine.observe(row);
-    }
-    if let Some(time) = as_of {
-        engine.advance(time);
-    }
+    let engine = taken_in(context, log, as_of);
     let moment = engine.memory().now();
     // Who asks how things stood at a time asks what was due then, unless the clock is given too.
     let present = match as_of {
@@ -178,8 +192,7 @@ fn now(
         _ => context.now.max(moment),
     };
     let knowledge = &context.knowledge;
-    let assessor =
-        Assessor::new(knowledge, &context.site, knowledge.scales.incident_review).at(present);
+    let assessor = Assessor::new(knowledge, &context.site, Occasion::Review).at(present);
     let last_row = log.rows.last().map(|row| row.time);
     let assessment = assessor.assess(&engine, &log.places, last_row);
     let report = Report {
@@ -192,7 +205,8 @@ fn now(
     };
     let text = match format {
         Format::Json => render::json::page(&report),
-        _ => render::json::page(&report),
+        Format::Markdown => render::markdown(&render::diagnosis(&report)),
+        Format::Text | Format::Html => render::text(&render::diagnosis(&report), out.look()),
     };
     out.write(&text)?;
     Ok(assessment.verdict)

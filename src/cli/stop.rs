@@ -10,13 +10,13 @@ use crate::fault::Fault;
 #[derive(Debug)]
 pub(super) enum Stop {
     /// Asked for in a way that can't be answered.
-    Usage(Fault),
+    Usage(Box<Fault>),
     /// An input can't be used.
     Input(Vec<Fault>),
     /// The rule base can't be used.
     Rules(Vec<Fault>),
     /// A calculation gives no number; the message holds its cure.
-    Water(WaterError),
+    Water(Box<WaterError>),
     /// The answer can't be written.
     Write(io::Error),
     /// Whoever reads the answer has read enough.
@@ -24,6 +24,11 @@ pub(super) enum Stop {
 }
 
 impl Stop {
+    /// Asked for in a way that can't be answered.
+    pub fn usage(fault: Fault) -> Self {
+        Self::Usage(Box::new(fault))
+    }
+
     /// How the run ends.
     pub fn exit(&self) -> Exit {
         match self {
@@ -51,7 +56,7 @@ impl Stop {
     /// What is to be said about it.
     pub fn faults(&self) -> Vec<Fault> {
         match self {
-            Self::Usage(fault) => vec![fault.clone()],
+            Self::Usage(fault) => vec![fault.as_ref().clone()],
             Self::Input(faults) | Self::Rules(faults) => faults.clone(),
             Self::Write(error) => vec![Fault::whole(
                 "unwritable",

@@ -143,7 +143,11 @@ impl Ground<'_, '_> {
     }
 }
 
-fn prove_degree(test: &Test, ground: &Ground<'_, '_>, standing: &impl Fn(&[CauseId]) -> f64) -> Degree {
+fn prove_degree(
+    test: &Test,
+    ground: &Ground<'_, '_>,
+    standing: &impl Fn(&[CauseId]) -> f64,
+) -> Degree {
     let fold = |tests: &[Test], start: Degree, join: fn(Degree, Degree) -> Degree| {
         tests
             .iter()
@@ -163,7 +167,9 @@ fn prove_degree(test: &Test, ground: &Ground<'_, '_>, standing: &impl Fn(&[Cause
                 .into_iter(),
         ),
         Test::Finding(id) => ground.engine.finding(*id),
-        leaf => ground.engine.judge_test(leaf, ground.site, ground.limits, standing),
+        leaf => ground
+            .engine
+            .judge_test(leaf, ground.site, ground.limits, standing),
     }
 }
 
@@ -172,7 +178,9 @@ pub fn advise(ground: &Ground<'_, '_>) -> Advice {
     let mut advice = Advice::default();
     let floor = ground.knowledge.scales.step_floor;
     for (number, step) in ground.knowledge.steps.iter().enumerate() {
-        let Ok(id) = u16::try_from(number).map(StepId) else { continue };
+        let Ok(id) = u16::try_from(number).map(StepId) else {
+            continue;
+        };
         let standing = ground.standing(step);
         let good = ground.expected(step.helps.iter(), |_| 0.0);
         let harm = ground.expected(step.harms.iter(), |_| 0.0);
@@ -194,7 +202,11 @@ pub fn advise(ground: &Ground<'_, '_>) -> Advice {
         } else if !step.avoid_text.is_empty() && ground.decision.verdict > Verdict::Steady {
             let forbidden = standing == Standing::Forbidden && likely;
             let expected = sum(&harm);
-            if forbidden || (standing != Standing::Pointless && expected >= ground.knowledge.scales.avoid_floor && worth < 0.0) {
+            if forbidden
+                || (standing != Standing::Pointless
+                    && expected >= ground.knowledge.scales.avoid_floor
+                    && worth < 0.0)
+            {
                 advice.avoid.push(Warned {
                     step: id,
                     because: harm.iter().map(|s| s.0).take(4).collect(),
@@ -221,7 +233,11 @@ pub fn advise(ground: &Ground<'_, '_>) -> Advice {
 /// `never_if` known to hold stops it.
 fn first_aid(ground: &Ground<'_, '_>) -> Vec<Advised> {
     let least = |cause: CauseId| {
-        if ground.knowledge[cause].urgency == Urgency::Minutes { LEAST_FOR_FIRST_AID } else { 0.0 }
+        if ground.knowledge[cause].urgency == Urgency::Minutes {
+            LEAST_FOR_FIRST_AID
+        } else {
+            0.0
+        }
     };
     let mut aid: Vec<Advised> = ground
         .knowledge
@@ -229,14 +245,13 @@ fn first_aid(ground: &Ground<'_, '_>) -> Vec<Advised> {
         .iter()
         .enumerate()
         .filter(|(_, step)| step.first_aid && !step.temptation)
-        .filter(|(_, step)| {
-            matches!(ground.standing(step), Standing::Open | Standing::CheckFirst)
-        })
+        .filter(|(_, step)| matches!(ground.standing(step), Standing::Open | Standing::CheckFirst))
         .filter_map(|(number, step)| {
             let id = u16::try_from(number).ok().map(StepId)?;
             let good = ground.expected(step.helps.iter(), least);
             let harm = ground.expected(step.harms.iter(), |_| 0.0);
-            let worth = good.iter().map(|s| s.1).sum::<f64>() - harm.iter().map(|s| s.1).sum::<f64>();
+            let worth =
+                good.iter().map(|s| s.1).sum::<f64>() - harm.iter().map(|s| s.1).sum::<f64>();
             (worth > 0.0).then(|| Advised {
                 step: id,
                 because: good.iter().map(|s| s.0).take(4).collect(),

@@ -12,7 +12,7 @@ use toml::de::{DeTable, DeValue};
 use crate::fault::{Fault, Source};
 
 pub use section::Section;
-pub use value::{Node, kind_name};
+pub use value::Node;
 
 /// Collects faults while one source is walked.
 #[derive(Debug)]

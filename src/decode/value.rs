@@ -19,7 +19,7 @@ pub struct Node<'t> {
 }
 
 /// What kind of value this is, in plain words.
-pub fn kind_name(value: &DeValue<'_>) -> &'static str {
+fn kind_name(value: &DeValue<'_>) -> &'static str {
     match value {
         DeValue::String(_) => "a text",
         DeValue::Integer(_) => "a whole number",

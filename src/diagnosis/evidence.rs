@@ -17,6 +17,8 @@ pub struct Item {
     pub group: usize,
     /// A cause must explain it.
     pub alarming: bool,
+    /// How often it shows under the cause that shows it most.
+    pub expected: f64,
     /// How often it shows under the causes that it is an effect of.
     pub causes: Vec<(CauseId, f64)>,
 }
@@ -28,7 +30,7 @@ pub struct Table {
     pub items: Vec<Item>,
     /// By cause: item index and how often it shows, by rising index.
     pub by_cause: Vec<Vec<(usize, f64)>>,
-    groups: usize,
+    pub(super) groups: usize,
 }
 
 impl Table {
@@ -39,13 +41,16 @@ impl Table {
         let mut groups: HashMap<String, usize> = HashMap::new();
         let mut by_cause = vec![Vec::new(); knowledge.causes.len()];
         for (number, cause) in knowledge.causes.iter().enumerate() {
-            let Ok(id) = u16::try_from(number).map(CauseId) else { continue };
+            let Ok(id) = u16::try_from(number).map(CauseId) else {
+                continue;
+            };
             for effect in &cause.effects {
                 let at = *index.entry(effect.evidence).or_insert_with(|| {
                     items.push(item(knowledge, effect.evidence, &mut groups));
                     items.len() - 1
                 });
                 items[at].causes.push((id, effect.seen_in));
+                items[at].expected = items[at].expected.max(effect.seen_in);
                 by_cause[number].push((at, effect.seen_in));
             }
             by_cause[number].sort_unstable_by_key(|(at, _)| *at);
@@ -59,17 +64,21 @@ impl Table {
 
     /// How true every item is.
     pub fn degrees(&self, engine: &Engine<'_>) -> Vec<Degree> {
-        self.items.iter().map(|i| engine.evidence(i.evidence)).collect()
+        self.items
+            .iter()
+            .map(|i| engine.evidence(i.evidence))
+            .collect()
     }
 
     /// What each item's presence and absence weighs: members of a group that tell the same thing are added and divided
-    /// by the root of their number.
+    /// by the root of their number. An absence counts as a member as far as some cause would have shown it: what hardly
+    /// ever shows does not dilute the absence of what nearly always does.
     pub fn weights(&self, degrees: &[Degree]) -> Vec<(f64, f64)> {
         let mut present = vec![0.0; self.groups];
         let mut absent = vec![0.0; self.groups];
         for (item, degree) in self.items.iter().zip(degrees) {
             present[item.group] += degree.lo;
-            absent[item.group] += 1.0 - degree.hi;
+            absent[item.group] += (1.0 - degree.hi) * item.expected;
         }
         self.items
             .iter()
@@ -89,7 +98,12 @@ fn item(knowledge: &Knowledge, evidence: Evidence, groups: &mut HashMap<String, 
     let (background, group, alarming, own) = match evidence {
         Evidence::Finding(id) => {
             let f = &knowledge[id];
-            (f.background, &f.group, f.alarming, format!("finding {}", f.id))
+            (
+                f.background,
+                &f.group,
+                f.alarming,
+                format!("finding {}", f.id),
+            )
         }
         Evidence::Sign(id) => {
             let s = &knowledge.vocabulary[id];
@@ -100,9 +114,10 @@ fn item(knowledge: &Knowledge, evidence: Evidence, groups: &mut HashMap<String, 
     let next = groups.len();
     Item {
         evidence,
-        background,
+        background: background.max(knowledge.scales.least_background),
         group: *groups.entry(key).or_insert(next),
         alarming,
+        expected: 0.0,
         causes: Vec::new(),
     }
 }

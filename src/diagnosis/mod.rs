@@ -21,18 +21,47 @@ pub use sheet::{Books, Piece};
 pub use tell::Told;
 pub use verdict::{Decision, Verdict};
 
+/// What a diagnosis is made on: a log that somebody reviews, or a walk that somebody started because of something seen.
+#[derive(Debug, Clone, Copy, PartialEq, Eq)]
+pub enum Occasion {
+    /// A log is reviewed.
+    Review,
+    /// Somebody walks up to the tank.
+    Walk,
+}
+
+impl Occasion {
+    /// How likely it is beforehand that anything is wrong.
+    fn incident(self, knowledge: &Knowledge) -> f64 {
+        match self {
+            Occasion::Review => knowledge.scales.incident_review,
+            Occasion::Walk => knowledge.scales.incident_walk,
+        }
+    }
+
+    /// From which summed probability on of any cause it is worth watching.
+    fn watch(self, knowledge: &Knowledge) -> f64 {
+        match self {
+            Occasion::Review => knowledge.scales.watch,
+            Occasion::Walk => knowledge.scales.watch_walk,
+        }
+    }
+}
+
 /// Diagnoses farms of one rule base.
 #[derive(Debug, Clone)]
 pub struct Doctor<'k> {
     knowledge: &'k Knowledge,
+    occasion: Occasion,
     table: Table,
 }
 
 impl<'k> Doctor<'k> {
-    /// A doctor who knows this rule base.
-    pub fn new(knowledge: &'k Knowledge) -> Self {
+    /// A doctor who knows this rule base and what the diagnosis is made on.
+    pub fn new(knowledge: &'k Knowledge, occasion: Occasion) -> Self {
         Self {
             knowledge,
+            occasion,
             table: Table::new(knowledge),
         }
     }
@@ -47,12 +76,16 @@ impl<'k> Doctor<'k> {
         self.table.degrees(engine)
     }
 
-    /// Ranks the causes. `incident` is how likely it is beforehand that anything is wrong.
-    pub fn rank(&self, engine: &Engine<'_>, incident: f64) -> Ranking {
+    /// Ranks the causes.
+    pub fn rank(&self, engine: &Engine<'_>) -> Ranking {
         rank::rank(
             &self.table,
             &self.degrees(engine),
-            &odds::log_odds(self.knowledge, engine, incident),
+            &odds::log_odds(
+                self.knowledge,
+                engine,
+                self.occasion.incident(self.knowledge),
+            ),
             self.knowledge.scales.second_cause,
             self.knowledge.scales.evidence,
         )
@@ -60,12 +93,24 @@ impl<'k> Doctor<'k> {
 
     /// Decides what the ranking and the direct dangers ask for. `due`: routine readings are overdue.
     pub fn decide(&self, engine: &Engine<'k>, ranking: &Ranking, due: bool) -> Decision<'k> {
-        verdict::decide(self.knowledge, engine, ranking, due)
+        verdict::decide(
+            self.knowledge,
+            engine,
+            ranking,
+            self.occasion.watch(self.knowledge),
+            due,
+        )
     }
 
     /// What would tell most.
     pub fn tell(&self, engine: &Engine<'_>, ranking: &Ranking) -> Told {
-        tell::tell(self.knowledge, engine, &self.table, &self.degrees(engine), ranking)
+        tell::tell(
+            self.knowledge,
+            engine,
+            &self.table,
+            &self.degrees(engine),
+            ranking,
+        )
     }
 
     /// The books from which balance sheets are drawn up.

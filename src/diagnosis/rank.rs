@@ -158,7 +158,10 @@ impl Scorer<'_> {
             .collect();
         items.sort_unstable();
         items.dedup();
-        let gain: f64 = items.iter().map(|item| self.gain(*item, self.seen(*item, causes))).sum();
+        let gain: f64 = items
+            .iter()
+            .map(|item| self.gain(*item, self.seen(*item, causes)))
+            .sum();
         let odds: f64 = causes.iter().map(|c| self.log_odds[*c]).sum();
         let extra = causes.len().saturating_sub(1);
         #[allow(clippy::cast_precision_loss)] // two or three
@@ -175,17 +178,21 @@ impl Scorer<'_> {
     }
 
     fn unexplained(&self, degrees: &[Degree], causes: &[usize]) -> Option<usize> {
-        self.table.items.iter().zip(degrees).position(|(item, degree)| {
-            item.alarming
-                && degree.lo >= 0.5
-                && shows(
-                    item.background,
-                    item.causes
-                        .iter()
-                        .filter(|(c, _)| causes.contains(&c.index()))
-                        .map(|(_, seen)| *seen),
-                ) < EXPLAINED
-        })
+        self.table
+            .items
+            .iter()
+            .zip(degrees)
+            .position(|(item, degree)| {
+                item.alarming
+                    && degree.lo >= 0.5
+                    && shows(
+                        item.background,
+                        item.causes
+                            .iter()
+                            .filter(|(c, _)| causes.contains(&c.index()))
+                            .map(|(_, seen)| *seen),
+                    ) < EXPLAINED
+            })
     }
 }
 
@@ -197,11 +204,14 @@ fn triples(
     scores: &mut Vec<(Vec<usize>, f64)>,
 ) {
     const PAIRS_TRIED: usize = 12;
-    let mut pairs: Vec<(Vec<usize>, f64)> = scores.iter().filter(|s| s.0.len() == 2).cloned().collect();
+    let mut pairs: Vec<(Vec<usize>, f64)> =
+        scores.iter().filter(|s| s.0.len() == 2).cloned().collect();
     pairs.sort_by(|a, b| b.1.total_cmp(&a.1));
     let mut seen: Vec<Vec<usize>> = Vec::new();
     for (pair, _) in pairs.iter().take(PAIRS_TRIED) {
-        let Some(item) = scorer.unexplained(degrees, pair) else { continue };
+        let Some(item) = scorer.unexplained(degrees, pair) else {
+            continue;
+        };
         for (cause, shown) in &scorer.table.items[item].causes {
             let third = cause.index();
             if *shown < EXPLAINED || pair.contains(&third) || !singles[third].is_finite() {
@@ -275,7 +285,8 @@ pub(super) fn enumerate(
             continue;
         }
         let mut score: f64 = members.iter().map(|c| log_odds[*c]).sum();
-        score += second.ln() * f64::from(u32::try_from(members.len().saturating_sub(1)).unwrap_or(0));
+        score +=
+            second.ln() * f64::from(u32::try_from(members.len().saturating_sub(1)).unwrap_or(0));
         for (item, weight) in table.items.iter().zip(&weights) {
             let seen = item
                 .causes
@@ -291,4 +302,69 @@ pub(super) fn enumerate(
         }
     }
     probabilities.iter().map(|p| p / total).collect()
+}
+
+#[cfg(test)]
+mod tests {
+    use proptest::prelude::*;
+
+    use super::super::evidence::Item;
+    use super::*;
+    use crate::knowledge::{Evidence, FindingId};
+
+    const CAUSES: usize = 6;
+    const ITEMS: usize = 9;
+
+    /// A random small rule base: backgrounds, groups and how often each cause shows each item.
+    fn table(numbers: &[(f64, usize, Vec<Option<f64>>)]) -> Table {
+        let mut by_cause = vec![Vec::new(); CAUSES];
+        let items = numbers
+            .iter()
+            .enumerate()
+            .map(|(at, (background, group, seen))| {
+                let causes: Vec<(CauseId, f64)> = seen
+                    .iter()
+                    .enumerate()
+                    .filter_map(|(c, s)| Some((CauseId(u16::try_from(c).ok()?), (*s)?)))
+                    .collect();
+                for (c, s) in &causes {
+                    by_cause[c.index()].push((at, *s));
+                }
+                Item {
+                    evidence: Evidence::Finding(FindingId(u16::try_from(at).unwrap_or(0))),
+                    background: *background,
+                    group: *group,
+                    alarming: false,
+                    expected: causes.iter().map(|c| c.1).fold(0.0, f64::max),
+                    causes,
+                }
+            })
+            .collect();
+        Table {
+            items,
+            by_cause,
+            groups: ITEMS,
+        }
+    }
+
+    proptest! {
+        #[test]
+        fn pruning_stays_within_a_millionth_of_full_enumeration(
+            numbers in prop::collection::vec(
+                (0.005..0.9_f64, 0..ITEMS, prop::collection::vec(prop::option::of(0.01..0.99_f64), CAUSES)),
+                ITEMS,
+            ),
+            known in prop::collection::vec((0.0..=1.0_f64, 0.0..=1.0_f64), ITEMS),
+            log_odds in prop::collection::vec(-9.0..4.0_f64, CAUSES),
+            second in 0.05..1.0_f64,
+        ) {
+            let table = table(&numbers);
+            let degrees: Vec<Degree> = known.iter().map(|(a, b)| Degree::between(*a, *b)).collect();
+            let quick = rank(&table, &degrees, &log_odds, second, 0.7);
+            let full = enumerate(&table, &degrees, &log_odds, second, 0.7, 2);
+            for (a, b) in quick.causes.iter().zip(full) {
+                prop_assert!((a - b).abs() < 1e-6, "{a} {b}");
+            }
+        }
+    }
 }

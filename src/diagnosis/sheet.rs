@@ -49,9 +49,10 @@ impl<'k> Books<'_, 'k> {
         });
         let mut pieces = self.triggers(cause);
         for (index, _) in &self.table.by_cause[cause.index()] {
-            let (Some(item), Some(weight)) =
-                (self.table.items.get(*index), self.ranking.weights.get(*index))
-            else {
+            let (Some(item), Some(weight)) = (
+                self.table.items.get(*index),
+                self.ranking.weights.get(*index),
+            ) else {
                 continue;
             };
             let seen = |with: bool| {
@@ -119,6 +120,11 @@ impl<'k> Books<'_, 'k> {
         }
     }
 
+    /// What the n-th trigger of a cause does to the log of its odds.
+    pub fn trigger_weight(&self, cause: CauseId, n: usize) -> f64 {
+        odds::trigger(self.engine, cause, n)
+    }
+
     /// The proof of a test.
     pub fn prove(&self, test: &'k Test) -> Proof<'k> {
         prove(test, self.engine, self.site, self.limits, &|causes| {
@@ -152,11 +158,19 @@ impl<'k> Books<'_, 'k> {
                 let words: Vec<String> = clauses
                     .into_iter()
                     .zip(&proof.parts)
-                    .map(|(c, p)| if matches!(p.test, Test::Not(_)) { format!("not: {}", c.0) } else { c.0 })
+                    .map(|(c, p)| {
+                        if matches!(p.test, Test::Not(_)) {
+                            format!("not: {}", c.0)
+                        } else {
+                            c.0
+                        }
+                    })
                     .collect();
                 (words.join(", and "), saw)
             }
-            Test::All(_) => self.decisive(proof.parts.iter().min_by(|a, b| sum(a).total_cmp(&sum(b)))),
+            Test::All(_) => {
+                self.decisive(proof.parts.iter().min_by(|a, b| sum(a).total_cmp(&sum(b))))
+            }
             Test::Any(_) | Test::NOf(..) => {
                 self.decisive(proof.parts.iter().max_by(|a, b| sum(a).total_cmp(&sum(b))))
             }
@@ -177,7 +191,11 @@ impl<'k> Books<'_, 'k> {
             .iter()
             .zip(&self.degrees)
             .filter(|(item, degree)| {
-                let seen = item.causes.iter().filter(|(c, _)| set.contains(c)).map(|(_, s)| *s);
+                let seen = item
+                    .causes
+                    .iter()
+                    .filter(|(c, _)| set.contains(c))
+                    .map(|(_, s)| *s);
                 item.alarming && degree.lo >= 0.5 && shows(item.background, seen) < EXPLAINED
             })
             .map(|(item, _)| self.piece(item.evidence).clause)
@@ -187,11 +205,10 @@ impl<'k> Books<'_, 'k> {
     /// The place a cause's strongest local evidence was seen at, by number.
     pub fn place(&self, pieces: &[Piece]) -> Option<u16> {
         pieces.iter().find_map(|p| match &p.saw {
-            Some((id, Saw::Value { place, .. } | Saw::Moved { place, .. } | Saw::Against { place, .. }))
-                if self.knowledge.vocabulary[*id].local && *place > 0 =>
-            {
-                Some(*place - 1)
-            }
+            Some((
+                id,
+                Saw::Value { place, .. } | Saw::Moved { place, .. } | Saw::Against { place, .. },
+            )) if self.knowledge.vocabulary[*id].local && *place > 0 => Some(*place - 1),
             _ => None,
         })
     }

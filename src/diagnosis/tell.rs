@@ -32,7 +32,12 @@ impl Told {
         let mut list: Vec<(String, f64)> = self
             .by_id
             .iter()
-            .map(|(id, causes)| (id.clone(), causes.iter().map(|(c, bits)| bits * weight(*c)).sum()))
+            .map(|(id, causes)| {
+                (
+                    id.clone(),
+                    causes.iter().map(|(c, bits)| bits * weight(*c)).sum(),
+                )
+            })
             .collect();
         list.sort_by(|a, b| b.1.total_cmp(&a.1).then_with(|| a.0.cmp(&b.0)));
         list
@@ -42,7 +47,12 @@ impl Told {
         if bits < 1e-4 {
             return;
         }
-        let slot = self.by_id.entry(id.to_owned()).or_default().entry(cause).or_insert(0.0);
+        let slot = self
+            .by_id
+            .entry(id.to_owned())
+            .or_default()
+            .entry(cause)
+            .or_insert(0.0);
         *slot = slot.max(bits);
     }
 }
@@ -135,14 +145,20 @@ fn events(
             if degree.hi - degree.lo < 0.5 || trigger.odds_times <= 1.0 {
                 continue;
             }
-            let if_not = if trigger.odds_times_if_not < 1.0 { trigger.odds_times_if_not } else { USUAL_IF_NOT };
+            let if_not = if trigger.odds_times_if_not < 1.0 {
+                trigger.odds_times_if_not
+            } else {
+                USUAL_IF_NOT
+            };
             // The rates with and without the cause that give these two odds.
             let without = (1.0 - if_not) / (trigger.odds_times - if_not);
             let with = (trigger.odds_times * without).min(0.999);
             let seen = probability * with + (1.0 - probability) * without;
             let bits = information(probability, seen, probability * with);
             trigger.when.visit(&mut |test| match test {
-                Test::Event { event, .. } => told.add(&knowledge.vocabulary[*event].id, *cause, bits),
+                Test::Event { event, .. } => {
+                    told.add(&knowledge.vocabulary[*event].id, *cause, bits)
+                }
                 Test::Sign { sign, .. } => told.add(&knowledge.vocabulary[*sign].id, *cause, bits),
                 _ => {}
             });
@@ -162,7 +178,13 @@ fn unknown_ids(knowledge: &Knowledge, engine: &Engine<'_>, evidence: Evidence) -
     ids
 }
 
-fn collect(knowledge: &Knowledge, engine: &Engine<'_>, test: &Test, ids: &mut Vec<String>, depth: usize) {
+fn collect(
+    knowledge: &Knowledge,
+    engine: &Engine<'_>,
+    test: &Test,
+    ids: &mut Vec<String>,
+    depth: usize,
+) {
     /// Findings that rest on findings that rest on findings are too far away to ask for.
     const DEEPEST: usize = 3;
     if depth > DEEPEST {

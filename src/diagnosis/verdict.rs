@@ -49,18 +49,18 @@ pub struct Decision<'k> {
     pub first_aid: bool,
 }
 
-/// Decides. `due` says that routine readings are overdue, so that "steady" can't be said.
+/// Decides. `watch` is the summed probability of any cause that is worth watching; `due` says that routine readings are overdue, so that "steady" can't be said.
 pub(super) fn decide<'k>(
     knowledge: &'k Knowledge,
     engine: &Engine<'k>,
     ranking: &Ranking,
+    watch: f64,
     due: bool,
 ) -> Decision<'k> {
     let scales = &knowledge.scales;
     let holding = |f: &&(usize, &'k Finding)| {
-        u16::try_from(f.0).is_ok_and(|i| {
-            engine.finding(crate::knowledge::FindingId(i)).lo >= scales.danger
-        })
+        u16::try_from(f.0)
+            .is_ok_and(|i| engine.finding(crate::knowledge::FindingId(i)).lo >= scales.danger)
     };
     let alarms: Vec<(usize, &Finding)> = knowledge
         .findings
@@ -87,7 +87,7 @@ pub(super) fn decide<'k>(
         Verdict::ActNow
     } else if at(Urgency::Hours) || hours || days {
         Verdict::ActToday
-    } else if due || 1.0 - ranking.nothing >= scales.watch {
+    } else if due || 1.0 - ranking.nothing >= watch {
         Verdict::Watch
     } else {
         Verdict::Steady

@@ -169,6 +169,8 @@ fn fade(time: i64, now: i64, good_for: i64) -> (f64, i64) {
 
 /// A jump of the last reading alone, not yet confirmed by another, counts for no more than this.
 const UNCONFIRMED: f64 = 0.6;
+/// How much a value that stands alone is faded until it is borne out; more than half, so that it decides nothing alone.
+const DOUBTED: f64 = 0.6;
 /// How far back the farm's own usual reaches, what of it is too recent to be usual, and how many days must tell.
 const USUAL_WINDOW: i64 = 35 * 86_400;
 const USUAL_RECENT: i64 = 3 * 86_400;
@@ -308,7 +310,14 @@ impl Leaf {
         let (Some((time, _)), Some(shift)) = (series.last(), series.shift(*within)) else {
             return Judged::unknown();
         };
-        let least = resolution.0.max(resolution.1 * shift.early.abs());
+        let about = shift
+            .early
+            .max(shift.early + shift.change)
+            .max(shift.early + shift.jump);
+        let least = resolution
+            .0
+            .max(resolution.1 * shift.early.abs())
+            .max(series.step(about));
         let scale = if *share {
             shift.early.abs().max(least).max(f64::MIN_POSITIVE)
         } else {
@@ -353,7 +362,10 @@ impl Leaf {
         let Some(usual) = series.usual(USUAL_WINDOW, USUAL_RECENT, USUAL_DAYS) else {
             return Judged::unknown();
         };
-        let least = resolution.0.max(resolution.1 * usual.middle.abs());
+        let least = resolution
+            .0
+            .max(resolution.1 * usual.middle.abs())
+            .max(series.step(usual.middle));
         let spread = usual.spread.max(least).max(f64::MIN_POSITIVE);
         let away = match side {
             Side::High => value - usual.middle,
@@ -442,8 +454,14 @@ fn places(
             }
         });
     }
+    // A value that nothing bears out yet is read again before it is believed.
+    let doubt = if memory.is_doubtful(reading) { DOUBTED } else { 0.0 };
     match chosen {
-        Some(judged) => Judged { until, ..judged },
+        Some(judged) => Judged {
+            until,
+            degree: judged.degree.faded(doubt),
+            ..judged
+        },
         None => Judged {
             until,
             ..Judged::unknown()

@@ -26,11 +26,16 @@ pub fn measure(engine: &mut Engine<'_>, rows: &[Row], counts: &mut [Measured]) {
     for (at, row) in rows.iter().enumerate() {
         engine.observe(row);
         let day = |time: i64| time.div_euclid(DAY);
-        if rows.get(at + 1).is_some_and(|next| day(next.time) == day(row.time)) {
+        if rows
+            .get(at + 1)
+            .is_some_and(|next| day(next.time) == day(row.time))
+        {
             continue;
         }
         for (index, count) in counts.iter_mut().enumerate() {
-            let Ok(id) = u16::try_from(index) else { continue };
+            let Ok(id) = u16::try_from(index) else {
+                continue;
+            };
             let degree = engine.finding(FindingId(id));
             count.known += degree.lo + 1.0 - degree.hi;
             count.held += degree.lo;

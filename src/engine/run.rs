@@ -11,6 +11,7 @@ use crate::history::log::Row;
 use crate::history::memory::Memory;
 use crate::knowledge::{CauseId, Evidence, FindingId, Knowledge, Test};
 use crate::site::Site;
+use crate::vocabulary::{ReadingId, Vocabulary};
 
 /// The balances of a site, with what the knowledge base knows of its media and fish.
 fn balance(knowledge: &Knowledge, site: &Site) -> Balance {
@@ -28,6 +29,19 @@ fn balance(knowledge: &Knowledge, site: &Site) -> Balance {
     Balance::new(&knowledge.vocabulary, site, area, oxygen_use)
 }
 
+fn inputs(vocabulary: &Vocabulary) -> Vec<(ReadingId, Vec<ReadingId>)> {
+    let of = |id: &str| {
+        let inputs = crate::history::balance::inputs(id);
+        inputs.iter().filter_map(|i| vocabulary.reading(i)).collect()
+    };
+    vocabulary
+        .readings
+        .iter()
+        .filter(|r| r.derived)
+        .filter_map(|r| Some((vocabulary.reading(&r.id)?, of(&r.id))))
+        .collect()
+}
+
 /// The facts of one farm as they stand.
 #[derive(Debug, Clone)]
 pub struct Engine<'k> {
@@ -41,6 +55,8 @@ pub struct Engine<'k> {
     until: Vec<i64>,
     wakes: BinaryHeap<Reverse<(i64, u32)>>,
     version: u64,
+    /// What each derived reading is computed from.
+    inputs: Vec<(ReadingId, Vec<ReadingId>)>,
 }
 
 impl<'k> Engine<'k> {
@@ -59,6 +75,7 @@ impl<'k> Engine<'k> {
             until: vec![i64::MAX; leaves],
             wakes: BinaryHeap::new(),
             version: 0,
+            inputs: inputs(&knowledge.vocabulary),
             program,
         };
         engine.judge_all();
@@ -119,6 +136,10 @@ impl<'k> Engine<'k> {
 
     fn update(&mut self) {
         self.balance.update(&mut self.memory);
+        for (derived, inputs) in &self.inputs {
+            let doubtful = inputs.iter().any(|id| self.memory.is_doubtful(*id));
+            self.memory.doubt(*derived, doubtful);
+        }
         let changes = self.memory.changes().clone();
         for id in &changes.readings {
             self.judge_each(self.program.by_reading.get(usize::from(id.0)).cloned());

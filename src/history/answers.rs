@@ -39,7 +39,11 @@ pub fn read(source: &Source, vocabulary: &Vocabulary, zone: &TimeZone) -> (Answe
             "readings",
             "reading",
             |id| vocabulary.reading(id),
-            &vocabulary.readings.iter().map(|r| r.id.as_str()).collect::<Vec<_>>(),
+            &vocabulary
+                .readings
+                .iter()
+                .map(|r| r.id.as_str())
+                .collect::<Vec<_>>(),
         )
         .into_iter()
         .filter_map(|(id, node)| Some((id, plausible(&node, id, vocabulary)?)))
@@ -49,7 +53,11 @@ pub fn read(source: &Source, vocabulary: &Vocabulary, zone: &TimeZone) -> (Answe
             "signs",
             "sign",
             |id| vocabulary.sign(id),
-            &vocabulary.signs.iter().map(|r| r.id.as_str()).collect::<Vec<_>>(),
+            &vocabulary
+                .signs
+                .iter()
+                .map(|r| r.id.as_str())
+                .collect::<Vec<_>>(),
         )
         .into_iter()
         .filter_map(|(id, node)| Some((id, node.flag()?)))
@@ -59,7 +67,11 @@ pub fn read(source: &Source, vocabulary: &Vocabulary, zone: &TimeZone) -> (Answe
             "events",
             "event",
             |id| vocabulary.event(id),
-            &vocabulary.events.iter().map(|r| r.id.as_str()).collect::<Vec<_>>(),
+            &vocabulary
+                .events
+                .iter()
+                .map(|r| r.id.as_str())
+                .collect::<Vec<_>>(),
         )
         .into_iter()
         .filter_map(|(id, node)| Some((id, happened(&node, zone)?)))
@@ -79,7 +91,9 @@ fn table<'t, T>(
     };
     let mut found = Vec::new();
     for id in section.keys() {
-        let Some(node) = section.node(&id) else { continue };
+        let Some(node) = section.node(&id) else {
+            continue;
+        };
         match find(&id) {
             Some(number) => found.push((number, node)),
             None => section.fault_at_key(
@@ -160,7 +174,10 @@ fn happened(node: &Node<'_>, zone: &TimeZone) -> Option<Happened> {
     let age = text
         .parse::<Span>()
         .ok()
-        .and_then(|s| s.total((Unit::Second, SpanRelativeTo::days_are_24_hours())).ok())
+        .and_then(|s| {
+            s.total((Unit::Second, SpanRelativeTo::days_are_24_hours()))
+                .ok()
+        })
         .filter(|s| (0.0..1e10).contains(s));
     match age {
         #[allow(clippy::cast_possible_truncation)] // checked just above

@@ -12,6 +12,7 @@ pub fn check(knowledge: &Knowledge) -> Vec<Fault> {
     let mut faults = Vec::new();
     unreachable_findings(knowledge, &mut faults);
     causes(knowledge, &mut faults);
+    families(knowledge, &mut faults);
     steps(knowledge, &mut faults);
     rounds(knowledge, &mut faults);
     faults
@@ -112,6 +113,34 @@ fn causes(knowledge: &Knowledge, faults: &mut Vec<Fault>) {
                 "cause-without-step",
                 format!("no step helps under the cause `{}`", cause.id),
                 "name one in its `[cause.steps]`",
+            ));
+        }
+    }
+}
+
+/// Every family has a name that can lead a page, and every name has causes.
+fn families(knowledge: &Knowledge, faults: &mut Vec<Fault>) {
+    for (index, cause) in knowledge.causes.iter().enumerate() {
+        let named = knowledge.families.iter().any(|f| f.id == cause.family);
+        let told = knowledge.causes[..index]
+            .iter()
+            .any(|c| c.family == cause.family);
+        if !named && !told {
+            faults.push(fault(
+                cause.place.as_ref(),
+                "family-without-name",
+                format!("the family `{}` has no name", cause.family),
+                "add a `[[family]]` with its id and name to scales.toml",
+            ));
+        }
+    }
+    for family in &knowledge.families {
+        if knowledge.family(&family.id).next().is_none() {
+            faults.push(fault(
+                family.place.as_ref(),
+                "unused-family",
+                format!("no cause is of the family `{}`", family.id),
+                "take it out, or correct its id",
             ));
         }
     }

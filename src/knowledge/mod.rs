@@ -9,11 +9,13 @@ mod ids;
 mod load;
 mod origin;
 mod schema;
+mod sourced;
 mod test;
 
 pub use check::{Finding as CheckFinding, check};
 pub use ids::{CauseId, FindingId, StepId};
 pub use load::load;
-pub use origin::{embedded, embedded_text, folder};
+pub use origin::{embedded, embedded_text, folder, shipped};
 pub use schema::*;
+pub use sourced::{Coverage, SourceUse, Sourced, coverage, sourced};
 pub use test::{Bound, Change, Limit, LimitLevel, Over, Ramp, Side, SiteTest, Test};

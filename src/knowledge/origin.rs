@@ -4,9 +4,24 @@ use std::path::Path;
 
 use include_dir::{Dir, DirEntry, include_dir};
 
+use super::{Knowledge, load};
 use crate::fault::{Fault, Source};
 
 static KNOWLEDGE: Dir<'_> = include_dir!("$CARGO_MANIFEST_DIR/knowledge");
+
+/// The shipped rule base as the build left it; `None` when it had faults then, and has to be loaded to show them.
+static BUILT: &[u8] = include_bytes!(concat!(env!("OUT_DIR"), "/knowledge.bin"));
+
+/// The shipped rule base.
+///
+/// # Errors
+/// All faults of all files.
+pub fn shipped() -> Result<Knowledge, Vec<Fault>> {
+    match postcard::from_bytes(BUILT) {
+        Ok(base) => Ok(base),
+        Err(_) => load(&embedded(), &[]),
+    }
+}
 
 /// The embedded rule base, file by file in the order of their names; each is named `knowledge/…`.
 pub fn embedded() -> Vec<Source> {
@@ -74,4 +89,17 @@ fn walk(dir: &Path, depth: usize, sources: &mut Vec<Source>) -> Result<(), Fault
         }
     }
     Ok(())
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    #[test]
+    fn what_was_built_is_what_is_loaded() {
+        let loaded = load(&embedded(), &[]);
+        let built = shipped();
+        assert!(!BUILT.is_empty());
+        assert_eq!(format!("{:?}", built.map(|k| k.causes)), format!("{:?}", loaded.map(|k| k.causes)));
+    }
 }

@@ -1,13 +1,14 @@
 //! What the rule base is made of. Field by field this is `knowledge/README.md`.
 
 use std::collections::BTreeMap;
+use serde::{Deserialize, Serialize};
 
 use super::{CauseId, FindingId, LimitLevel, Side, StepId, Test};
 use crate::fault::Place;
 use crate::vocabulary::{ReadingId, SignId, Vocabulary};
 
 /// How soon something harms.
-#[derive(Debug, Clone, Copy, PartialEq, Eq, PartialOrd, Ord, Hash)]
+#[derive(Debug, Clone, Copy, PartialEq, Eq, PartialOrd, Ord, Hash, Serialize, Deserialize)]
 pub enum Urgency {
     /// Plants, stock growth.
     Weeks,
@@ -39,7 +40,7 @@ impl Urgency {
 }
 
 /// When a step is due.
-#[derive(Debug, Clone, Copy, PartialEq, Eq, PartialOrd, Ord, Hash)]
+#[derive(Debug, Clone, Copy, PartialEq, Eq, PartialOrd, Ord, Hash, Serialize, Deserialize)]
 pub enum When {
     /// In the first minutes.
     Now,
@@ -71,7 +72,7 @@ impl When {
 }
 
 /// What follows from readings, signs, events and other findings.
-#[derive(Debug, Clone)]
+#[derive(Debug, Clone, Serialize, Deserialize)]
 pub struct Finding {
     /// Kebab-case id.
     pub id: String,
@@ -96,7 +97,7 @@ pub struct Finding {
 }
 
 /// What an effect looks at.
-#[derive(Debug, Clone, Copy, PartialEq, Eq, Hash)]
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Hash, Serialize, Deserialize)]
 pub enum Evidence {
     /// A finding.
     Finding(FindingId),
@@ -105,7 +106,7 @@ pub enum Evidence {
 }
 
 /// What makes a cause likelier before any effect is seen.
-#[derive(Debug, Clone)]
+#[derive(Debug, Clone, Serialize, Deserialize)]
 pub struct Trigger {
     /// When it holds.
     pub when: Test,
@@ -118,7 +119,7 @@ pub struct Trigger {
 }
 
 /// What a cause does, and how often it shows.
-#[derive(Debug, Clone)]
+#[derive(Debug, Clone, Serialize, Deserialize)]
 pub struct Effect {
     /// The finding or sign.
     pub evidence: Evidence,
@@ -131,7 +132,7 @@ pub struct Effect {
 }
 
 /// Which reading or sign shows recovery, which way, by when.
-#[derive(Debug, Clone)]
+#[derive(Debug, Clone, Serialize, Deserialize)]
 pub struct Verify {
     /// Reading or sign id.
     pub id: String,
@@ -142,7 +143,7 @@ pub struct Verify {
 }
 
 /// A cause that looks like another.
-#[derive(Debug, Clone)]
+#[derive(Debug, Clone, Serialize, Deserialize)]
 pub struct Lookalike {
     /// The other one.
     pub cause: CauseId,
@@ -151,7 +152,7 @@ pub struct Lookalike {
 }
 
 /// What may be wrong.
-#[derive(Debug, Clone)]
+#[derive(Debug, Clone, Serialize, Deserialize)]
 pub struct Cause {
     /// Contract id.
     pub id: String,
@@ -186,7 +187,7 @@ pub struct Cause {
 }
 
 /// What to do, or to leave alone.
-#[derive(Debug, Clone)]
+#[derive(Debug, Clone, Serialize, Deserialize)]
 pub struct Step {
     /// Kebab-case id.
     pub id: String,
@@ -229,7 +230,7 @@ pub struct Step {
 }
 
 /// What is said with every answer it applies to.
-#[derive(Debug, Clone)]
+#[derive(Debug, Clone, Serialize, Deserialize)]
 pub struct Caution {
     /// Kebab-case id.
     pub id: String,
@@ -246,7 +247,7 @@ pub struct Caution {
 }
 
 /// One species and its limits.
-#[derive(Debug, Clone)]
+#[derive(Debug, Clone, Serialize, Deserialize)]
 pub struct Species {
     /// Contract id.
     pub id: String,
@@ -274,7 +275,7 @@ impl Species {
 }
 
 /// What is looked at how often.
-#[derive(Debug, Clone)]
+#[derive(Debug, Clone, Serialize, Deserialize)]
 pub struct Round {
     /// Kebab-case id.
     pub id: String,
@@ -297,7 +298,7 @@ pub struct Round {
 }
 
 /// Wetted area of a filter medium.
-#[derive(Debug, Clone)]
+#[derive(Debug, Clone, Serialize, Deserialize)]
 pub struct Media {
     /// Kebab-case id.
     pub id: String,
@@ -309,8 +310,19 @@ pub struct Media {
     pub source: Vec<String>,
 }
 
+/// A family of causes that a log often can't tell apart.
+#[derive(Debug, Clone, Serialize, Deserialize)]
+pub struct Family {
+    /// Kebab-case id.
+    pub id: String,
+    /// A sentence without its full stop.
+    pub name: String,
+    /// Where it is written.
+    pub place: Option<Place>,
+}
+
 /// A publication.
-#[derive(Debug, Clone)]
+#[derive(Debug, Clone, Serialize, Deserialize)]
 pub struct Reference {
     /// Key.
     pub key: String,
@@ -327,7 +339,7 @@ pub struct Reference {
 }
 
 /// Priors, thresholds of the verdict and words: `knowledge/scales.toml`.
-#[derive(Debug, Clone)]
+#[derive(Debug, Clone, Serialize, Deserialize)]
 pub struct Scales {
     /// How likely it is that anything is wrong, in a routine review.
     pub incident_review: f64,
@@ -339,6 +351,8 @@ pub struct Scales {
     pub sign_not_noted: f64,
     /// How much of the evidence counts (1 = as if every finding were independent).
     pub evidence: f64,
+    /// No background counts as smaller than this.
+    pub least_background: f64,
     /// The most that all triggers of one cause together multiply its odds by.
     pub triggers: f64,
     /// Penalty on each cause beyond the first in a set, as a factor on its odds.
@@ -351,6 +365,8 @@ pub struct Scales {
     pub act_days: f64,
     /// Summed probability of anything for `watch`.
     pub watch: f64,
+    /// The same in a walk.
+    pub watch_walk: f64,
     /// Degree from which a danger finding decides.
     pub danger: f64,
     /// Below this no step is advised for a cause.
@@ -364,12 +380,12 @@ pub struct Scales {
 }
 
 /// What a walk asks first, and when it stops: `knowledge/walk.toml`.
-#[derive(Debug, Clone)]
+#[derive(Debug, Clone, Serialize, Deserialize)]
 pub struct WalkRules {
-    /// The first screen.
-    pub opening: Vec<SignId>,
-    /// The second, when any line of the first is so.
-    pub alarm: Vec<SignId>,
+    /// The signs that are asked for before anything else.
+    pub vital: Vec<SignId>,
+    /// So many things a simulated attendant tells without being asked.
+    pub told: usize,
     /// Minutes that a question takes besides its effort.
     pub asking: f64,
     /// Probability from which the leading cause stands out.
@@ -387,7 +403,7 @@ pub struct WalkRules {
 }
 
 /// The whole rule base.
-#[derive(Debug, Clone)]
+#[derive(Debug, Clone, Serialize, Deserialize)]
 pub struct Knowledge {
     /// Readings, signs and events.
     pub vocabulary: Vocabulary,
@@ -409,6 +425,8 @@ pub struct Knowledge {
     pub rounds: Vec<Round>,
     /// Filter media.
     pub media: Vec<Media>,
+    /// Families of causes.
+    pub families: Vec<Family>,
     /// Publications.
     pub references: Vec<Reference>,
     /// Priors and thresholds.
@@ -435,6 +453,12 @@ impl Knowledge {
     /// The step with this id.
     pub fn step(&self, id: &str) -> Option<StepId> {
         position(&self.steps, |s| s.id == id).map(StepId)
+    }
+
+    /// Wetted square meters in a cubic meter of a kind of media.
+    pub fn media_m2_per_m3(&self, kind: &str) -> Option<f64> {
+        let media = self.media.iter().find(|m| m.id == kind)?;
+        Some(media.area_m2_per_l * 1000.0)
     }
 
     /// The causes of a family.

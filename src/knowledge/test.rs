@@ -1,10 +1,11 @@
 //! The rule language: what a test may ask of the history of a farm. See `knowledge/README.md` for its TOML form.
 
 use super::{CauseId, FindingId};
+use serde::{Deserialize, Serialize};
 use crate::vocabulary::{EventId, ReadingId, SignId};
 
 /// Which of a species' limits.
-#[derive(Debug, Clone, Copy, PartialEq, Eq, Hash)]
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Hash, Serialize, Deserialize)]
 pub enum LimitLevel {
     /// Long-term fine on this side of it.
     Comfort,
@@ -15,7 +16,7 @@ pub enum LimitLevel {
 }
 
 /// The low or the high end of a band.
-#[derive(Debug, Clone, Copy, PartialEq, Eq, Hash)]
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Hash, Serialize, Deserialize)]
 pub enum Side {
     /// The low end.
     Low,
@@ -24,7 +25,7 @@ pub enum Side {
 }
 
 /// A named number that a site's species or targets give.
-#[derive(Debug, Clone, Copy, PartialEq, Eq, Hash)]
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Hash, Serialize, Deserialize)]
 pub enum Limit {
     /// A species' limit; only species files and house rules set it.
     Species(ReadingId, LimitLevel, Side),
@@ -33,7 +34,7 @@ pub enum Limit {
 }
 
 /// A number, or a name that is resolved when the rule base is compiled for a site.
-#[derive(Debug, Clone, Copy, PartialEq)]
+#[derive(Debug, Clone, Copy, PartialEq, Serialize, Deserialize)]
 pub enum Bound {
     /// A number in the unit of the reading.
     Number(f64),
@@ -42,7 +43,7 @@ pub enum Bound {
 }
 
 /// Where the degree is 0 and where it is 1; with no `full` the ramp is as wide as the reading's resolution, centered.
-#[derive(Debug, Clone, Copy, PartialEq)]
+#[derive(Debug, Clone, Copy, PartialEq, Serialize, Deserialize)]
 pub struct Ramp {
     /// Degree 0 here (or the middle of the ramp when `full` is absent).
     pub start: Bound,
@@ -51,7 +52,7 @@ pub struct Ramp {
 }
 
 /// Which value of a reading a level test looks at. Windows are in seconds.
-#[derive(Debug, Clone, Copy, PartialEq, Eq)]
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Serialize, Deserialize)]
 pub enum Over {
     /// The present one.
     Now,
@@ -64,7 +65,7 @@ pub enum Over {
 }
 
 /// Kinds of change.
-#[derive(Debug, Clone, Copy, PartialEq, Eq)]
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Serialize, Deserialize)]
 pub enum Change {
     /// Went up.
     Rose,
@@ -77,7 +78,7 @@ pub enum Change {
 }
 
 /// What a site test asks.
-#[derive(Debug, Clone, PartialEq)]
+#[derive(Debug, Clone, PartialEq, Serialize, Deserialize)]
 pub enum SiteTest {
     /// A flag is so.
     Is(bool),
@@ -92,7 +93,7 @@ pub enum SiteTest {
 }
 
 /// One test. Its truth is an interval of degrees between 0 and 1.
-#[derive(Debug, Clone, PartialEq)]
+#[derive(Debug, Clone, PartialEq, Serialize, Deserialize)]
 pub enum Test {
     /// A value against bounds.
     Level {

@@ -53,7 +53,16 @@ impl Words<'_> {
     }
 
     fn is_event(&self, clause: &str) -> bool {
-        self.knowledge.vocabulary.events.iter().any(|e| e.name == clause)
+        self.knowledge
+            .vocabulary
+            .events
+            .iter()
+            .any(|e| e.name == clause)
+    }
+
+    /// A time as the site's clocks show it.
+    pub fn time(&self, time: i64) -> String {
+        when::short(time, &self.site.timezone)
     }
 
     /// What was seen of a reading; `beside` is the clause it stands behind, which need not be said again.
@@ -62,18 +71,43 @@ impl Words<'_> {
         let system = self.site.units;
         let (what, place) = match saw {
             Saw::Nothing => return None,
-            Saw::Value { value, time, place, below } => {
+            Saw::Value {
+                value,
+                time,
+                place,
+                below,
+            } => {
                 let shown = if *below { value * 2.0 } else { *value };
                 let sign = if *below { "<" } else { "" };
                 let age = self.moment.saturating_sub(*time);
-                let when = if age > FRESH { format!(", {} ago", span(age)) } else { String::new() };
-                (format!("{sign}{}{when}", units::amount(reading, shown, system)), *place)
+                let when = if age > FRESH {
+                    format!(", {} ago", span(age))
+                } else {
+                    String::new()
+                };
+                (
+                    format!("{sign}{}{when}", units::amount(reading, shown, system)),
+                    *place,
+                )
             }
-            Saw::Moved { early, late, span: over, place } => (
-                format!("from {} in {}", units::from_to(reading, *early, *late, system), span(*over)),
+            Saw::Moved {
+                early,
+                late,
+                span: over,
+                place,
+            } => (
+                format!(
+                    "from about {} in {}",
+                    units::from_to(reading, *early, *late, system),
+                    span(*over)
+                ),
                 *place,
             ),
-            Saw::Against { value, usual, place } => (
+            Saw::Against {
+                value,
+                usual,
+                place,
+            } => (
                 format!(
                     "{}, usually {}",
                     units::amount(reading, *value, system),
@@ -83,7 +117,11 @@ impl Words<'_> {
             ),
             Saw::At(time) => (when::short(*time, &self.site.timezone), 0),
         };
-        let named = if beside.contains(&reading.name) { String::new() } else { format!("{} ", reading.name) };
+        let named = if beside.contains(&reading.name) {
+            String::new()
+        } else {
+            format!("{} ", reading.name)
+        };
         let place = place
             .checked_sub(1)
             .filter(|_| reading.local)

@@ -4,7 +4,8 @@ use std::fmt::Write as _;
 
 use console::Style;
 
-use crate::fault::{Fault, shown};
+use super::safe::safe;
+use crate::fault::Fault;
 
 /// All faults of one run; empty for none.
 pub fn faults(faults: &[Fault], color: bool) -> String {
@@ -20,10 +21,22 @@ fn one(text: &mut String, fault: &Fault, color: bool) {
     let red = style(Style::new().red().bold());
     let blue = style(Style::new().blue());
     // Writing into a string can't fail.
-    let _ = writeln!(text, "{}: {} [{}]", red.apply_to("error"), fault.reason, fault.code);
+    let _ = writeln!(
+        text,
+        "{}: {} [{}]",
+        red.apply_to("error"),
+        safe(&fault.reason),
+        fault.code
+    );
     if let Some(place) = &fault.place {
-        let file = shown(&place.file);
-        let _ = writeln!(text, "  {} {file}:{}:{}", blue.apply_to("at"), place.line, place.column);
+        let file = safe(&place.file);
+        let _ = writeln!(
+            text,
+            "  {} {file}:{}:{}",
+            blue.apply_to("at"),
+            place.line,
+            place.column
+        );
         let (line, from, width) = window(&place.excerpt, place.column, place.width);
         if !line.is_empty() {
             let number = place.line.to_string();
@@ -31,10 +44,15 @@ fn one(text: &mut String, fault: &Fault, color: bool) {
             let bar = blue.apply_to("|");
             let _ = writeln!(text, "  {} {bar} {line}", blue.apply_to(&number));
             let carets = "^".repeat(width);
-            let _ = writeln!(text, "  {pad} {bar} {}{}", " ".repeat(from), red.apply_to(carets));
+            let _ = writeln!(
+                text,
+                "  {pad} {bar} {}{}",
+                " ".repeat(from),
+                red.apply_to(carets)
+            );
         }
     }
-    let _ = writeln!(text, "  {} {}", blue.apply_to("so"), fault.cure);
+    let _ = writeln!(text, "  {} {}", blue.apply_to("fix:"), safe(&fault.cure));
 }
 
 /// Characters of a line that are shown around what is meant.
@@ -43,8 +61,16 @@ const SHOWN: usize = 76;
 /// The part of a line around what is meant, safe for a terminal, with how far in and how wide that is there.
 fn window(line: &str, column: usize, width: usize) -> (String, usize, usize) {
     let at = column.saturating_sub(1);
-    let skip = if at + width > SHOWN { at.saturating_sub(SHOWN / 3) } else { 0 };
-    let mut out = if skip > 0 { "…".to_owned() } else { String::new() };
+    let skip = if at + width > SHOWN {
+        at.saturating_sub(SHOWN / 3)
+    } else {
+        0
+    };
+    let mut out = if skip > 0 {
+        "…".to_owned()
+    } else {
+        String::new()
+    };
     let mut from = out.chars().count() + at.saturating_sub(skip);
     let mut end = out.chars().count();
     for c in line.chars().skip(skip).take(SHOWN) {

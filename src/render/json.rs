@@ -44,7 +44,10 @@ pub fn value(report: &Report<'_>) -> Value {
         "first_aid": steps(&a.first_aid),
         "minutes_left": a.minutes_left,
         "causes": a.causes.iter().map(|c| cause(c, &words)).collect::<Vec<_>>(),
-        "leading_family": a.leading_family,
+        "leading_family": a.leading_family.as_ref().map(|f| json!({
+            "id": f.id, "name": f.name, "probability": rounded(f.probability, 4), "likely": f.likely,
+            "members": f.members, "first_steps": f.first_steps,
+        })),
         "best_question": a.best_question.as_ref().map(|(id, text)| json!({"id": id, "text": text})),
         "nothing_wrong": rounded(a.nothing_wrong, 4),
         "steps": steps(&a.steps),
@@ -56,6 +59,7 @@ pub fn value(report: &Report<'_>) -> Value {
         "projections": a.projections.iter().map(|p| json!({
             "limit": p.limit, "earliest": utc(p.earliest), "latest": p.latest.map(utc),
         })).collect::<Vec<_>>(),
+        "site_notes": a.site_notes,
         "overrides": a.overrides.iter().map(|o| json!({
             "id": o.id, "from": o.from, "to": o.to, "loosens": o.loosens,
         })).collect::<Vec<_>>(),
@@ -70,6 +74,7 @@ fn cause(cause: &CauseReport, words: &Words<'_>) -> Value {
         "name": cause.name,
         "family": cause.family,
         "probability": rounded(cause.probability, 4),
+        "likely": cause.likely,
         "urgency": cause.urgency.word(),
         "place": cause.place,
         "for": pieces(&cause.evidence_for, words),
@@ -125,6 +130,7 @@ fn log(log: &Log) -> Value {
         "rows_read": log.rows_read,
         "rows_used": log.rows_used,
         "rows_refused": log.rows_refused,
+        "rows_corrected": log.corrected.len(),
         "problem_count": log.problem_count,
         "problems": problems.collect::<Vec<_>>(),
     })
@@ -133,13 +139,14 @@ fn log(log: &Log) -> Value {
 /// A number with so many decimals.
 fn rounded(number: f64, decimals: i32) -> Value {
     let scale = 10_f64.powi(decimals);
-    json!((number * scale).round() / scale)
+    // Adding zero makes a negative zero an ordinary one.
+    json!((number * scale).round() / scale + 0.0)
 }
 
 /// A number with four figures.
 fn figures(number: f64) -> Value {
-    if number == 0.0 || !number.is_finite() {
-        return json!(number);
+    if number == 0.0 {
+        return json!(0.0);
     }
     let text = format!("{number:.3e}");
     text.parse::<f64>().map_or(Value::Null, |n| json!(n))

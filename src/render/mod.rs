@@ -1,15 +1,27 @@
 //! The `render` room: text and JSON of the values of [`crate::assessment`] and of faults. It computes nothing.
 
-pub mod json;
+mod block;
 mod evidence;
 mod fault;
+pub mod json;
+pub mod listing;
 mod look;
+mod markdown;
+mod page;
 mod replay;
 mod report;
+mod safe;
+mod text;
 mod units;
 mod when;
+pub mod why;
+
+pub use block::Block;
 
 pub use fault::faults;
 pub use look::Look;
+pub use markdown::markdown;
+pub use page::diagnosis;
 pub use replay::line as replay_line;
 pub use report::Report;
+pub use text::text;

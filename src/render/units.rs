@@ -18,6 +18,13 @@ pub fn from_to(reading: &Reading, from: f64, to: f64, system: Units) -> String {
     with_unit(&format!("{from} to {}", number_of(reading, to)), unit)
 }
 
+/// A difference of a reading with its unit: half a degree is half a degree, not a temperature.
+pub fn difference(reading: &Reading, by: f64, system: Units) -> String {
+    let (from, _) = converted(reading, 0.0, system);
+    let (to, unit) = converted(reading, by, system);
+    with_unit(&number_of(reading, to - from), unit)
+}
+
 fn converted(reading: &Reading, value: f64, system: Units) -> (f64, &str) {
     if system == Units::Us
         && let Some(unit) = units::us(&reading.id)
@@ -25,24 +32,40 @@ fn converted(reading: &Reading, value: f64, system: Units) -> (f64, &str) {
     {
         return (value, unit);
     }
+    if reading.unit == "share" {
+        return (value * 100.0, "%");
+    }
     (value, &reading.unit)
 }
 
 /// As many decimals as the reading has; a small number that would round to nothing keeps two figures.
 fn number_of(reading: &Reading, value: f64) -> String {
-    let text = format!("{value:.*}", reading.decimals);
-    let nothing = text.trim_start_matches('-').chars().all(|c| matches!(c, '0' | '.'));
+    let decimals = if reading.unit == "share" {
+        0
+    } else {
+        reading.decimals
+    };
+    let text = format!("{value:.decimals$}");
+    let nothing = text
+        .trim_start_matches('-')
+        .chars()
+        .all(|c| matches!(c, '0' | '.'));
     if nothing && value != 0.0 {
         #[allow(clippy::cast_possible_truncation, clippy::cast_sign_loss)] // clamped
         let decimals = (1.0 - value.abs().log10().floor()).clamp(0.0, 9.0) as usize;
         return format!("{value:.decimals$}");
     }
-    if nothing { text.trim_start_matches('-').to_owned() } else { text }
+    if nothing {
+        text.trim_start_matches('-').to_owned()
+    } else {
+        text
+    }
 }
 
 fn with_unit(number: &str, unit: &str) -> String {
     match unit {
-        "" | "pH" | "count" => number.to_owned(),
+        "" | "pH" | "count" | "ratio" | "degree" => number.to_owned(),
+        "%" | "%/day" => format!("{number}{unit}"),
         unit => format!("{number} {unit}"),
     }
 }

@@ -28,6 +28,11 @@ pub struct Area {
 const DISAGREE: f64 = 1.5;
 
 impl Site {
+    /// The length of the longest shift, in seconds; `None` when there are none.
+    pub fn longest_shift(&self) -> Option<i64> {
+        self.shift.iter().map(super::Shift::length).max()
+    }
+
     /// The biofilter's area: the stated one, else the sum over the media volumes. `specific` gives the square meters
     /// of one kind in a cubic meter of media. `None` when neither is known, or when a kind is not in the table (a sum
     /// with a part missing would be too small).

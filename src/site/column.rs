@@ -9,6 +9,9 @@ use crate::water::units::{self, Unit, UnitKind};
 /// The columns that hold no reading.
 pub const FREE: [&str; 7] = ["time", "place", "by", "corrects", "sign", "event", "note"];
 
+/// The cure when no known name is near.
+pub const NO_NEAR: &str = "give it the id of a reading such as `ph`, or take it out";
+
 /// What a column holds.
 #[derive(Debug, Clone, PartialEq)]
 pub enum Meaning {
@@ -143,11 +146,7 @@ fn unknown(written: &str, id: &str, vocabulary: &Vocabulary) -> NotAColumn {
     };
     let cure = match kind {
         Some(kind) => format!("`{id}` is one of the words for the `{kind}` column"),
-        None => did_you_mean(
-            id,
-            known,
-            "give it a known name, or name it under `[columns]` in the site file",
-        ),
+        None => did_you_mean(id, known, NO_NEAR),
     };
     NotAColumn {
         code: "unknown-column",
@@ -165,16 +164,17 @@ fn in_unit(
     let kept = &vocabulary[reading].unit;
     let takes = units::units_of(id);
     let found: Option<&Unit> = match unit {
-        // A bare heading is in the kept unit; the table says what that takes for granted.
-        None => takes.iter().find(|u| u.assumes.is_some()).or(takes.first()),
+        None => takes.first(),
         Some(written) => units::find(takes, written),
     };
     if let Some(found) = found {
+        // A bare heading is in the kept unit; the table says what that takes for granted.
+        let bare = || takes.iter().find_map(|u| u.assumes);
         return Ok(ReadingColumn {
             reading,
             unit: found.name.to_owned(),
             kind: found.kind,
-            assumes: found.assumes,
+            assumes: unit.map_or_else(bare, |_| found.assumes),
         });
     }
     // A reading that only this farm's rule base knows has the one unit it is kept in.

@@ -44,7 +44,7 @@ pub struct Site {
     pub crops: Vec<Crop>,
     /// The day the system was first fed.
     pub started: Option<Date>,
-    /// Meters above the sea, -450 to 6000.
+    /// Meters above the sea, -500 to 5400.
     pub elevation_m: Option<f64>,
     /// Liters of all the water that circulates, above 0.
     pub volume_l: Option<f64>,
@@ -89,7 +89,7 @@ impl Default for Site {
             log: None,
             incidents: None,
             timezone: TimeZone::UTC,
-            units: Units::default(),
+            units: Units::Metric,
             species: Vec::new(),
             crops: Vec::new(),
             started: None,

@@ -41,12 +41,6 @@ words! {
     }
 }
 
-impl Default for Units {
-    fn default() -> Self {
-        Self::Metric
-    }
-}
-
 words! {
     /// A kind of crop.
     Crop {
@@ -154,6 +148,20 @@ impl Shift {
     /// Whether it ends on the day after it began. The same start and end is a whole day.
     pub fn crosses_midnight(&self) -> bool {
         self.end <= self.start
+    }
+
+    /// How long it is, in seconds.
+    pub fn length(&self) -> i64 {
+        const DAY: i64 = 86_400;
+        let second = |t: Time| {
+            i64::from(t.hour()) * 3600 + i64::from(t.minute()) * 60 + i64::from(t.second())
+        };
+        let between = second(self.end) - second(self.start);
+        if self.crosses_midnight() {
+            between + DAY
+        } else {
+            between
+        }
     }
 
     /// Whether a time of day is in the shift: from its start, up to but not at its end.

@@ -14,6 +14,7 @@ use super::{Crop, Site, Units};
 use crate::decode::{self, Section};
 use crate::fault::{Fault, Source, did_you_mean, shown};
 use crate::vocabulary::Vocabulary;
+use crate::water::oxygen::ELEVATION;
 
 /// The words that a site file may use, as the rule base has them.
 #[derive(Debug, Clone, Copy)]
@@ -38,11 +39,11 @@ fn walk(root: &mut Section<'_>, known: &Known<'_>) -> Site {
         log: inside(root, "log"),
         incidents: inside(root, "incidents"),
         timezone: timezone(root).unwrap_or(TimeZone::UTC),
-        units: texts::one_of(root, "units", Units::WORDS, Units::of).unwrap_or_default(),
+        units: texts::one_of(root, "units", Units::WORDS, Units::of).unwrap_or(Units::Metric),
         species: lists::known(root, "species", known.species),
         crops: lists::each_of(root, "crops", Crop::WORDS, Crop::of),
         started: started(root),
-        elevation_m: numbers::within(root, "elevation_m", -450.0, 6000.0),
+        elevation_m: numbers::within(root, "elevation_m", ELEVATION.low, ELEVATION.high),
         volume_l: numbers::above_zero(root, "volume_l"),
         biomass_kg: numbers::not_negative(root, "biomass_kg"),
         feed_kg_per_day: numbers::not_negative(root, "feed_kg_per_day"),

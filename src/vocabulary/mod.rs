@@ -2,21 +2,22 @@
 //! `events.toml`); this room gives them numbers and looks them up.
 
 use std::collections::HashMap;
+use serde::{Deserialize, Serialize};
 
 /// Index of a reading in [`Vocabulary::readings`].
-#[derive(Debug, Clone, Copy, PartialEq, Eq, Hash, PartialOrd, Ord)]
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Hash, PartialOrd, Ord, Serialize, Deserialize)]
 pub struct ReadingId(pub u16);
 
 /// Index of a sign in [`Vocabulary::signs`].
-#[derive(Debug, Clone, Copy, PartialEq, Eq, Hash, PartialOrd, Ord)]
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Hash, PartialOrd, Ord, Serialize, Deserialize)]
 pub struct SignId(pub u16);
 
 /// Index of an event in [`Vocabulary::events`].
-#[derive(Debug, Clone, Copy, PartialEq, Eq, Hash, PartialOrd, Ord)]
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Hash, PartialOrd, Ord, Serialize, Deserialize)]
 pub struct EventId(pub u16);
 
 /// How a thing is asked for at the tank.
-#[derive(Debug, Clone, Default)]
+#[derive(Debug, Clone, Default, Serialize, Deserialize)]
 pub struct Question {
     /// The question in plain words, with what to look for and where.
     pub text: String,
@@ -27,7 +28,7 @@ pub struct Question {
 }
 
 /// A number that a person or a probe gives, or that is computed from such.
-#[derive(Debug, Clone)]
+#[derive(Debug, Clone, Serialize, Deserialize)]
 pub struct Reading {
     /// Contract id, such as `total-ammonia`.
     pub id: String,
@@ -60,7 +61,7 @@ pub struct Reading {
 }
 
 /// A thing a person sees or not.
-#[derive(Debug, Clone)]
+#[derive(Debug, Clone, Serialize, Deserialize)]
 pub struct Sign {
     /// Contract id, such as `brown-gills`.
     pub id: String,
@@ -83,7 +84,7 @@ pub struct Sign {
 }
 
 /// A thing that happened.
-#[derive(Debug, Clone)]
+#[derive(Debug, Clone, Serialize, Deserialize)]
 pub struct Event {
     /// Contract id, such as `filter-cleaned`.
     pub id: String,
@@ -98,7 +99,7 @@ pub struct Event {
 }
 
 /// All the words, with their numbers.
-#[derive(Debug, Clone, Default)]
+#[derive(Debug, Clone, Default, Serialize, Deserialize)]
 pub struct Vocabulary {
     /// Readings, measured and derived.
     pub readings: Vec<Reading>,

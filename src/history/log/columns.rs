@@ -37,6 +37,8 @@ pub(super) struct Measure {
     /// The unit of the column.
     pub unit: String,
     pub kind: UnitKind,
+    /// The unit that the reading is kept in.
+    pub kept: String,
     /// `as N`, where the column doesn't say.
     pub assumes: Option<&'static str>,
     /// In the kept unit.
@@ -78,6 +80,7 @@ impl Column {
                     reading: found.reading,
                     unit: found.unit,
                     kind: found.kind,
+                    kept: reading.unit.clone(),
                     assumes: found.assumes,
                     plausible: reading.plausible,
                     // Only a temperature and a voltage have a zero that is not "none".

@@ -147,56 +147,44 @@ impl Draft {
             return;
         }
         let value = Value { amount, ..value };
-        if let Some(trouble) = self.settle(reading, value, measure, text) {
-            self.troubles.push((trouble, Effect::KeptAsOdd));
-        }
-    }
-
-    /// Files a value in the kept unit as water, or as a fact about the instrument (and says so).
-    pub fn settle(
-        &mut self,
-        reading: ReadingId,
-        value: Value,
-        measure: &Measure,
-        text: &dyn Display,
-    ) -> Option<Trouble> {
         let (low, high) = measure.plausible;
-        if value.amount >= low && value.amount <= high {
+        if amount >= low && amount <= high {
             self.row.values.push((reading, value));
-            return None;
+            return;
         }
-        self.row.odd.push((reading, value.amount));
-        Some(Trouble::new(
+        self.row.odd.push((reading, amount));
+        let trouble = Trouble::new(
             "implausible",
             format!(
-                "`{}` is outside of what water shows ({low} to {high} in the kept unit); it is kept as a fact about the instrument",
-                shown(&text.to_string())
+                "`{}` is outside of what water shows ({low} to {high} {}); it is kept as a fact about the instrument",
+                shown(&text.to_string()),
+                measure.kept
             ),
             "check the instrument, the decimal point, and the unit of the column",
-        ))
+        );
+        self.troubles.push((trouble, Effect::KeptAsOdd));
     }
 
-    /// The last look, when all cells are in: a row needs a time, and corrects only what was before it.
-    pub fn complete(&mut self) {
+    /// The last look, when all cells are in: a row needs a time, and corrects only what was before it. Gives the column
+    /// and what is wrong.
+    pub fn lacks(&self) -> Option<(&'static str, Trouble)> {
         let Some(moment) = self.moment else {
-            if self.troubles.is_empty() {
-                self.refuse(Trouble::new(
-                    "no-time",
-                    "the row has no time",
-                    "write when it was, such as `2026-03-02 07:30`",
-                ));
-            }
-            return;
+            let trouble = Trouble::new(
+                "no-time",
+                "the row has no time",
+                "write when it was, such as `2026-03-02 07:30`",
+            );
+            return Some(("time", trouble));
         };
-        if let Some(corrected) = self.row.corrects
-            && corrected >= moment.not_before(Some(corrected))
-        {
-            self.refuse(Trouble::new(
+        let corrected = self.row.corrects?;
+        (corrected >= moment.not_before(Some(corrected))).then(|| {
+            let trouble = Trouble::new(
                 "corrects-later",
                 "a row can only correct an earlier one",
                 "write the time of the wrong row in `corrects`, and when it was corrected in `time`",
-            ));
-        }
+            );
+            ("corrects", trouble)
+        })
     }
 }
 

@@ -2,7 +2,7 @@
 
 use std::io;
 
-use super::columns::Column;
+use super::columns::{Column, Holds};
 use super::desk::{Desk, Spot};
 use super::draft::{Draft, Means};
 use super::head;
@@ -16,6 +16,7 @@ use super::problem::{Effect, Trouble};
 use super::records::{Record, Records};
 use super::table::{Table, Written};
 use crate::fault::{Fault, plain_io};
+use crate::vocabulary::ReadingId;
 
 enum Form {
     Table(Table),
@@ -39,7 +40,7 @@ impl Feed {
     /// Opens a log and reads its head.
     pub fn open(file: u16, input: Input, desk: &mut Desk<'_>) -> Result<Self, Vec<Fault>> {
         let name = input.name();
-        let mut records = Records::new(Lines::new(input.open().map_err(|f| vec![f])?));
+        let mut records = Records::new(Lines::new(input.open().map_err(|f| vec![*f])?));
         let (form, columns) = Self::head(file, &name, &mut records, desk)?;
         let comma_allowed = matches!(&form, Form::Table(table) if table.separator != b',');
         Ok(Self {
@@ -66,7 +67,7 @@ impl Feed {
     ) -> Result<(Form, Vec<Column>), Vec<Fault>> {
         let at_line =
             |line, text: &str, at, trouble| vec![head::fault(name, line, text, at, 1, trouble)];
-        let unreadable = |e: io::Error| vec![read_failed(name, &e)];
+        let unreadable = |e: io::Error| vec![*read_failed(name, &e)];
         let separator = match records.next().map_err(unreadable)? {
             Record::End => {
                 let trouble = Trouble::new(
@@ -111,13 +112,20 @@ impl Feed {
         self.columns.get(index)
     }
 
+    /// The name of the column that has a reading.
+    pub fn name_of(&self, reading: ReadingId) -> Option<&str> {
+        let mut columns = self.columns.iter();
+        let found = columns.find(|c| matches!(&c.holds, Holds::Reading(m) if m.reading == reading));
+        found.map(|c| c.name.as_str())
+    }
+
     /// Takes a row back for its buffers.
     pub fn done_with(&mut self, draft: Draft) {
         self.order.done_with(draft);
     }
 
     /// The next row, later than or as late as the one before; `None` at the end.
-    pub fn next(&mut self, desk: &mut Desk<'_>) -> Result<Option<Draft>, Fault> {
+    pub fn next(&mut self, desk: &mut Desk<'_>) -> Result<Option<Draft>, Box<Fault>> {
         loop {
             if let Some(draft) = self.order.pop() {
                 return Ok(Some(draft));
@@ -129,7 +137,7 @@ impl Feed {
         }
     }
 
-    fn read_one(&mut self, desk: &mut Desk<'_>) -> Result<(), Fault> {
+    fn read_one(&mut self, desk: &mut Desk<'_>) -> Result<(), Box<Fault>> {
         let record = match self.records.next() {
             Ok(record) => record,
             Err(error) => {
@@ -176,17 +184,14 @@ impl Feed {
                 objects.row(written, &mut self.columns, &mut draft, &mut means)
             }
         };
-        if good {
-            draft.complete();
+        if good && let Some((column, trouble)) = draft.lacks() {
+            good = false;
             let spot = Spot {
                 file: self.file,
                 line: written.line,
                 at: 1,
             };
-            for (trouble, effect) in draft.troubles.drain(..) {
-                good = false;
-                desk.tell(spot, Some("time"), trouble, effect);
-            }
+            desk.tell(spot, Some(column), trouble, Effect::RowRefused);
         }
         match draft.moment {
             Some(moment) if good => {
@@ -229,10 +234,10 @@ fn nothing_in(text: &str, separator: u8) -> bool {
         .all(|b| b == separator || b.is_ascii_whitespace())
 }
 
-fn read_failed(name: &str, error: &io::Error) -> Fault {
-    Fault::whole(
+fn read_failed(name: &str, error: &io::Error) -> Box<Fault> {
+    Box::new(Fault::whole(
         "read-failed",
         format!("`{name}` can't be read further: {}", plain_io(error)),
         "check the disk or the connection, and try again",
-    )
+    ))
 }

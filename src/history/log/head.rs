@@ -7,14 +7,19 @@ use super::problem::{Effect, Trouble};
 use super::records::{Quotes, characters};
 use super::table::Table;
 use crate::fault::{Fault, Place, shown};
-use crate::site::column::NotAColumn;
+use crate::site::column::{NO_NEAR, NotAColumn};
 
 impl From<NotAColumn> for Trouble {
     fn from(wrong: NotAColumn) -> Self {
+        let cure = if wrong.cure == NO_NEAR {
+            format!("{NO_NEAR}, or say what it is under `[columns]` in the site file")
+        } else {
+            wrong.cure
+        };
         Self {
             code: wrong.code,
             reason: wrong.reason,
-            cure: wrong.cure,
+            cure,
         }
     }
 }
@@ -82,6 +87,15 @@ pub(super) fn columns(
     let mut wrong = |at: usize, width: usize, trouble: Trouble| {
         faults.push(fault(&name_of_file, line, text, at, width, trouble));
     };
+    if text.contains('\r') {
+        let trouble = Trouble::new(
+            "bare-carriage-returns",
+            "the lines of the file end in bare carriage returns",
+            "save the file with ordinary line ends",
+        );
+        wrong(1, 1, trouble);
+        return Err(faults);
+    }
     if names.len() > limits::COLUMNS {
         let reason = format!(
             "the head has {} columns, more than {}",
@@ -159,18 +173,11 @@ pub(super) fn columns(
         }
     }
     if !columns.iter().any(|c| matches!(c.holds, Holds::Time)) {
-        let mut trouble = Trouble::new(
+        let trouble = Trouble::new(
             "no-time-column",
             "the first line names no `time` column",
             "begin the file with a head such as `time,temperature,ph`",
         );
-        if text.contains('\r') {
-            trouble = Trouble::new(
-                "bare-carriage-returns",
-                "the lines of the file end in bare carriage returns",
-                "save the file with ordinary line ends",
-            );
-        }
         wrong(1, 1, trouble);
     }
     if faults.is_empty() {

@@ -58,7 +58,7 @@ impl Input {
         }
     }
 
-    pub(super) fn open(self) -> Result<Box<dyn BufRead>, Fault> {
+    pub(super) fn open(self) -> Result<Box<dyn BufRead>, Box<Fault>> {
         let path = match self {
             Self::Path(path) => path,
             Self::Stdin => return Ok(Box::new(BufReader::with_capacity(CHUNK, std::io::stdin()))),
@@ -67,28 +67,29 @@ impl Input {
         };
         let name = path.display();
         let about = std::fs::metadata(&path).map_err(|e| {
-            Fault::whole(
-                "unreadable",
+            unreadable(
                 format!("the log `{name}` can't be opened: {}", plain_io(&e)),
                 "check the path",
             )
         })?;
         if about.is_dir() {
-            return Err(Fault::whole(
-                "unreadable",
+            return Err(unreadable(
                 format!("`{name}` is a folder, not a log"),
                 "name the file inside it, such as `log.csv`",
             ));
         }
         let file = File::open(&path).map_err(|e| {
-            Fault::whole(
-                "unreadable",
+            unreadable(
                 format!("the log `{name}` can't be opened: {}", plain_io(&e)),
                 "check that the file may be read",
             )
         })?;
         Ok(Box::new(BufReader::with_capacity(CHUNK, file)))
     }
+}
+
+fn unreadable(reason: String, cure: &str) -> Box<Fault> {
+    Box::new(Fault::whole("unreadable", reason, cure))
 }
 
 impl fmt::Debug for Input {

@@ -83,16 +83,14 @@ impl Objects {
         false
     }
 
-    fn key(
+    /// What a key that was not met before means, told once.
+    fn learn(
         &mut self,
         name: &str,
         columns: &mut Vec<Column>,
         means: &mut Means<'_, '_>,
         spot: Spot,
     ) -> Key {
-        if let Some(key) = self.keys.get(name) {
-            return key.clone();
-        }
         if self.keys.len() >= limits::COLUMNS {
             return Key::Refused(Trouble::new(
                 "too-many-columns",
@@ -177,8 +175,14 @@ impl Pairs<'_, '_, '_, '_> {
     }
 
     fn pair(&mut self, key: &str, item: Item<'_>) {
-        let spot = self.spot(key);
-        let index = match self.objects.key(key, self.columns, self.means, spot) {
+        let known = match self.objects.keys.get(key) {
+            Some(known) => known.clone(),
+            None => {
+                let spot = self.spot(key);
+                self.objects.learn(key, self.columns, self.means, spot)
+            }
+        };
+        let index = match known {
             Key::Column(index) => index,
             Key::Refused(trouble) => return self.tell(key, trouble, Effect::RowRefused),
         };

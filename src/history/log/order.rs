@@ -93,9 +93,9 @@ impl Order {
                 self.doubt.push(draft);
             }
             Some(doubt) if now > doubt => {
-                let ran_ahead = std::mem::take(&mut self.held);
-                for wrong in ran_ahead {
-                    self.refuse(wrong, ahead(&draft, desk), desk);
+                let reason = ahead(self.doubt.first().unwrap_or(&draft), desk);
+                for wrong in std::mem::take(&mut self.held) {
+                    self.refuse(wrong, reason.clone(), desk);
                 }
                 self.held = std::mem::take(&mut self.doubt);
                 self.release();
@@ -123,6 +123,9 @@ impl Order {
     }
 
     fn drop_doubt(&mut self, desk: &mut Desk<'_>) {
+        if self.doubt.is_empty() {
+            return;
+        }
         let reason = self.behind(desk);
         for draft in std::mem::take(&mut self.doubt) {
             self.refuse(draft, reason.clone(), desk);

@@ -1,7 +1,6 @@
 //! All logs of one call, merged by time, one row at a time: memory stays flat however long they are.
 
 use super::FileColumns;
-use super::columns::Holds;
 use super::desk::{Desk, Spot};
 use super::draft::Draft;
 use super::feed::Feed;
@@ -114,7 +113,7 @@ impl<'a> Stream<'a> {
     ///
     /// # Errors
     /// A log can't be read further (a broken disk, say).
-    pub fn next_row(&mut self, row: &mut Row) -> Result<bool, Fault> {
+    pub fn next_row(&mut self, row: &mut Row) -> Result<bool, Box<Fault>> {
         if !self.started {
             self.started = true;
             for index in 0..self.feeds.len() {
@@ -143,7 +142,7 @@ impl<'a> Stream<'a> {
     }
 
     /// Gets the next row of a feed; one that is later than `as_of` ends it.
-    fn advance(&mut self, index: usize) -> Result<(), Fault> {
+    fn advance(&mut self, index: usize) -> Result<(), Box<Fault>> {
         let Some(feed) = self.feeds.get_mut(index) else {
             return Ok(());
         };
@@ -155,42 +154,49 @@ impl<'a> Stream<'a> {
         Ok(())
     }
 
-    /// Turns percent of saturation into mg/L, now that the order of rows is settled.
+    /// Turns percent of saturation into mg/L, now that the order of rows is settled, and tells oxygen apart that no
+    /// water holds.
     fn settle(&mut self, index: usize, draft: &mut Draft) {
         self.saturation.see(&draft.row);
         let Some(feed) = self.feeds.get(index) else {
             return;
         };
+        let now = draft.row.time;
+        let spot = Spot {
+            file: draft.row.file,
+            line: draft.row.line,
+            at: 1,
+        };
         for percent in std::mem::take(&mut draft.percents) {
-            let Some(column) = feed.column(percent.column) else {
-                continue;
-            };
-            let Holds::Reading(measure) = &column.holds else {
-                continue;
-            };
-            let spot = Spot {
-                file: draft.row.file,
-                line: draft.row.line,
-                at: 1,
-            };
-            let trouble = match self
-                .saturation
-                .mg_per_l(percent.value.amount, draft.row.time)
-            {
-                Err(trouble) => Some((trouble, Effect::CellSkipped)),
+            match self.saturation.mg_per_l(percent.value.amount, now) {
                 Ok(amount) => {
-                    let value = Value {
-                        amount,
-                        ..percent.value
-                    };
-                    let text = format!("{} %", percent.value.amount);
-                    let odd = draft.settle(percent.reading, value, measure, &text);
-                    odd.map(|trouble| (trouble, Effect::KeptAsOdd))
+                    let below = percent.value.below;
+                    draft
+                        .row
+                        .values
+                        .push((percent.reading, Value { amount, below }));
                 }
-            };
-            if let Some((trouble, effect)) = trouble {
-                self.desk.tell(spot, Some(&column.name), trouble, effect);
+                Err(trouble) => {
+                    let name = feed.column(percent.column).map(|c| c.name.as_str());
+                    self.desk.tell(spot, name, trouble, Effect::CellSkipped);
+                }
             }
+        }
+        let oxygen = self.saturation.oxygen();
+        let found = draft
+            .row
+            .values
+            .iter()
+            .position(|(id, _)| Some(*id) == oxygen);
+        let Some((at, value)) = found.and_then(|at| draft.row.values.get(at).map(|v| (at, v.1)))
+        else {
+            return;
+        };
+        if let Some(trouble) = self.saturation.too_much(value.amount, now) {
+            let (reading, value) = draft.row.values.remove(at);
+            draft.row.odd.push((reading, value.amount));
+            let name = feed.name_of(reading);
+            self.desk.tell(spot, name, trouble, Effect::KeptAsOdd);
         }
     }
 

@@ -66,29 +66,25 @@ pub fn read(
     let mut corrections = Corrections::default();
     loop {
         let mut row = Row::default();
-        if !stream.next_row(&mut row).map_err(|fault| vec![fault])? {
+        if !stream.next_row(&mut row).map_err(|fault| vec![*fault])? {
             break;
         }
-        match row.corrects {
-            None => log.rows.push(row),
-            Some(time) => {
-                let (place, line) = (row.place, row.line);
-                if let Err(row) = corrections.apply(time, row, &mut log) {
-                    let trouble = Trouble::new(
-                        "nothing-to-correct",
-                        format!(
-                            "no row at {} is there to be corrected by line {line}",
-                            stream.shown_time(time)
-                        ),
-                        match place {
-                            None => {
-                                "write the time of the wrong row, and its `place` if it has one"
-                            }
-                            Some(_) => "write the time and the `place` of the wrong row",
-                        },
-                    );
-                    stream.refuse_given(&row, trouble);
-                }
+        let Some(time) = row.corrects else {
+            log.rows.push(row);
+            continue;
+        };
+        match corrections.target(time, row.place, &log) {
+            Some(index) => corrections.apply(index, row, &mut log),
+            None => {
+                let trouble = Trouble::new(
+                    "nothing-to-correct",
+                    format!("there is no row at {} to correct", stream.shown_time(time)),
+                    match row.place {
+                        None => "write the time of the wrong row, and its `place` if it has one",
+                        Some(_) => "write the time and the `place` of the wrong row",
+                    },
+                );
+                stream.refuse_given(&row, trouble);
             }
         }
     }
@@ -126,23 +122,25 @@ struct Corrections {
 }
 
 impl Corrections {
-    /// Changes the row at that time and place, the latest such row if there are several.
-    fn apply(&mut self, time: i64, correction: Row, log: &mut Log) -> Result<(), Row> {
+    /// The row at that time and place, the latest such row if there are several; or the row that was corrected then.
+    fn target(&self, time: i64, place: Option<PlaceId>, log: &Log) -> Option<usize> {
         let end = log.rows.partition_point(|row| row.time <= time);
         let at_that_time = log.rows.iter().enumerate().take(end).rev();
         let direct = at_that_time
             .take_while(|(_, row)| row.time == time)
-            .find(|(_, row)| row.place == correction.place)
+            .find(|(_, row)| row.place == place)
             .map(|(index, _)| index);
         let through = || {
             let mut made = self.made.iter().rev();
-            made.find(|(at, place, _)| *at == time && *place == correction.place)
+            made.find(|(at, where_, _)| *at == time && *where_ == place)
                 .map(|(_, _, index)| *index)
         };
-        let target = direct.or_else(through);
-        let Some((index, row)) = target.and_then(|i| log.rows.get_mut(i).map(|row| (i, row)))
-        else {
-            return Err(correction);
+        direct.or_else(through)
+    }
+
+    fn apply(&mut self, index: usize, correction: Row, log: &mut Log) {
+        let Some(row) = log.rows.get_mut(index) else {
+            return;
         };
         log.corrected.push(Corrected {
             original: row.clone(),
@@ -153,7 +151,6 @@ impl Corrections {
         });
         self.made.push((correction.time, correction.place, index));
         replace(row, correction);
-        Ok(())
     }
 }
 

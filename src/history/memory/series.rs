@@ -22,6 +22,8 @@ pub struct Series {
     last_below: bool,
     same_since: i64,
     same_count: u32,
+    /// Values among the newest, each with how often it was read, by rising value.
+    levels: Vec<(f64, u16)>,
 }
 
 impl Default for Series {
@@ -34,6 +36,7 @@ impl Default for Series {
             last_below: false,
             same_since: i64::MIN,
             same_count: 0,
+            levels: Vec::new(),
         }
     }
 }
@@ -59,13 +62,57 @@ impl Series {
             }
         }
         if self.raw.len() == RAW_KEPT {
-            self.raw.pop_front();
+            if let Some((_, old)) = self.raw.pop_front() {
+                self.forget_level(old);
+            }
             self.forgot_raw = true;
         }
         self.raw.push_back((time, kept));
+        self.note_level(kept);
         self.hours.push(time, kept);
         self.days.push(time, kept);
         self.last_below = below;
+    }
+
+    fn note_level(&mut self, value: f64) {
+        match self.levels.binary_search_by(|l| l.0.total_cmp(&value)) {
+            Ok(at) => self.levels[at].1 = self.levels[at].1.saturating_add(1),
+            Err(at) => self.levels.insert(at, (value, 1)),
+        }
+    }
+
+    fn forget_level(&mut self, value: f64) {
+        if let Ok(at) = self.levels.binary_search_by(|l| l.0.total_cmp(&value)) {
+            self.levels[at].1 -= 1;
+            if self.levels[at].1 == 0 {
+                self.levels.remove(at);
+            }
+        }
+    }
+
+    /// The step in which this instrument reads about a value: the gap between neighboring values that were each read
+    /// several times. A color scale of 20, 40, 80 has steps of 40 at 80, and one step is no change. 0 when it shows none.
+    pub fn step(&self, about: f64) -> f64 {
+        /// A value read this often is a mark of the scale.
+        const MARK: u16 = 3;
+        let mut below = None;
+        let mut above = None;
+        for (value, _) in self.levels.iter().filter(|l| l.1 >= MARK) {
+            if *value > about {
+                above = Some(*value);
+                break;
+            }
+            if let Some((_, last)) = below {
+                below = Some((Some(last), *value));
+            } else {
+                below = Some((None, *value));
+            }
+        }
+        match (below, above) {
+            (Some((Some(lower), mark)), _) => mark - lower,
+            (Some((None, mark)), Some(above)) => above - mark,
+            _ => 0.0,
+        }
     }
 
     /// When the last value was read and what it was; a value under the detection limit counts as half of it.
@@ -165,6 +212,22 @@ impl Series {
         shift(&thinned(points))
     }
 
+    /// Whether the last value lies far outside what is usual here while the one before it did not; `None` where there is
+    /// no usual yet.
+    pub fn outlier(&self) -> Option<bool> {
+        /// Weeks make a usual; the last reading but one may be of yesterday.
+        const WINDOW: i64 = 35 * DAY;
+        const DAYS: usize = 6;
+        /// So many robust spreads away is far outside.
+        const FAR: f64 = 6.0;
+        let usual = self.usual(WINDOW, DAY / 2, DAYS)?;
+        let (last, before) = (self.last()?.1, self.before_last()?.1);
+        // A spread smaller than a twentieth of the level would make an outlier of ordinary wobble.
+        let spread = usual.spread.max(self.step(usual.middle)).max(0.05 * usual.middle.abs());
+        let far = |value: f64| (value - usual.middle).abs() > FAR * spread;
+        Some(far(last) && !far(before))
+    }
+
     /// What was usual in the `window` seconds that ended `recent` seconds before the last value; at least `days` days
     /// must tell.
     pub fn usual(&self, window: i64, recent: i64, days: usize) -> Option<Usual> {
@@ -226,6 +289,21 @@ mod tests {
             shift.is_some_and(|s| (s.change + 1.2).abs() < 1e-9),
             "{shift:?}"
         );
+    }
+
+    #[test]
+    fn a_color_scale_has_steps() {
+        let mut series = Series::default();
+        for (at, value) in [20.0, 40.0, 20.0, 40.0, 80.0, 20.0, 80.0, 40.0, 80.0]
+            .into_iter()
+            .enumerate()
+        {
+            series.push(i64::try_from(at).unwrap_or(0), value, false);
+        }
+        assert_eq!(series.step(80.0), 40.0);
+        assert_eq!(series.step(500.0), 40.0);
+        assert_eq!(series.step(30.0), 20.0);
+        assert_eq!(Series::default().step(1.0), 0.0);
     }
 
     #[test]

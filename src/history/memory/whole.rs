@@ -104,6 +104,7 @@ pub struct Memory {
     events: Vec<EventTrack>,
     keeps_events: bool,
     changes: Changes,
+    doubtful: Vec<bool>,
 }
 
 impl Memory {
@@ -118,6 +119,23 @@ impl Memory {
             events: vec![EventTrack::default(); vocabulary.events.len()],
             keeps_events: false,
             changes: Changes::default(),
+            doubtful: vec![false; vocabulary.readings.len()],
+        }
+    }
+
+    /// Whether the last value of a reading stands alone: far from what is usual here, not borne out by the value before
+    /// it, by any other reading of the time, or by anything seen. Such a value is to be read again before it is believed.
+    pub fn is_doubtful(&self, id: ReadingId) -> bool {
+        self.doubtful.get(usize::from(id.0)).copied().unwrap_or(false)
+    }
+
+    /// Marks a value computed from a doubtful one.
+    pub fn doubt(&mut self, id: ReadingId, doubtful: bool) {
+        if let Some(mark) = self.doubtful.get_mut(usize::from(id.0))
+            && *mark != doubtful
+        {
+            *mark = doubtful;
+            self.changes.readings.push(id);
         }
     }
 
@@ -174,6 +192,29 @@ impl Memory {
         }
         for event in &row.events {
             self.happened(*event, row.time);
+        }
+        self.doubt_lonely(row);
+    }
+
+    /// Looks for values of this row that stand alone.
+    fn doubt_lonely(&mut self, row: &Row) {
+        let seen_something = row.signs.iter().any(|(_, seen)| *seen) || !row.odd.is_empty();
+        let mut outliers: Vec<(ReadingId, bool)> = Vec::new();
+        for (id, _) in &row.values {
+            let index = usize::from(id.0);
+            let per_place = self.local.get(index).copied().unwrap_or(true);
+            let judged = (!per_place)
+                .then(|| self.readings.get(index)?.newest())
+                .flatten()
+                .and_then(Series::outlier);
+            match judged {
+                Some(outlier) => outliers.push((*id, outlier)),
+                None => self.doubt(*id, false),
+            }
+        }
+        let lonely = outliers.iter().filter(|(_, outlier)| *outlier).count() == 1 && !seen_something;
+        for (id, outlier) in outliers {
+            self.doubt(id, outlier && lonely);
         }
     }
 

@@ -8,8 +8,8 @@ use super::tests::test;
 use crate::decode::Section;
 use crate::fault::Fault;
 use crate::knowledge::{
-    Cause, CauseId, Caution, Finding, FindingId, Knowledge, Media, Reference, Round, Scales,
-    Species, Step, StepId, WalkRules,
+    Cause, CauseId, Caution, Family, Finding, FindingId, Knowledge, Media, Reference, Round,
+    Scales, Species, Step, StepId, WalkRules,
 };
 use crate::vocabulary::{ReadingId, Vocabulary};
 
@@ -25,6 +25,7 @@ pub(super) struct Made {
     pub rounds: Vec<Round>,
     pub media: Vec<Media>,
     pub references: Vec<Reference>,
+    pub families: Vec<Family>,
     pub scales: Option<Scales>,
     pub walk: Option<WalkRules>,
     digest: String,
@@ -42,6 +43,7 @@ pub(super) fn empty(digest: String) -> Made {
         rounds: Vec::new(),
         media: Vec::new(),
         references: Vec::new(),
+        families: Vec::new(),
         scales: None,
         walk: None,
         digest,
@@ -189,6 +191,7 @@ impl Made {
             rounds: self.rounds,
             media: self.media,
             references: self.references,
+            families: self.families,
             scales,
             walk,
             digest: self.digest,

@@ -1,12 +1,21 @@
-//! `scales.toml`: priors, thresholds of the verdict, words.
+//! `scales.toml`: priors, thresholds of the verdict, words, names of families.
 
-use super::entry::within;
+use super::entry::{id, place, within, words};
 use super::rest::Made;
 use crate::decode::Section;
-use crate::knowledge::Scales;
+use crate::knowledge::{Family, Scales};
 
-/// Reads the scales, if this is the file that holds them.
+/// Reads the scales and the names of families, if this is a file that holds them.
 pub(super) fn read(root: &mut Section<'_>, made: &mut Made) {
+    for mut section in root.sections("family") {
+        let id = id(&mut section, |id| made.families.iter().any(|f| f.id == id));
+        let name = words(&mut section, "name");
+        let place = place(&section);
+        section.finish();
+        if let (Some(id), Some(name)) = (id, name) {
+            made.families.push(Family { id, name, place });
+        }
+    }
     let Some(mut table) = root.section("scales") else {
         return;
     };
@@ -19,12 +28,14 @@ pub(super) fn read(root: &mut Section<'_>, made: &mut Made) {
             event_not_noted: number("event_not_noted", 0.0, 1.0)?,
             sign_not_noted: number("sign_not_noted", 0.0, 1.0)?,
             evidence: number("evidence", 0.1, 2.0)?,
+            least_background: number("least_background", 0.00001, 0.5)?,
             triggers: number("triggers", 1.0, 1e6)?,
             second_cause: number("second_cause", 0.0, 1.0)?,
             act_minutes: number("act_minutes", 0.001, 1.0)?,
             act_hours: number("act_hours", 0.001, 1.0)?,
             act_days: number("act_days", 0.001, 1.0)?,
             watch: number("watch", 0.001, 1.0)?,
+            watch_walk: number("watch_walk", 0.0001, 1.0)?,
             danger: number("danger", 0.01, 1.0)?,
             step_floor: number("step_floor", 0.0, 1.0)?,
             avoid_floor: number("avoid_floor", 0.0, 1.0)?,

@@ -11,15 +11,14 @@ pub(super) fn read(root: &mut Section<'_>, names: &Names, made: &mut Made) {
     let Some(mut table) = root.section("walk") else {
         return;
     };
-    let opening = signs(&mut table, "opening", names);
-    let alarm = signs(&mut table, "alarm", names);
+    let vital = signs(&mut table, "vital", names);
     let mut number =
         |key: &str, low: f64, high: f64| table.required(key).and_then(|n| within(&n, low, high));
     let rules = (|| {
         #[allow(clippy::cast_possible_truncation, clippy::cast_sign_loss)] // held within bounds
         Some(WalkRules {
-            opening,
-            alarm,
+            vital,
+            told: number("told", 0.0, 100.0)? as usize,
             asking: number("asking", 0.01, 60.0)?,
             stands_out: number("stands_out", 0.1, 1.0)?,
             least_bits: number("least_bits", 0.0, 10.0)?,
