@@ -7,10 +7,11 @@ use std::path::{Path, PathBuf};
 use gillside::assessment::Assessor;
 use gillside::engine::Engine;
 use gillside::fault::Source;
-use gillside::history::answers::{self, Answers};
+use gillside::history::answers;
 use gillside::knowledge::{self, Knowledge};
 use gillside::site::{self, Known, Site};
-use gillside::walk::{Answer, Ask, Given, Next, Stop, Walk};
+use gillside::diagnosis::Occasion;
+use gillside::walk::{Answer, Attendant, Next, Stage, Stop, Turn, Walk};
 
 fn rule_base() -> Knowledge {
     let mut k = knowledge::load(&knowledge::embedded(), &[]).unwrap_or_else(|f| panic!("{f:?}"));
@@ -28,8 +29,9 @@ fn rule_base() -> Knowledge {
     let mut lines = k.walk.lines as f64;
     set("LINES", &mut lines);
     k.walk.lines = lines as usize;
-    if let Ok(v) = std::env::var("OPENING") { k.walk.opening = v.split(',').filter_map(|i| k.vocabulary.sign(i)).collect(); }
-    if let Ok(v) = std::env::var("ALARM") { k.walk.alarm = v.split(',').filter_map(|i| k.vocabulary.sign(i)).collect(); }
+    let mut told = k.walk.told as f64;
+    set("TELLS", &mut told);
+    k.walk.told = told as usize;
     k
 }
 
@@ -77,16 +79,6 @@ fn read_site(knowledge: &Knowledge, folder: &Path) -> Site {
     site
 }
 
-/// What the attendant says.
-fn says(known: &Answers, ask: Ask) -> Answer {
-    match ask {
-        Ask::Reading(id) => known.readings.iter().find(|r| r.0 == id).map(|r| Answer::Number(r.1)),
-        Ask::Sign(id) => known.signs.iter().find(|r| r.0 == id).map(|r| Answer::Seen(r.1)),
-        Ask::Event(id) => known.events.iter().find(|r| r.0 == id).map(|r| Answer::Happened(r.1)),
-    }
-    .unwrap_or(Answer::Unknown)
-}
-
 struct Walked {
     asked: usize,
     led_after: Option<usize>,
@@ -106,7 +98,7 @@ fn walk(knowledge: &Knowledge, case: &Case) -> Walked {
     let text = std::fs::read_to_string(case.folder.join("answers.toml")).unwrap();
     let (known, _) = answers::read(&Source::new("answers.toml", text), &knowledge.vocabulary, &site.timezone);
     let now = known.time.unwrap_or(1_700_000_000);
-    let assessor = Assessor::new(knowledge, &site, knowledge.scales.incident_walk);
+    let assessor = Assessor::new(knowledge, &site, Occasion::Walk);
     let mut walk = Walk::new(assessor, Engine::new(knowledge, &site), now);
     let ok = |w: &Walk<'_>| {
         let first = &knowledge[w.review().ranking.order()[0]].id;
@@ -117,29 +109,7 @@ fn walk(knowledge: &Knowledge, case: &Case) -> Walked {
         let rank = order.iter().position(|c| case.truth.contains(&knowledge[*c].id)).unwrap_or(99);
         rank < 3 || (ok(w) && rank < 4)
     };
-    let tells: usize = std::env::var("TELLS").map_or(0, |t| t.parse().unwrap());
-    if tells > 0 {
-        use gillside::knowledge::{Bound, Limit, Side};
-        let v = &knowledge.vocabulary;
-        let limits = gillside::engine::Limits::new(knowledge, &site);
-        let mut told: Vec<(f64, Given)> = Vec::new();
-        for (id, seen) in &known.signs { if *seen {
-            let s = &v[*id];
-            told.push(((1.0 / s.background).ln() + if s.alarming { 2.0 } else { 0.0 }, Given { ask: Ask::Sign(*id), answer: Answer::Seen(true), time: now }));
-        } }
-        for (id, value) in &known.readings {
-            let out = |side: Side| limits.resolve(Bound::Named(Limit::Target(*id, side))).is_some_and(|l| if side == Side::Low { *value < l } else { *value > l });
-            if out(Side::Low) || out(Side::High) {
-                told.push((4.0, Given { ask: Ask::Reading(*id), answer: Answer::Number(*value), time: now }));
-            }
-        }
-        for (id, h) in &known.events { if *h != gillside::history::answers::Happened::Never {
-            told.push((3.9, Given { ask: Ask::Event(*id), answer: Answer::Happened(*h), time: now }));
-        } }
-        told.sort_by(|a, b| b.0.total_cmp(&a.0));
-        told.truncate(tells);
-        walk.answer(told.into_iter().map(|t| t.1));
-    }
+    let attendant = Attendant { answers: &known, time: now };
     let mut led_after = None;
     let mut aid_after = None;
     let mut screens = 0;
@@ -149,27 +119,26 @@ fn walk(knowledge: &Knowledge, case: &Case) -> Walked {
         let start = std::time::Instant::now();
         let next = walk.next();
         slowest = slowest.max(start.elapsed());
-        match next {
+        let turn = match next {
             Next::Stop(stop) => break stop,
-            Next::Ask(screen) => {
-                screens += 1;
-                let given: Vec<Given> = screen.asks.iter().map(|a| Given { ask: *a, answer: says(&known, *a), time: now }).collect();
-                for g in &given { let _ = write!(trace, " {}={}", g.ask.id(&knowledge.vocabulary), match g.answer { Answer::Number(n) => n.to_string(), Answer::Seen(b) => b.to_string(), Answer::Unknown => "?".into(), a => format!("{a:?}") }); }
-                walk.answer(given);
-                let r = walk.review();
-                let o = r.ranking.order();
-                let _ = writeln!(trace, "   -> {} {:.2}, {} {:.2}", knowledge[o[0]].id, r.ranking.of(o[0]), knowledge[o[1]].id, r.ranking.of(o[1]));
-                if walk.review().decision.first_aid { aid_after.get_or_insert(screens); }
-                if ok(&walk) { led_after.get_or_insert(walk.given().len()); } else { led_after = None; }
-            }
-        }
+            Next::Vital(screen) => Turn {
+                stage: Stage::Vital,
+                given: screen.asks.iter().map(|a| attendant.says(*a)).filter(|g| g.answer == Answer::Seen(true)).collect(),
+            },
+            Next::Tell => Turn { stage: Stage::Told, given: attendant.tells(&walk) },
+            Next::Ask(screen) => Turn { stage: Stage::Asked, given: screen.asks.iter().map(|a| attendant.says(*a)).collect() },
+        };
+        screens += 1;
+        for g in &turn.given { let _ = write!(trace, " {}={}", g.ask.id(&knowledge.vocabulary), match g.answer { Answer::Number(n) => n.to_string(), Answer::Seen(b) => b.to_string(), Answer::Unknown => "?".into(), a => format!("{a:?}") }); }
+        walk.take(turn);
+        let r = walk.review();
+        let o = r.ranking.order();
+        let _ = writeln!(trace, "   -> {} {:.2}, {} {:.2}", knowledge[o[0]].id, r.ranking.of(o[0]), knowledge[o[1]].id, r.ranking.of(o[1]));
+        if walk.review().decision.first_aid { aid_after.get_or_insert(screens); }
+        if ok(&walk) { led_after.get_or_insert(walk.given().len()); } else { led_after = None; }
     };
     let (led, top3, asked) = (ok(&walk), three(&walk), walk.given().len());
-    let mut rest: Vec<Given> = Vec::new();
-    rest.extend(known.readings.iter().map(|r| Given { ask: Ask::Reading(r.0), answer: Answer::Number(r.1), time: now }));
-    rest.extend(known.signs.iter().map(|r| Given { ask: Ask::Sign(r.0), answer: Answer::Seen(r.1), time: now }));
-    rest.extend(known.events.iter().map(|r| Given { ask: Ask::Event(r.0), answer: Answer::Happened(r.1), time: now }));
-    walk.answer(rest);
+    attendant.tell_the_rest(&mut walk);
     Walked { asked, led_after, led, top3, all_led: ok(&walk), all_top3: three(&walk), aid_after, stop, slowest, trace }
 }
 

@@ -2,16 +2,18 @@
 //!
 //! A [`Walk`] is asked [`Walk::next`] and told answers; it can go back any number of answers, because everything it knows
 //! is worked out again from the list of answers. `ask` is what can be asked and answered, `reach` what would settle a
-//! test, `worth` what asking is worth, `next` which question comes and when asking stops, `typed` what a person types,
-//! `kept` the file an interrupted walk is taken up from. This room knows no terminal and reads no clock.
+//! test, `worth` what asking is worth, `next` which question comes and when asking stops, `attendant` answers from a
+//! file, `typed` what a person types, `kept` the file an interrupted walk is taken up from. This room knows no terminal and reads no clock.
 
 mod ask;
+mod attendant;
 mod next;
 mod reach;
 mod session;
 mod worth;
 
 pub use ask::{Answer, Ask, Given};
+pub use attendant::{Attendant, ids};
 pub use next::{Next, Screen, Stop};
-pub use session::Walk;
+pub use session::{Stage, Turn, Walk};
 pub use worth::Prospect;

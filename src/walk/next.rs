@@ -1,6 +1,6 @@
 //! Which question comes next, and when asking stops.
 
-use super::{Answer, Ask, Prospect, Walk};
+use super::{Answer, Ask, Prospect, Stage, Walk};
 use crate::course::{Ground, advise};
 use crate::diagnosis::{Ranking, Scored};
 use crate::knowledge::{CauseId, StepId, When};
@@ -30,20 +30,31 @@ pub enum Stop {
 /// What comes next.
 #[derive(Debug, Clone, PartialEq, Eq)]
 pub enum Next {
+    /// Let those be picked that are so: what is not picked was not looked at.
+    Vital(Screen),
+    /// Let the person tell what was noticed, measured or done.
+    Tell,
     /// Ask this.
     Ask(Screen),
     /// Say what there is to say.
     Stop(Stop),
 }
 
+/// Whether the first steps stay is looked at for so many of the best questions.
+const LOOKED_AHEAD: usize = 5;
 /// So many steps are what is done first.
 const FIRST_STEPS: usize = 3;
 
 impl Walk<'_> {
     /// What comes next.
     pub fn next(&self) -> Next {
-        if let Some(screen) = self.vital() {
-            return Next::Ask(screen);
+        let had = |stage: Stage| self.turns().iter().any(|t| t.stage == stage);
+        if !had(Stage::Vital) {
+            let vital = self.knowledge().walk.vital.iter().map(|s| Ask::Sign(*s));
+            return Next::Vital(Screen { title: "first of all".to_owned(), asks: vital.collect() });
+        }
+        if !had(Stage::Told) {
+            return Next::Tell;
         }
         let rules = &self.knowledge().walk;
         let ranking = &self.review().ranking;
@@ -52,14 +63,15 @@ impl Walk<'_> {
         {
             return Next::Stop(Stop::StandsOut(first));
         }
-        let asked = self.given().len();
+        let given = self.given();
+        let asked = given.len();
         if asked >= rules.most {
             return Next::Stop(Stop::EnoughAsked);
         }
         let mut open: Vec<(Prospect, f64)> = self
             .prospects()
             .into_iter()
-            .filter(|p| self.open(p.ask))
+            .filter(|p| self.open(&given, p.ask))
             .map(|p| {
                 let worth = p.bits / (p.ask.question(&self.knowledge().vocabulary).effort + rules.asking);
                 (p, worth)
@@ -72,7 +84,8 @@ impl Walk<'_> {
         if *worth < rules.least_bits {
             return Next::Stop(Stop::NothingWorthAsking);
         }
-        if self.steps_stay(best) >= rules.same_steps {
+        let looked_at = open.iter().take(LOOKED_AHEAD).filter(|(_, w)| *w >= rules.least_bits);
+        if self.leads() && looked_at.clone().all(|(p, _)| self.steps_stay(p) >= rules.same_steps) {
             return Next::Stop(Stop::SameSteps);
         }
         let words = &self.knowledge().vocabulary;
@@ -81,42 +94,25 @@ impl Walk<'_> {
             .iter()
             .filter(|(p, w)| p.ask.question(words).screen == *title && *w >= rules.together * worth)
             .map(|(p, _)| p.ask)
-            .take(rules.lines.min(rules.most - asked))
+            .take(rules.lines.min(rules.most.saturating_sub(asked)))
             .collect();
         Next::Ask(Screen { title: title.clone(), asks })
     }
 
-    /// The vital questions that have not been asked: the opening, and what belongs to an alarm once there is one.
-    fn vital(&self) -> Option<Screen> {
-        let rules = &self.knowledge().walk;
-        let unasked = |signs: &[crate::vocabulary::SignId]| -> Vec<Ask> {
-            let asks = signs.iter().map(|s| Ask::Sign(*s));
-            asks.filter(|a| self.open(*a) && !self.is_known(*a)).collect()
-        };
-        let mut asks = unasked(&rules.opening);
-        let alarmed = rules.opening.iter().any(|s| self.answered(Ask::Sign(*s)) == Some(Answer::Seen(true)));
-        if asks.is_empty() && alarmed {
-            asks = unasked(&rules.alarm);
-        }
-        let title = "first of all".to_owned();
-        (!asks.is_empty()).then_some(Screen { title, asks })
-    }
-
-    fn is_known(&self, ask: Ask) -> bool {
-        match ask {
-            Ask::Sign(id) => !self.engine().evidence(crate::knowledge::Evidence::Sign(id)).is_unknown(),
-            _ => false,
-        }
+    /// Whether there is a leading cause, so that steps for it are advised at all.
+    fn leads(&self) -> bool {
+        let ranking = &self.review().ranking;
+        ranking.order().first().is_some_and(|c| ranking.of(*c) >= 0.5)
     }
 
     /// Not asked yet, and not on a screen of which something can't be measured now.
-    fn open(&self, ask: Ask) -> bool {
+    fn open(&self, given: &[super::Given], ask: Ask) -> bool {
         let words = &self.knowledge().vocabulary;
         let screen = &ask.question(words).screen;
         if ask.question(words).text.is_empty() {
             return false;
         }
-        self.given().iter().all(|g| {
+        given.iter().all(|g| {
             g.ask != ask && !(g.answer == Answer::CannotMeasure && g.ask.question(words).screen == *screen)
         })
     }

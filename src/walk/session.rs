@@ -7,9 +7,30 @@ use crate::engine::Engine;
 use crate::history::answers::Happened;
 use crate::history::log::{Row, Value};
 use crate::knowledge::Knowledge;
+use crate::vocabulary::EventId;
 
 /// Long before any farm: an event that did not happen did not happen since then.
 const EVER: i64 = i64::MIN / 2;
+
+/// Which part of a walk an answer belongs to.
+#[derive(Debug, Clone, Copy, PartialEq, Eq)]
+pub enum Stage {
+    /// The vital signs, before anything else.
+    Vital,
+    /// What a person tells without being asked.
+    Told,
+    /// What was asked for.
+    Asked,
+}
+
+/// What was answered at once.
+#[derive(Debug, Clone, PartialEq)]
+pub struct Turn {
+    /// In which part of the walk.
+    pub stage: Stage,
+    /// The answers; none when there was nothing to say.
+    pub given: Vec<Given>,
+}
 
 /// A walk under way.
 #[derive(Debug, Clone)]
@@ -18,7 +39,7 @@ pub struct Walk<'k> {
     lens: Lens,
     /// What was known before the first question.
     base: Engine<'k>,
-    given: Vec<Given>,
+    turns: Vec<Turn>,
     engine: Engine<'k>,
     review: Review<'k>,
 }
@@ -33,7 +54,7 @@ impl<'k> Walk<'k> {
             lens: Lens::new(assessor.knowledge(), assessor.doctor()),
             assessor,
             base,
-            given: Vec::new(),
+            turns: Vec::new(),
             engine,
             review,
         }
@@ -44,9 +65,21 @@ impl<'k> Walk<'k> {
         self.assessor.knowledge()
     }
 
-    /// What was answered, in the order of asking.
-    pub fn given(&self) -> &[Given] {
-        &self.given
+    /// What was answered, turn by turn.
+    pub fn turns(&self) -> &[Turn] {
+        &self.turns
+    }
+
+    /// What was answered, in the order in which it was first asked for or told; the last answer to each.
+    pub fn given(&self) -> Vec<Given> {
+        let mut all: Vec<Given> = Vec::new();
+        for given in self.turns.iter().flat_map(|t| &t.given) {
+            match all.iter_mut().find(|g| g.ask == given.ask) {
+                Some(earlier) => *earlier = *given,
+                None => all.push(*given),
+            }
+        }
+        all
     }
 
     /// The facts as they stand.
@@ -69,26 +102,29 @@ impl<'k> Walk<'k> {
         self.assessor.assess(&self.engine, places, last_row)
     }
 
-    /// Takes answers in, in the order they were asked for; an answer to what was asked before replaces it.
-    pub fn answer(&mut self, answers: impl IntoIterator<Item = Given>) {
-        for given in answers {
-            match self.given.iter_mut().find(|g| g.ask == given.ask) {
-                Some(old) => *old = given,
-                None => self.given.push(given),
-            }
-        }
+    /// Takes a turn's answers in.
+    pub fn take(&mut self, turn: Turn) {
+        self.turns.push(turn);
         self.work_out();
     }
 
-    /// Takes the last `count` answers back, and undoes what followed from them.
-    pub fn back(&mut self, count: usize) {
-        self.given.truncate(self.given.len().saturating_sub(count));
+    /// Takes turns in, as when an interrupted walk goes on.
+    pub fn take_all(&mut self, turns: impl IntoIterator<Item = Turn>) {
+        self.turns.extend(turns);
         self.work_out();
     }
 
-    /// What was answered to a question.
+    /// Takes the last turn back and undoes what followed from it; `None` at the beginning.
+    pub fn back(&mut self) -> Option<Turn> {
+        let turn = self.turns.pop()?;
+        self.work_out();
+        Some(turn)
+    }
+
+    /// What was last answered to a question.
     pub fn answered(&self, ask: Ask) -> Option<Answer> {
-        self.given.iter().find(|g| g.ask == ask).map(|g| g.answer)
+        let mut given = self.turns.iter().rev().flat_map(|t| t.given.iter().rev());
+        given.find(|g| g.ask == ask).map(|g| g.answer)
     }
 
     /// What asking is worth, for everything that tells something.
@@ -107,18 +143,9 @@ impl<'k> Walk<'k> {
 
     /// Everything that is known, from the start and the list of answers.
     fn work_out(&mut self) {
+        let given = self.given();
         let mut engine = self.base.clone();
-        let given = &self.given;
-        let mut events: Vec<(Option<i64>, crate::vocabulary::EventId)> = given
-            .iter()
-            .filter_map(|g| match (g.ask, g.answer) {
-                (Ask::Event(id), Answer::Happened(Happened::Ago(age))) => Some((Some(g.time.saturating_sub(age)), id)),
-                (Ask::Event(id), Answer::Happened(Happened::At(time))) => Some((Some(time), id)),
-                (Ask::Event(id), Answer::Happened(Happened::Never)) => Some((None, id)),
-                _ => None,
-            })
-            .collect();
-        events.sort_unstable();
+        let events = events(&given);
         if !events.is_empty() {
             engine.tell(|memory| {
                 for (time, id) in events {
@@ -129,27 +156,48 @@ impl<'k> Walk<'k> {
                 }
             });
         }
-        let mut rows: Vec<Row> = Vec::new();
-        for g in given {
-            let row = match rows.iter_mut().find(|r| r.time == g.time) {
-                Some(row) => row,
-                None => {
-                    rows.push(Row { time: g.time, ..Row::default() });
-                    let Some(row) = rows.last_mut() else { continue };
-                    row
-                }
-            };
-            match (g.ask, g.answer) {
-                (Ask::Reading(id), Answer::Number(amount)) => row.values.push((id, Value { amount, below: false })),
-                (Ask::Sign(id), Answer::Seen(seen)) => row.signs.push((id, seen)),
-                _ => {}
-            }
-        }
-        rows.sort_by_key(|r| r.time);
-        for row in &rows {
-            engine.observe(row);
+        for row in rows(&given) {
+            engine.observe(&row);
         }
         self.review = self.assessor.review(&engine);
         self.engine = engine;
     }
+}
+
+/// Events by time, those that did not happen first.
+fn events(given: &[Given]) -> Vec<(Option<i64>, EventId)> {
+    let mut events: Vec<(Option<i64>, EventId)> = given
+        .iter()
+        .filter_map(|g| match (g.ask, g.answer) {
+            (Ask::Event(id), Answer::Happened(happened)) => Some(match happened {
+                Happened::Ago(age) => (Some(g.time.saturating_sub(age)), id),
+                Happened::At(time) => (Some(time), id),
+                Happened::Never => (None, id),
+            }),
+            _ => None,
+        })
+        .collect();
+    events.sort_unstable();
+    events
+}
+
+/// Readings and signs as rows of a log, one for each time at which something was answered.
+fn rows(given: &[Given]) -> Vec<Row> {
+    let mut times: Vec<i64> = given.iter().map(|g| g.time).collect();
+    times.sort_unstable();
+    times.dedup();
+    let row = |time: i64| {
+        let mut row = Row { time, ..Row::default() };
+        for g in given.iter().filter(|g| g.time == time) {
+            match (g.ask, g.answer) {
+                (Ask::Reading(id), Answer::Number(amount)) => {
+                    row.values.push((id, Value { amount, below: false }));
+                }
+                (Ask::Sign(id), Answer::Seen(seen)) => row.signs.push((id, seen)),
+                _ => {}
+            }
+        }
+        row
+    };
+    times.into_iter().map(row).collect()
 }
