@@ -203,6 +203,12 @@ pub struct Step {
     pub people_first: bool,
     /// Never advised, only ever named under avoid.
     pub temptation: bool,
+    /// It only looks or measures: no harm under any cause.
+    pub looks: bool,
+    /// The law or a life hangs on it: when its `needs` holds it leads its list and is never left out.
+    pub pinned: bool,
+    /// Steps of one choice stand for one another, and only the one worth most is said; empty for none.
+    pub choice: String,
     /// Minutes of work.
     pub effort: f64,
     /// Good done under a cause, 0 to 1.
@@ -379,11 +385,24 @@ pub struct Scales {
     pub words: Vec<(f64, String)>,
 }
 
+/// Things a person may tell without being asked, picked from one list.
+#[derive(Debug, Clone, Serialize, Deserialize)]
+pub struct WalkGroup {
+    /// What the list is about.
+    pub name: String,
+    /// The screens whose signs it holds.
+    pub signs: Vec<String>,
+    /// The screens whose events it holds.
+    pub events: Vec<String>,
+}
+
 /// What a walk asks first, and when it stops: `knowledge/walk.toml`.
 #[derive(Debug, Clone, Serialize, Deserialize)]
 pub struct WalkRules {
     /// The signs that are asked for before anything else.
     pub vital: Vec<SignId>,
+    /// What may be told without being asked.
+    pub groups: Vec<WalkGroup>,
     /// So many things a simulated attendant tells without being asked.
     pub told: usize,
     /// Minutes that a question takes besides its effort.
@@ -433,6 +452,8 @@ pub struct Knowledge {
     pub scales: Scales,
     /// How a walk goes.
     pub walk: WalkRules,
+    /// What corrections and projections reckon with.
+    pub pacing: super::Pacing,
     /// SHA-256 of the shipped files, in hexadecimal.
     pub digest: String,
     /// The folder of house rules that were laid over it.

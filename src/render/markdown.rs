@@ -56,3 +56,18 @@ fn escaped(text: &str) -> String {
     }
     out
 }
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    #[test]
+    fn words_are_not_read_as_markdown_or_html() {
+        let page = [Block::Bullet("a *b* <script> [x](y) `id`".to_owned())];
+        assert_eq!(
+            markdown(&page),
+            "- a \\*b\\* \\<script\\> \\[x\\](y) `id`\n"
+        );
+        assert_eq!(markdown(&[Block::Para("a ` b".to_owned())]), "a \\` b\n");
+    }
+}

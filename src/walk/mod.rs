@@ -7,9 +7,11 @@
 
 mod ask;
 mod attendant;
+pub mod kept;
 mod next;
 mod reach;
 mod session;
+pub mod typed;
 mod worth;
 
 pub use ask::{Answer, Ask, Given};

@@ -5,6 +5,7 @@ mod causes;
 mod entry;
 mod findings;
 mod names;
+mod pace;
 mod rest;
 mod scales;
 mod species;
@@ -48,6 +49,7 @@ pub fn load(shipped: &[Source], house: &[Source]) -> Result<Knowledge, Vec<Fault
         species::read(&mut root, &names, &mut made);
         scales::read(&mut root, &mut made);
         walk::read(&mut root, &names, &mut made);
+        pace::read(&mut root, &names, &mut made);
         root.finish();
     }
     steps::join(&mut made);

@@ -28,6 +28,7 @@ pub(super) struct Made {
     pub families: Vec<Family>,
     pub scales: Option<Scales>,
     pub walk: Option<WalkRules>,
+    pub pace: super::pace::Parts,
     digest: String,
 }
 
@@ -46,6 +47,7 @@ pub(super) fn empty(digest: String) -> Made {
         families: Vec::new(),
         scales: None,
         walk: None,
+        pace: super::pace::Parts::default(),
         digest,
     }
 }
@@ -172,6 +174,7 @@ impl Made {
             ));
             return None;
         };
+        let pacing = super::pace::finish(self.pace, faults)?;
         let order = match order(&self.findings) {
             Ok(order) => order,
             Err(fault) => {
@@ -194,6 +197,7 @@ impl Made {
             families: self.families,
             scales,
             walk,
+            pacing,
             digest: self.digest,
             house_rules: None,
         })

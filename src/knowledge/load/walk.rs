@@ -4,7 +4,7 @@ use super::entry::within;
 use super::names::Names;
 use super::rest::Made;
 use crate::decode::Section;
-use crate::knowledge::WalkRules;
+use crate::knowledge::{WalkGroup, WalkRules};
 
 /// Reads the rules of the walk, if this is the file that holds them.
 pub(super) fn read(root: &mut Section<'_>, names: &Names, made: &mut Made) {
@@ -18,6 +18,7 @@ pub(super) fn read(root: &mut Section<'_>, names: &Names, made: &mut Made) {
         #[allow(clippy::cast_possible_truncation, clippy::cast_sign_loss)] // held within bounds
         Some(WalkRules {
             vital,
+            groups: Vec::new(),
             told: number("told", 0.0, 100.0)? as usize,
             asking: number("asking", 0.01, 60.0)?,
             stands_out: number("stands_out", 0.1, 1.0)?,
@@ -28,9 +29,23 @@ pub(super) fn read(root: &mut Section<'_>, names: &Names, made: &mut Made) {
             most: number("most", 1.0, 1000.0)? as usize,
         })
     })();
+    let groups = table
+        .sections("group")
+        .into_iter()
+        .filter_map(|mut s| {
+            let name = s.required_text("name");
+            let group = WalkGroup {
+                signs: s.texts("signs"),
+                events: s.texts("events"),
+                name: name?,
+            };
+            s.finish();
+            Some(group)
+        })
+        .collect();
     table.texts("source");
     table.finish();
-    made.walk = rules;
+    made.walk = rules.map(|r| WalkRules { groups, ..r });
 }
 
 fn signs(

@@ -65,6 +65,7 @@ pub(super) fn block(report: &Report<'_>, page: &mut Vec<Block>) -> Said {
             "You may have {minutes} minute{s} or less."
         )));
     }
+    how(&first, page);
     Said {
         steps,
         missing: false,
@@ -90,6 +91,16 @@ fn first_steps<'a>(report: &Report<'a>) -> Vec<&'a StepReport> {
         now
     };
     best.into_iter().take(FIRST).collect()
+}
+
+/// Why and how, for the steps that were named, by their numbers.
+fn how(steps: &[&StepReport], page: &mut Vec<Block>) {
+    if steps.iter().all(|s| s.detail.is_empty()) {
+        return;
+    }
+    page.push(Block::Heading("How".to_owned()));
+    let details = (1..).zip(steps).filter(|(_, s)| !s.detail.is_empty());
+    page.extend(details.map(|(number, step)| Block::Numbered(number, step.detail.clone())));
 }
 
 fn named(steps: &[&StepReport], page: &mut Vec<Block>) -> Vec<String> {

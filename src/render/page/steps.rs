@@ -41,7 +41,7 @@ pub(super) fn block(report: &Report<'_>, named: &[String], page: &mut Vec<Block>
         };
         page.push(Block::Heading(heading.to_owned()));
         for step in steps.iter().take(most) {
-            page.push(Block::Bullet(step.text.clone()));
+            page.push(Block::Bullet(format!("{} [{}]", step.text, step.id)));
             page.extend(check_first(step));
         }
         left += steps.len().saturating_sub(most);
