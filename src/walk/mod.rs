@@ -5,6 +5,7 @@
 //! test, `worth` what asking is worth, `next` which question comes and when asking stops, `attendant` answers from a
 //! file, `typed` what a person types, `kept` the file an interrupted walk is taken up from. This room knows no terminal and reads no clock.
 
+mod aid;
 mod ask;
 mod attendant;
 pub mod kept;

@@ -149,7 +149,7 @@ impl Walk<'_> {
 }
 
 /// The ranking after an outcome that shows with this probability under each set, and how likely that outcome is.
-fn given(ranking: &Ranking, shares: &[f64]) -> (f64, Ranking) {
+pub(super) fn given(ranking: &Ranking, shares: &[f64]) -> (f64, Ranking) {
     let sets = ranking.sets.iter().zip(shares);
     let total: f64 = ranking.sets.iter().take(shares.len()).map(|s| s.probability).sum();
     let mean: f64 = sets.clone().map(|(s, q)| s.probability * q).sum();
