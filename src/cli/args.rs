@@ -6,6 +6,7 @@ use clap::{Args, Parser, Subcommand, ValueEnum};
 
 use super::knowledge::KnowledgeArgs;
 use super::review::ReviewArgs;
+use super::walk::WalkArgs;
 use super::water::WaterArgs;
 use super::why::WhyArgs;
 
@@ -107,6 +108,8 @@ pub(super) enum Command {
     Why(WhyArgs),
     /// Checks and lists the rule base, and says what it rests on
     Knowledge(KnowledgeArgs),
+    /// Asks at the tank what is to be seen and measured, and diagnoses
+    Walk(WalkArgs),
     /// Makes one calculation about water; alone it lists the calculations there are
     Water(WaterArgs),
 }

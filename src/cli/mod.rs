@@ -11,6 +11,7 @@ mod output;
 mod replay;
 mod review;
 mod stop;
+mod walk;
 pub mod water;
 mod why;
 
@@ -37,6 +38,7 @@ pub fn run(args: impl IntoIterator<Item = OsString>) -> Exit {
         Command::Review(args) => review::run(args, &options.common, &mut output),
         Command::Why(args) => why::run(args, &options.common, &mut output),
         Command::Knowledge(args) => knowledge::run(args, &options.common, &mut output),
+        Command::Walk(args) => walk::run(args, &options.common, &mut output),
         Command::Water(args) => calculate(args, &options.common, &mut output),
     };
     let ended = ended.and_then(|exit| output.finish().map(|()| exit));

@@ -385,6 +385,42 @@ pub struct Scales {
     pub words: Vec<(f64, String)>,
 }
 
+/// Things a person may tell without being asked, picked from one list.
+#[derive(Debug, Clone, Serialize, Deserialize)]
+pub struct WalkGroup {
+    /// What the list is about.
+    pub name: String,
+    /// The screens whose signs it holds.
+    pub signs: Vec<String>,
+    /// The screens whose events it holds.
+    pub events: Vec<String>,
+}
+
+/// What a walk asks first, and when it stops: `knowledge/walk.toml`.
+#[derive(Debug, Clone, Serialize, Deserialize)]
+pub struct WalkRules {
+    /// The signs that are asked for before anything else.
+    pub vital: Vec<SignId>,
+    /// What may be told without being asked.
+    pub groups: Vec<WalkGroup>,
+    /// So many things a simulated attendant tells without being asked.
+    pub told: usize,
+    /// Minutes that a question takes besides its effort.
+    pub asking: f64,
+    /// Probability from which the leading cause stands out.
+    pub stands_out: f64,
+    /// Expected information, weighted by urgency, per minute, from which a question is worth asking.
+    pub least_bits: f64,
+    /// Share of the best question's worth from which a line joins its screen.
+    pub together: f64,
+    /// Lines of a screen at the most.
+    pub lines: usize,
+    /// Probability that the first steps stay the same from which asking on is idle.
+    pub same_steps: f64,
+    /// Questions at the most.
+    pub most: usize,
+}
+
 /// The whole rule base.
 #[derive(Debug, Clone, Serialize, Deserialize)]
 pub struct Knowledge {
@@ -414,6 +450,8 @@ pub struct Knowledge {
     pub references: Vec<Reference>,
     /// Priors and thresholds.
     pub scales: Scales,
+    /// How a walk goes.
+    pub walk: WalkRules,
     /// What corrections and projections reckon with.
     pub pacing: super::Pacing,
     /// SHA-256 of the shipped files, in hexadecimal.

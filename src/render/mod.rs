@@ -25,3 +25,4 @@ pub use page::diagnosis;
 pub use replay::line as replay_line;
 pub use report::Report;
 pub use text::text;
+pub use units::amount;

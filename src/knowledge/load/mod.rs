@@ -12,6 +12,7 @@ mod species;
 mod steps;
 mod tests;
 mod vocabulary;
+mod walk;
 
 use sha2::{Digest, Sha256};
 
@@ -47,6 +48,7 @@ pub fn load(shipped: &[Source], house: &[Source]) -> Result<Knowledge, Vec<Fault
         rest::read(&mut root, &names, &mut made);
         species::read(&mut root, &names, &mut made);
         scales::read(&mut root, &mut made);
+        walk::read(&mut root, &names, &mut made);
         pace::read(&mut root, &names, &mut made);
         root.finish();
     }
