@@ -17,6 +17,8 @@ pub(super) enum Stop {
     Rules(Vec<Fault>),
     /// A calculation gives no number; the message holds its cure.
     Water(WaterError),
+    /// A file can't be changed, which is not the user's doing.
+    Failed(Fault),
     /// The answer can't be written.
     Write(io::Error),
     /// Whoever reads the answer has read enough.
@@ -35,7 +37,7 @@ impl Stop {
                 2 => Exit::Usage,
                 _ => Exit::BadInput,
             },
-            Self::Write(_) => Exit::Failed,
+            Self::Failed(_) | Self::Write(_) => Exit::Failed,
             Self::ClosedPipe => Exit::Done,
         }
     }
@@ -51,7 +53,7 @@ impl Stop {
     /// What is to be said about it.
     pub fn faults(&self) -> Vec<Fault> {
         match self {
-            Self::Usage(fault) => vec![fault.clone()],
+            Self::Usage(fault) | Self::Failed(fault) => vec![fault.clone()],
             Self::Input(faults) | Self::Rules(faults) => faults.clone(),
             Self::Write(error) => vec![Fault::whole(
                 "unwritable",
