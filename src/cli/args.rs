@@ -5,6 +5,7 @@ use std::path::PathBuf;
 use clap::{Args, Parser, Subcommand, ValueEnum};
 
 use super::knowledge::KnowledgeArgs;
+use super::record::RecordArgs;
 use super::review::ReviewArgs;
 use super::walk::WalkArgs;
 use super::water::WaterArgs;
@@ -104,6 +105,8 @@ pub(super) enum Color {
 pub(super) enum Command {
     /// Diagnoses from logged readings: what is most likely wrong, and what to do first
     Review(ReviewArgs),
+    /// Writes readings, signs and events into the log, and warns at once
+    Record(RecordArgs),
     /// Explains a cause, finding, step, reading, sign, event, limit or source
     Why(WhyArgs),
     /// Checks and lists the rule base, and says what it rests on

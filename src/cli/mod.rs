@@ -8,8 +8,10 @@ mod context;
 mod exit;
 mod knowledge;
 mod output;
+mod record;
 mod replay;
 mod review;
+mod standing;
 mod stop;
 mod walk;
 pub mod water;
@@ -39,6 +41,7 @@ pub fn run(args: impl IntoIterator<Item = OsString>) -> Exit {
         Command::Why(args) => why::run(args, &options.common, &mut output),
         Command::Knowledge(args) => knowledge::run(args, &options.common, &mut output),
         Command::Walk(args) => walk::run(args, &options.common, &mut output),
+        Command::Record(args) => record::run(args, &options.common, &mut output),
         Command::Water(args) => calculate(args, &options.common, &mut output),
     };
     let ended = ended.and_then(|exit| output.finish().map(|()| exit));

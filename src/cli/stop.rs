@@ -17,6 +17,8 @@ pub(super) enum Stop {
     Rules(Vec<Fault>),
     /// A calculation gives no number; the message holds its cure.
     Water(Box<WaterError>),
+    /// A file can't be changed, which is not the user's doing.
+    Failed(Box<Fault>),
     /// The answer can't be written.
     Write(io::Error),
     /// Whoever reads the answer has read enough.
@@ -40,7 +42,7 @@ impl Stop {
                 2 => Exit::Usage,
                 _ => Exit::BadInput,
             },
-            Self::Write(_) => Exit::Failed,
+            Self::Failed(_) | Self::Write(_) => Exit::Failed,
             Self::ClosedPipe => Exit::Done,
         }
     }
@@ -56,7 +58,7 @@ impl Stop {
     /// What is to be said about it.
     pub fn faults(&self) -> Vec<Fault> {
         match self {
-            Self::Usage(fault) => vec![fault.as_ref().clone()],
+            Self::Usage(fault) | Self::Failed(fault) => vec![fault.as_ref().clone()],
             Self::Input(faults) | Self::Rules(faults) => faults.clone(),
             Self::Write(error) => vec![Fault::whole(
                 "unwritable",

@@ -56,3 +56,20 @@ fn list(page: &mut Vec<Block>, heading: &str, items: impl IntoIterator<Item = St
         page.extend(items);
     }
 }
+
+/// The verdict, and what is to be done first: all of first aid, else one step.
+pub(super) fn first_lines(report: &Report<'_>) -> Vec<Block> {
+    let mut page = vec![first::title(report)];
+    if report.assessment.verdict <= Verdict::Watch {
+        return page;
+    }
+    let mut block = Vec::new();
+    first::block(report, &mut block);
+    if report.assessment.first_aid.is_empty() {
+        // The heading, the first step, and what to look at before it.
+        let second = block.iter().position(|b| matches!(b, Block::Numbered(2, _)));
+        block.truncate(second.unwrap_or(block.len()));
+    }
+    page.extend(block);
+    page
+}
