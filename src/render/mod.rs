@@ -1,1 +1,3 @@
 //! The `render` room (see the map in the crate's documentation).
+
+pub mod plan;

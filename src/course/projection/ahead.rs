@@ -74,9 +74,9 @@ fn courses(begin: &Begin<'_>) -> Vec<Vec<Point>> {
     let mut courses = Vec::new();
     let drifts: &[f64] = if begin.farm.drift == 0.0 { &[1.0] } else { &[0.4, 1.2] };
     for factor in drifts {
-        let mut farm = begin.farm.clone();
-        farm.drift *= factor;
         for start in &starts {
+            let mut farm = begin.farm_with(start);
+            farm.drift *= factor;
             courses.extend(run(&farm, start, &[], AHEAD, &manner));
         }
     }
@@ -136,14 +136,14 @@ fn watches(knowledge: &Knowledge, limits: &Limits<'_>, begin: &Begin<'_>) -> Vec
             Box::new(move |p| least - Part::Oxygen.of(&p.y)),
         );
     }
-    if filter && known("alkalinity") && begin.supply_known {
+    if filter && known("alkalinity") && begin.rising.is_some() {
         let half = knowledge.pacing.kinetics.alkalinity_half.value;
         watch(
             say(&text.ahead_alkalinity, half),
             Box::new(move |p| half - Part::Alkalinity.of(&p.y)),
         );
     }
-    if filter && carbonate && begin.supply_known
+    if filter && carbonate && begin.rising.is_some()
         && let Some(least) = limit("ph", LimitLevel::Stress, low)
     {
         watch(

@@ -41,11 +41,13 @@ pub struct Capacity {
 
 /// The days of the log that count as "at present".
 const WINDOW: i64 = 3 * DAY;
-/// Feed, protein and digestion are known to about so much.
-const LOAD_SHARE: f64 = 0.2;
 /// Without two readings nothing tells whether ammonia rises or falls: the turnover may be so much off.
-const UNSEEN_LOW: f64 = 0.3;
+const UNSEEN_LOW: f64 = 0.6;
 const UNSEEN_HIGH: f64 = 1.6;
+
+/// Where growth and decay balance bacteria work at about a fifth of what they could (decay over growth, Metcalf & Eddy);
+/// twice as many are the most that a feed keeps alive for long.
+const MOST_PER_LOAD: f64 = 10.0;
 
 /// A turnover (mg N/L/day) as low and as high as it may be.
 fn turnover(readings: &Readings<'_>, id: &str, made: Span) -> Span {
@@ -98,10 +100,11 @@ pub fn estimate(
     }
     let starved = farm.kinetics.starved_share.value;
     let made = farm.load * (starved + (1.0 - starved) * feed);
+    // What a feed gives is known to a fifth at best; but load and turnover stand or fall together, so that does not count.
     let made = Span {
-        low: made * (1.0 - LOAD_SHARE),
+        low: made,
         middle: made,
-        high: made * (1.0 + LOAD_SHARE),
+        high: made,
     };
     let chem = Chemistry::at(Part::Temperature.of(state), farm.ionic, farm.salinity, farm.pressure)?;
     let share_at = |part: Part, value: f64, second: bool| {
@@ -117,17 +120,17 @@ pub fn estimate(
         let (a, b) = (share_at(part, small, second), share_at(part, level + off, second));
         (a.min(b), share_at(part, level.max(small), second), a.max(b))
     };
-    // What a clean wetted area can hold bounds what is believed, unless the log shows more at the least.
-    let bounded = |span: Span| match farm.ceiling {
-        Some(ceiling) => {
-            let top = ceiling.max(span.low);
-            Span {
-                low: span.low,
-                middle: span.middle.min(top),
-                high: span.high.min(top),
-            }
+    // No more bacteria than this feed can keep alive, nor, unless the log shows more at the least, than the wetted area
+    // can hold.
+    let fed = MOST_PER_LOAD * farm.load;
+    let bounded = |span: Span| {
+        let low = span.low.min(fed);
+        let top = farm.ceiling.map_or(fed, |c| fed.min(c.max(low)));
+        Span {
+            low,
+            middle: span.middle.min(top),
+            high: span.high.min(top),
         }
-        None => span,
     };
     let first = turnover(readings, "total-ammonia", made);
     let ammonia = bounded(bacteria(first, shares(Part::Ammonia, "total-ammonia", false)));
