@@ -81,7 +81,7 @@ fn acid_is_never_planned_unasked_nor_into_water_with_little_alkalinity() {
     let limit = little.refused.unwrap().limit;
     assert!(limit == "alkalinity-left-by-acid" || limit == "ph-fall-per-day", "{limit}");
     let still = Site { feed_kg_per_day: None, ..greenhouse() };
-    on(&k, &still, &[("ph", 7.6), ("alkalinity", 150.0), ("total-ammonia", 0.1)], &acid, |ground, made| {
+    on(&k, &still, &[("feed", 0.0), ("ph", 7.6), ("alkalinity", 150.0), ("total-ammonia", 0.1)], &acid, |ground, made| {
         let plan = made.unwrap();
         kept(&plan);
         assert_eq!(judge::faults(ground, &plan), Vec::<String>::new());
@@ -115,7 +115,7 @@ fn chloride_is_ten_times_the_nitrite_ion_with_the_kind_salt() {
 fn exchange_brings_a_reading_down_and_minds_the_new_water() {
     let k = rule_base();
     let wish = Wish { reading: Some("nitrate".into()), ..to(Kind::Exchange, 80.0) };
-    let water = [("nitrate", 160.0), ("alkalinity", 60.0), ("ph", 7.0), ("temperature", 23.0)];
+    let water = [("feed", 0.0), ("nitrate", 160.0), ("alkalinity", 60.0), ("ph", 7.0), ("temperature", 23.0)];
     let still = Site { feed_kg_per_day: None, plant_area_m2: None, ..greenhouse() };
     on(&k, &still, &water, &wish, |ground, made| {
         let plan = made.unwrap();

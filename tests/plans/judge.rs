@@ -1,7 +1,7 @@
 //! Holds a plan to its limits by simulating its steps at a finer grain than the planner did, and measuring in its own way.
 
 use gillside::course::plan::{Ground, Plan, replay};
-use gillside::course::projection::{FINE, Part, Point, Gas};
+use gillside::course::projection::{Extreme, FINE, Part, Point, Gas};
 
 /// What reckoning more finely may add to a value: half a percent of the limit.
 const SLACK: f64 = 0.005;
@@ -9,13 +9,10 @@ const SLACK: f64 = 0.005;
 fn simulated(ground: &Ground<'_>, plan: &Plan, actions: bool, days: f64) -> Vec<Vec<Point>> {
     let actions = if actions { replay::actions(ground, &plan.steps) } else { Vec::new() };
     let state = ground.begin.state;
-    let (few, many, uneven) = ground.begin.capacity.map_or((state, state, state), |c| {
-        (
-            ground.begin.with_bacteria(c.ammonia.low, c.nitrite.low),
-            ground.begin.with_bacteria(c.ammonia.high, c.nitrite.high),
-            ground.begin.with_bacteria(c.ammonia.high, c.nitrite.low),
-        )
-    });
+    let begin = &ground.begin;
+    let few = begin.extreme(Extreme::Few, Extreme::Few);
+    let many = begin.extreme(Extreme::Many, Extreme::Many);
+    let uneven = begin.extreme(Extreme::Many, Extreme::Few);
     [
         (Gas::Usual, state),
         (Gas::Open, few),

@@ -223,12 +223,12 @@ fn paced(
         let doses = DOSES_A_DAY.iter().map(move |doses| (*days, *doses));
         doses.flat_map(|(days, doses)| paths.iter().map(move |path| (days, doses, path)))
     });
-    // Longer is gentler up to a point; where two lengths bring nothing, a third doesn't either.
+    // Longer is gentler up to a point; where lengths bring nothing any more, no other does either.
     let (mut length, mut best, mut best_before, mut in_vain) = (0, f64::INFINITY, f64::INFINITY, 0);
     for (days, doses, path) in tries {
         if days != length {
             in_vain = if best < 0.97 * best_before { 0 } else { in_vain + 1 };
-            if length >= 2 && in_vain >= 2 {
+            if in_vain >= 4 {
                 break;
             }
             (length, best_before) = (days, best.min(best_before));

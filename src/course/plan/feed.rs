@@ -3,11 +3,11 @@
 use super::check::{self, Measure, Rule, Track};
 use super::clock;
 use super::ground::Ground;
-use super::made::{Outcome, PLANNING, days_from, limit_cautions, mark_the_pace, trial};
+use super::made::{Outcome, days_from, limit_cautions, mark_the_pace, trial};
 use super::replay;
 use super::value::{Kind, Plan, Refused, Step, Trouble, Wish};
 use super::words::{fill, kilograms, short};
-use crate::course::projection::{Part, Point};
+use crate::course::projection::{ORDINARY, Part, Point};
 
 /// The longest plan, in days.
 const LONGEST: usize = 14;
@@ -50,24 +50,24 @@ pub fn plan(ground: &Ground<'_>, wish: &Wish) -> Result<Plan, Trouble> {
     Ok(paced(ground, plan, usual, to / usual))
 }
 
-/// The courses of steps every way that things may go.
-fn courses(ground: &Ground<'_>, steps: &[Step], days: f64) -> Option<Vec<Vec<Point>>> {
-    let actions = replay::actions(ground, steps);
-    let ways = ground.ways(Kind::Feed);
-    ways.iter().map(|way| ground.course(way, &actions, days, PLANNING)).collect()
-}
-
-/// Whether the water stays within the limits of raised feed from one day to another.
-fn carries(ground: &Ground<'_>, courses: &[Vec<Point>], from: f64, to: f64) -> bool {
+/// Whether the water stays within the limits of raised feed from one day to another, every way that things may go.
+fn carries(ground: &Ground<'_>, steps: &[Step], from: f64, to: f64) -> bool {
     let pace = ground.pace();
-    courses.iter().flatten().filter(|p| p.t >= from - 1e-9 && p.t <= to + 1e-9).all(|p| {
-        Part::Ammonia.of(&p.y) <= AWAY * pace.feed_ammonia.value
-            && Part::Nitrite.of(&p.y) <= AWAY * pace.feed_nitrite.value
+    let actions = replay::actions(ground, steps);
+    let within = |p: &Point| {
+        p.t < from - 1e-9
+            || (Part::Ammonia.of(&p.y) <= AWAY * pace.feed_ammonia.value
+                && Part::Nitrite.of(&p.y) <= AWAY * pace.feed_nitrite.value)
+    };
+    ground.ways(Kind::Feed).iter().all(|way| {
+        ground
+            .course(way, &actions, to, ORDINARY)
+            .is_some_and(|points| points.iter().all(within))
     })
 }
 
 /// Decides on each day that a rise may fall on: one level up, if the cautious course then stays within the limits.
-fn levels(ground: &Ground<'_>, usual: f64, to: f64) -> Option<Vec<(Step, f64)>> {
+fn levels(ground: &Ground<'_>, usual: f64, to: f64) -> Vec<(Step, f64)> {
     let pace = ground.pace();
     #[allow(clippy::cast_possible_truncation)] // a few days
     let apart = (pace.feed_step_days.value * 86_400.0) as i64;
@@ -87,8 +87,7 @@ fn levels(ground: &Ground<'_>, usual: f64, to: f64) -> Option<Vec<(Step, f64)>> 
         if share > present + 1e-9 || share > to + 1e-9 {
             continue;
         }
-        let points = courses(ground, &[feed(first, share)], WATCHED + 1.0)?;
-        if carries(ground, &points, 0.0, WATCHED + 1.0) {
+        if carries(ground, &[feed(first, share)], 0.0, WATCHED + 1.0) {
             level = share;
             break;
         }
@@ -101,8 +100,7 @@ fn levels(ground: &Ground<'_>, usual: f64, to: f64) -> Option<Vec<(Step, f64)>> 
         let mut tried = steps.clone();
         tried.push((feed(slot, next), next));
         let t = days_from(ground, slot);
-        let points = courses(ground, &plain(&tried), t + WATCHED)?;
-        if carries(ground, &points, t, t + WATCHED) {
+        if carries(ground, &plain(&tried), t, t + WATCHED) {
             steps = tried;
             level = next;
             at = slot + apart;
@@ -110,7 +108,7 @@ fn levels(ground: &Ground<'_>, usual: f64, to: f64) -> Option<Vec<(Step, f64)>> 
             at = slot + 86_400;
         }
     }
-    Some(steps)
+    steps
 }
 
 fn paced(ground: &Ground<'_>, mut plan: Plan, usual: f64, to: f64) -> Plan {
@@ -121,7 +119,7 @@ fn paced(ground: &Ground<'_>, mut plan: Plan, usual: f64, to: f64) -> Plan {
         reason: words.feed_none_possible.clone(),
         instead: words.feed_none_possible_instead.clone(),
     };
-    let Some(mut levels) = levels(ground, usual, to) else { return plan.refuse(refused) };
+    let mut levels = levels(ground, usual, to);
     // A rise that the days after the next one would not bear is taken back.
     while levels.len() > 1 && !holds(ground, &levels) {
         levels.pop();
@@ -187,7 +185,7 @@ fn holds(ground: &Ground<'_>, levels: &[(Step, f64)]) -> bool {
     let steps: Vec<Step> = levels.iter().map(|l| l.0.clone()).collect();
     let at = |s: Option<&Step>| s.map_or(0.0, |s| days_from(ground, s.at));
     let (from, end) = (at(steps.get(1)), at(steps.last()) + WATCHED);
-    courses(ground, &steps, end).is_some_and(|all| carries(ground, &all, from, end))
+    carries(ground, &steps, from, end)
 }
 
 /// Whether ammonia and nitrite are low at present: then nothing but lack of capacity keeps feed at none.

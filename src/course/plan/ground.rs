@@ -3,7 +3,7 @@
 use super::value::{Kind, Refused, Trouble};
 use super::words::{fill, short};
 use crate::course::projection::{
-    Begin, Chemistry, Exact, Farm, Gas, Manner, NewWater, Point, Readings, State, run,
+    Begin, Chemistry, Exact, Extreme, Farm, Gas, Manner, NewWater, Point, Readings, State, run,
 };
 use crate::diagnosis::Ranking;
 use crate::engine::Limits;
@@ -207,13 +207,9 @@ impl<'k> Ground<'k> {
     /// The ways things may go that a plan has to keep its limits in: gas slow and at once, bacteria few and many. What a dose does before any
     /// gas moves shows in every way, at the dose itself.
     pub fn ways(&self, kind: Kind) -> Vec<Way<'k>> {
-        let (few, many) = match self.begin.capacity {
-            Some(c) => (
-                self.begin.with_bacteria(c.ammonia.low, c.nitrite.low),
-                self.begin.with_bacteria(c.ammonia.high, c.nitrite.high),
-            ),
-            None => (self.begin.state, self.begin.state),
-        };
+        let begin = &self.begin;
+        let few = begin.extreme(Extreme::Few, Extreme::Few);
+        let many = begin.extreme(Extreme::Many, Extreme::Many);
         let way = |gas, state: State| self.way(kind, gas, &state);
         // What breaks limits most often comes first: whoever tries stops at the first that does.
         let mut ways = vec![
@@ -221,9 +217,9 @@ impl<'k> Ground<'k> {
             way(Gas::Usual, self.begin.state),
             way(Gas::Slow, few),
         ];
-        if let Some(c) = self.begin.capacity {
+        if begin.capacity.is_some() {
             // The first step may do much and the second little: then nitrite is what comes.
-            let uneven = self.begin.with_bacteria(c.ammonia.high, c.nitrite.low);
+            let uneven = begin.extreme(Extreme::Many, Extreme::Few);
             ways.push(way(Gas::Slow, many));
             ways.push(way(Gas::Usual, uneven));
         }

@@ -5,7 +5,6 @@ use super::ground::Ground;
 use super::value::{Kind, Step};
 use crate::course::projection::{Action, Deed, Farm, Part, State};
 use crate::knowledge::Dosable;
-use crate::water::nitrification;
 
 /// The numbers of the water that a gram of a substance moves, with how much it gives (mg; carbon mmol).
 fn moved(substance: &Dosable) -> impl Iterator<Item = (Part, f64)> {
@@ -69,10 +68,7 @@ pub fn actions(ground: &Ground<'_>, steps: &[Step]) -> Vec<Action> {
 /// plans of feed ask that alkalinity is kept up meanwhile.
 pub fn farm<'k>(ground: &Ground<'k>, kind: Kind, state: &State) -> Farm<'k> {
     let mut farm = ground.begin.farm_with(state);
-    if matches!(kind, Kind::Feed | Kind::StartUp) {
-        let keeps_up = nitrification::ALKALINITY_WITH_CELLS * farm.load
-            - nitrification::DENITRIFICATION_ALKALINITY * farm.plants;
-        farm.supply = farm.supply.max(keeps_up);
-    }
+    let rising = ground.begin.rising.unwrap_or(0.0);
+    farm.held = Some(if kind == Kind::Feed { rising.max(0.0) } else { rising.min(0.0) });
     farm
 }

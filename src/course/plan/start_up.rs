@@ -83,6 +83,7 @@ fn water<'k>(ground: &Ground<'k>, seed: f64, dose: f64) -> Way<'k> {
     let mut way = ground.way(Kind::StartUp, Gas::Usual, &state);
     way.farm.load = 0.0;
     way.farm.plants = 0.0;
+    way.farm.held = None;
     // What a dose takes when it is used up in about four days.
     way.farm.supply = ALKALINITY_WITH_CELLS * dose / 4.0;
     way

@@ -1,6 +1,6 @@
 //! When which limit is passed if nothing is done, as a range: the run that is kindest and the one that is harshest.
 
-use super::begin::Begin;
+use super::begin::{Begin, Extreme};
 use super::farm::Gas;
 use super::readings::Readings;
 use super::run::{Manner, ORDINARY, Point, run};
@@ -57,12 +57,13 @@ pub fn area(knowledge: &Knowledge, site: &Site) -> Option<f64> {
 /// The runs that span what may come: bacteria as few and as many as may be, a change of temperature that stops soon or
 /// goes on.
 fn courses(begin: &Begin<'_>) -> Vec<Vec<Point>> {
+    let (few, many) = (Extreme::Few, Extreme::Many);
     let starts: Vec<State> = match begin.capacity {
-        Some(c) => vec![
-            begin.with_bacteria(c.ammonia.low, c.nitrite.low),
+        Some(_) => vec![
+            begin.extreme(few, few),
             begin.state,
-            begin.with_bacteria(c.ammonia.high, c.nitrite.high),
-            begin.with_bacteria(c.ammonia.high, c.nitrite.low),
+            begin.extreme(many, many),
+            begin.extreme(many, few),
         ],
         None => vec![begin.state],
     };

@@ -19,6 +19,15 @@ use crate::water::oxygen;
 #[derive(Debug, Clone, PartialEq, Eq)]
 pub struct Lacks(pub Vec<String>);
 
+/// An end of what the log allows.
+#[derive(Debug, Clone, Copy, PartialEq, Eq)]
+pub enum Extreme {
+    /// As few bacteria as may be.
+    Few,
+    /// As many.
+    Many,
+}
+
 /// Where a projection begins.
 #[derive(Debug, Clone)]
 pub struct Begin<'k> {
@@ -117,7 +126,9 @@ impl<'k> Begin<'k> {
             oxygen_exchange: 24.0 * kinetics.oxygen_transfer.value,
             respiration: 0.0,
             carbon_exchange: 24.0 * kinetics.oxygen_transfer.value * kinetics.gas_ratio.value,
-            breath: 0.0,
+            above_air: 0.0,
+            freed: 0.0,
+            metabolism: 1.0,
             ceiling: area_m2.map(|a| per_liter(a * kinetics.film_per_area.value)),
             pressure,
             salinity,
@@ -125,6 +136,7 @@ impl<'k> Begin<'k> {
             phosphorus,
             air_carbon_dioxide: held,
             supply: 0.0,
+            held: None,
             drift: drift(readings),
         };
 
@@ -195,6 +207,28 @@ impl<'k> Begin<'k> {
         farm
     }
 
+    /// The water with as few (or as many) bacteria as the log allows, and with the ammonia and nitrite that go with that:
+    /// a test that reads low hides a filter that does less.
+    pub fn extreme(&self, ammonia: Extreme, nitrite: Extreme) -> State {
+        let Some(c) = self.capacity else { return self.state };
+        let pick = |span: super::Span, end| match end {
+            Extreme::Few => span.low,
+            Extreme::Many => span.high,
+        };
+        let mut state = self.with_bacteria(pick(c.ammonia, ammonia), pick(c.nitrite, nitrite));
+        for (part, level, end) in [
+            (Part::Ammonia, c.total_ammonia, ammonia),
+            (Part::Nitrite, c.nitrite_level, nitrite),
+        ] {
+            let value = match end {
+                Extreme::Few => level.high,
+                Extreme::Many => level.low,
+            };
+            part.set(&mut state, value);
+        }
+        state
+    }
+
     /// The water with other bacteria.
     pub fn with_bacteria(&self, ammonia: f64, nitrite: f64) -> State {
         let mut state = self.state;
@@ -230,7 +264,9 @@ fn calibrate(farm: &mut Farm<'_>, state: &State, feed: f64, ph: f64, rising: f64
     } else {
         farm.oxygen_exchange * farm.kinetics.gas_ratio.value
     };
-    farm.breath = (farm.carbon_exchange * above_air - freed) / metabolism(feed);
+    farm.above_air = above_air;
+    farm.freed = freed;
+    farm.metabolism = metabolism(feed);
     Some(())
 }
 

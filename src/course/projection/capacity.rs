@@ -37,6 +37,10 @@ pub struct Capacity {
     pub ammonia: Span,
     /// Nitrite oxidizers.
     pub nitrite: Span,
+    /// Total ammonia at present within the error of its test, mg/L as N: few bacteria go with the high end.
+    pub total_ammonia: Span,
+    /// Nitrite likewise.
+    pub nitrite_level: Span,
 }
 
 /// The days of the log that count as "at present".
@@ -113,13 +117,21 @@ pub fn estimate(
         let n = nitrifying(farm, &there, &chem, ph);
         if second { n.nitrite.1 } else { n.ammonia.1 }
     };
-    let shares = |part: Part, id: &str, second: bool| {
-        let level = readings.middle(id, DAY).unwrap_or(part.of(state));
-        let off = readings.resolution(id, level);
-        let small = (level - off).max(level / 4.0).max(off / 10.0);
-        let (a, b) = (share_at(part, small, second), share_at(part, level + off, second));
-        (a.min(b), share_at(part, level.max(small), second), a.max(b))
+    let level = |part: Part, id: &str| {
+        let middle = part.of(state);
+        let off = readings.resolution(id, middle);
+        Span {
+            low: (middle - off).max(middle / 4.0).max(off / 10.0),
+            middle: middle.max(off / 10.0),
+            high: middle + off,
+        }
     };
+    let shares = |part: Part, level: Span, second: bool| {
+        let (a, b) = (share_at(part, level.low, second), share_at(part, level.high, second));
+        (a.min(b), share_at(part, level.middle, second), a.max(b))
+    };
+    let total_ammonia = level(Part::Ammonia, "total-ammonia");
+    let nitrite_level = level(Part::Nitrite, "nitrite");
     // No more bacteria than this feed can keep alive, nor, unless the log shows more at the least, than the wetted area
     // can hold.
     let fed = MOST_PER_LOAD * farm.load;
@@ -133,8 +145,13 @@ pub fn estimate(
         }
     };
     let first = turnover(readings, "total-ammonia", made);
-    let ammonia = bounded(bacteria(first, shares(Part::Ammonia, "total-ammonia", false)));
+    let ammonia = bounded(bacteria(first, shares(Part::Ammonia, total_ammonia, false)));
     let second = turnover(readings, "nitrite", first);
-    let nitrite = bounded(bacteria(second, shares(Part::Nitrite, "nitrite", true)));
-    Some(Capacity { ammonia, nitrite })
+    let nitrite = bounded(bacteria(second, shares(Part::Nitrite, nitrite_level, true)));
+    Some(Capacity {
+        ammonia,
+        nitrite,
+        total_ammonia,
+        nitrite_level,
+    })
 }
