@@ -85,6 +85,9 @@ fn site(d: &mut Dice, k: &Knowledge) -> Site {
 }
 
 fn water(d: &mut Dice) -> Vec<(&'static str, f64)> {
+    if d.chance(0.5) {
+        return ordinary(d);
+    }
     vec![
         ("temperature", d.between(6.0, 33.0)),
         ("ph", d.between(5.2, 8.8)),
@@ -98,6 +101,24 @@ fn water(d: &mut Dice) -> Vec<(&'static str, f64)> {
         ("iron", d.scale(0.05, 3.0)),
         ("potassium", d.scale(2.0, 180.0)),
         ("residual-chlorine", d.scale(0.02, 4.0)),
+    ]
+}
+
+/// A water such as farms have, so that most wishes can be granted.
+fn ordinary(d: &mut Dice) -> Vec<(&'static str, f64)> {
+    vec![
+        ("temperature", d.between(14.0, 28.0)),
+        ("ph", d.between(6.2, 7.6)),
+        ("alkalinity", d.scale(15.0, 120.0)),
+        ("total-ammonia", d.scale(0.05, 2.0)),
+        ("nitrite", d.scale(0.02, 1.5)),
+        ("nitrate", d.scale(5.0, 150.0)),
+        ("chloride", d.scale(5.0, 80.0)),
+        ("sodium", d.scale(2.0, 40.0)),
+        ("dissolved-oxygen", d.between(5.0, 8.5)),
+        ("iron", d.scale(0.05, 1.5)),
+        ("potassium", d.scale(5.0, 60.0)),
+        ("residual-chlorine", d.scale(0.02, 2.0)),
     ]
 }
 
@@ -149,6 +170,7 @@ struct Count {
     made: BTreeMap<&'static str, [u64; 3]>,
     faults: Vec<String>,
     slowest: (f64, u64),
+    refused: BTreeMap<String, u64>,
 }
 
 fn case(k: &Knowledge, number: u64, count: &mut Count) {
@@ -171,6 +193,7 @@ fn case(k: &Knowledge, number: u64, count: &mut Count) {
             Ok(plan) if plan.refused.is_some() => {
                 tally[1] += 1;
                 let refused = plan.refused.as_ref().unwrap();
+                *count.refused.entry(format!("{} {}", wish.kind.word(), refused.limit)).or_default() += 1;
                 if !plan.steps.is_empty() || refused.reason.is_empty() || refused.instead.is_empty() || refused.reason.contains('{') {
                     count.faults.push(format!("{number}: a refusal without words: {refused:?}"));
                 }
@@ -216,6 +239,11 @@ fn every_plan_keeps_its_limits() {
         (0..3).for_each(|i| sum[i] += n[i]);
     }
     println!("plans, refusals, troubles: {made:?}");
+    let mut refused: BTreeMap<&str, u64> = BTreeMap::new();
+    for (limit, n) in counts.iter().flat_map(|c| &c.refused) {
+        *refused.entry(limit).or_default() += n;
+    }
+    println!("refused for: {refused:?}");
     println!("slowest: {:?}", counts.iter().map(|c| c.slowest).fold((0.0, 0), |a, b| if b.0 > a.0 { b } else { a }));
     let faults: Vec<&String> = counts.iter().flat_map(|c| &c.faults).collect();
     assert!(faults.is_empty(), "{} faults, such as\n{}", faults.len(), faults.iter().take(25).map(|f| f.as_str()).collect::<Vec<_>>().join("\n"));

@@ -8,6 +8,7 @@ mod context;
 mod exit;
 mod knowledge;
 mod output;
+pub mod pace;
 mod record;
 mod replay;
 mod review;

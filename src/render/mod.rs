@@ -8,6 +8,7 @@ pub mod listing;
 mod look;
 mod markdown;
 mod page;
+pub mod plan;
 pub mod recorded;
 mod replay;
 mod report;

@@ -1,30 +1,27 @@
 //! Holds a plan to its limits by simulating its steps at a finer grain than the planner did, and measuring in its own way.
 
 use gillside::course::plan::{Ground, Plan, replay};
-use gillside::course::projection::{FINE, Part, Point, Gas};
-use gillside::course::plan::Way;
+use gillside::course::projection::{Extreme, FINE, Part, Point, Gas};
 
 /// What reckoning more finely may add to a value: half a percent of the limit.
 const SLACK: f64 = 0.005;
 
-fn courses(ground: &Ground<'_>, plan: &Plan, actions: bool, days: f64) -> Vec<Vec<Point>> {
-    let farm = replay::farm(ground, plan.kind);
+fn simulated(ground: &Ground<'_>, plan: &Plan, actions: bool, days: f64) -> Vec<Vec<Point>> {
     let actions = if actions { replay::actions(ground, &plan.steps) } else { Vec::new() };
     let state = ground.begin.state;
-    let (few, many) = ground.begin.capacity.map_or((state, state), |c| {
-        (
-            ground.begin.with_bacteria(c.ammonia.low, c.nitrite.low),
-            ground.begin.with_bacteria(c.ammonia.high, c.nitrite.high),
-        )
-    });
+    let begin = &ground.begin;
+    let few = begin.extreme(Extreme::Few, Extreme::Few);
+    let many = begin.extreme(Extreme::Many, Extreme::Many);
+    let uneven = begin.extreme(Extreme::Many, Extreme::Few);
     [
-        Way { gas: Gas::Usual, state },
-        Way { gas: Gas::Open, state: few },
-        Way { gas: Gas::Slow, state: few },
-        Way { gas: Gas::Slow, state: many },
+        (Gas::Usual, state),
+        (Gas::Open, few),
+        (Gas::Slow, few),
+        (Gas::Slow, many),
+        (Gas::Usual, uneven),
     ]
     .iter()
-    .map(|w| ground.course(&farm, w, &actions, days, FINE).expect("a plan can be simulated"))
+    .map(|(gas, state)| ground.course(&ground.way(plan.kind, *gas, state), &actions, days, FINE).expect("a plan can be simulated"))
     .collect()
 }
 
@@ -86,6 +83,17 @@ fn measured(id: &str, points: &[Point], from: f64) -> Option<f64> {
 
 /// Everything that is wrong with a plan; empty for one that keeps its word.
 pub fn faults(ground: &Ground<'_>, plan: &Plan) -> Vec<String> {
+    let days = |at: i64| (at - ground.now()) as f64 / 86_400.0;
+    let rise = plan.steps.get(1).map_or(0.0, |s| days(s.at));
+    let mut faults = chained(ground, plan, rise);
+    if !plan.steps.is_empty() {
+        shape(ground, plan, &mut faults);
+    }
+    faults
+}
+
+/// What is wrong with the course of the water; feed is raised from day `rise` on.
+pub fn chained(ground: &Ground<'_>, plan: &Plan, from: f64) -> Vec<String> {
     let mut faults = Vec::new();
     if plan.steps.is_empty() {
         return faults;
@@ -94,13 +102,12 @@ pub fn faults(ground: &Ground<'_>, plan: &Plan) -> Vec<String> {
     let end = days(plan.steps.last().unwrap().at) + 1.0;
     let watched = plan.limits.iter().any(|l| measured(&l.id, &[], 0.0).is_some());
     if watched {
-        let courses = courses(ground, plan, true, end);
-        let idle = if plan.limits.iter().any(|l| l.without.is_some()) {
-            courses_idle(ground, plan, end)
+        let courses = simulated(ground, plan, true, end);
+        let idle = if plan.kind == gillside::course::plan::Kind::Exchange || plan.limits.iter().any(|l| l.without.is_some()) {
+            simulated(ground, plan, false, end)
         } else {
             Vec::new()
         };
-        let from = plan.steps.get(1).map_or(0.0, |s| days(s.at));
         for kept in &plan.limits {
             for (way, points) in courses.iter().enumerate() {
                 let Some(value) = measured(&kept.id, points, from) else { continue };
@@ -122,12 +129,7 @@ pub fn faults(ground: &Ground<'_>, plan: &Plan) -> Vec<String> {
             faults.push(format!("{} is {}, limit {}", kept.id, kept.reached, kept.limit));
         }
     }
-    shape(ground, plan, &mut faults);
     faults
-}
-
-fn courses_idle(ground: &Ground<'_>, plan: &Plan, days: f64) -> Vec<Vec<Point>> {
-    courses(ground, plan, false, days)
 }
 
 /// Steps in order, in shifts, weighable, and strong substances only where they were asked for.

@@ -1,5 +1,7 @@
 //! Farms and waters for the tests of plans.
 
+#![allow(dead_code)] // each test file uses its part
+
 use gillside::course::plan::{Ground, Plan, Trouble, Wish, plan};
 use gillside::course::projection::Readings;
 use gillside::engine::Limits;

@@ -1,9 +1,9 @@
 //! Alkalinity up, pH up and down: doses of a base or an acid that follow a path, each reckoned from where the water then is.
 
 use super::check::{Measure, Rule, Track};
-use super::ground::{Ground, Way};
+use super::ground::Ground;
 use super::made::{
-    amount, amount_words, broken, days_from, limit_cautions, mark_the_pace, refusal, trial,
+    Outcome, amount, amount_words, broken, days_from, limit_cautions, mark_the_pace, refusal, trial,
 };
 use super::value::{Amount, Kind, Plan, Refused, Step, Trouble, Wish};
 use super::words::{fill, short};
@@ -12,8 +12,8 @@ use crate::course::projection::{Gas, Part};
 use crate::knowledge::{Dosable, Side, Use};
 use crate::water::carbonate::state::{self, CACO3_PER_EQ};
 
-/// Doses a day: enough that the first is a quarter of its day.
-const DOSES_A_DAY: usize = 5;
+/// Doses a day that are tried: enough that the first is a quarter of its day; more where much has to be made up for.
+const DOSES_A_DAY: [usize; 2] = [5, 10];
 /// Lengths of plan that are tried, in days.
 const LENGTHS: [usize; 8] = [1, 2, 3, 4, 6, 8, 11, 14];
 /// Nearer than this to the aim there is nothing to do: pH, and mg/L as CaCO3.
@@ -23,6 +23,8 @@ const NEAR: (f64, f64) = (0.03, 1.5);
 #[derive(Debug, Clone, Copy, PartialEq)]
 enum Path {
     Alkalinity { from: f64, to: f64 },
+    /// In equal factors: small doses first, where the water has little.
+    Factors { from: f64, to: f64 },
     /// pH at the present carbon dioxide (mmol/L): where it settles once gas has.
     Ph { from: f64, to: f64, carbon_dioxide: f64 },
 }
@@ -69,7 +71,13 @@ pub fn plan(ground: &Ground<'_>, wish: &Wish) -> Result<Plan, Trouble> {
         },
         _ => Path::Alkalinity { from: alkalinity, to },
     };
-    Ok(paced(ground, wish, plan, &path, substance, up))
+    let mut paths = vec![path];
+    if let Path::Alkalinity { from, to } = path
+        && from >= 1.0
+    {
+        paths.push(Path::Factors { from, to });
+    }
+    Ok(paced(ground, wish, plan, &paths, substance, up))
 }
 
 /// The value to go to: what is wished, else the near edge of the comfort band.
@@ -204,22 +212,39 @@ fn paced(
     ground: &Ground<'_>,
     wish: &Wish,
     mut plan: Plan,
-    path: &Path,
+    paths: &[Path],
     substance: &Dosable,
     up: bool,
 ) -> Plan {
     let rules = rules(ground, substance, up, wish.kind);
     let wait = wait_seconds(ground);
     let mut last = None;
-    for days in LENGTHS {
-        let slots = clock::slots(ground.site, ground.now(), days, DOSES_A_DAY, wait);
+    let tries = LENGTHS.iter().flat_map(|days| {
+        let doses = DOSES_A_DAY.iter().map(move |doses| (*days, *doses));
+        doses.flat_map(|(days, doses)| paths.iter().map(move |path| (days, doses, path)))
+    });
+    // Longer is gentler up to a point; where lengths bring nothing any more, no other does either.
+    let (mut length, mut best, mut best_before, mut in_vain) = (0, f64::INFINITY, f64::INFINITY, 0);
+    for (days, doses, path) in tries {
+        if days != length {
+            in_vain = if best < 0.97 * best_before { 0 } else { in_vain + 1 };
+            if in_vain >= 4 {
+                break;
+            }
+            (length, best_before) = (days, best.min(best_before));
+        }
+        let slots = clock::slots(ground.site, ground.now(), days, doses, wait);
         let Some(mut steps) = along(ground, wish, path, substance, &slots) else { continue };
         let end = steps.last().map_or(1.0, |s| days_from(ground, s.at)) + 1.0;
-        let Some(tried) = trial(ground, wish.kind, &steps, &rules, end) else { continue };
-        if let Some((rule, fared)) = tried.broken(&rules) {
-            last = Some(refusal(ground, rule, fared));
-            continue;
-        }
+        let tried = match trial(ground, wish.kind, &steps, &rules, end) {
+            Some(Outcome::Keeps(tried)) => tried,
+            Some(Outcome::Breaks(rule, fared)) => {
+                best = best.min(rule.used(fared.reached));
+                last = Some(refusal(ground, rule, fared));
+                continue;
+            }
+            None => continue,
+        };
         plan.limits = tried.kept(&rules);
         plan.limits.push(first_dose(ground, &steps));
         if let Some(refused) = levels(ground, &mut plan, substance, &steps) {
@@ -277,18 +302,17 @@ fn along(
     substance: &Dosable,
     slots: &[Vec<i64>],
 ) -> Option<Vec<Step>> {
-    let farm = replay::farm(ground, wish.kind);
-    let volume = farm.volume_l;
+    let volume = ground.begin.farm.volume_l;
     #[allow(clippy::cast_precision_loss)] // a fortnight
     let days = slots.len() as f64;
     let gives = 1000.0 * substance.gives("alkalinity");
-    let mut way = Way { gas: Gas::Usual, state: ground.begin.state };
+    let mut way = ground.way(wish.kind, Gas::Usual, &ground.begin.state);
     let (mut now, mut share) = (0.0, 0.0);
     let mut pure: Vec<(i64, f64)> = Vec::new();
     for (times, parts) in slots.iter().zip(shares(ground, slots)) {
         for (at, part) in times.iter().zip(parts) {
             let t = days_from(ground, *at);
-            way.state = ground.course(&farm, &way, &[], t - now, super::made::PLANNING)?.last()?.y;
+            way.state = ground.course(&way, &[], t - now, super::made::PLANNING)?.last()?.y;
             now = t;
             share += part / days;
             let wanted = wanted(ground, path, share)?;
@@ -337,6 +361,7 @@ pub(super) fn weighed(
 fn wanted(ground: &Ground<'_>, path: &Path, share: f64) -> Option<f64> {
     match *path {
         Path::Alkalinity { from, to } => Some(from + (to - from) * share),
+        Path::Factors { from, to } => Some(from * (to / from).powf(share)),
         Path::Ph { from, to, carbon_dioxide } => {
             let chem = ground.chemistry()?;
             let ph = from + (to - from) * share;
@@ -447,6 +472,6 @@ fn cautions(ground: &Ground<'_>, plan: &mut Plan, substance: &Dosable, up: bool)
     if substance.id == "CaCO3" {
         plan.cautions.push(words.lime_slow.clone());
     }
-    plan.cautions.push(if up { words.base_takes_over.clone() } else { words.acid_cause.clone() });
+    plan.cautions.push(if up { words.base_besides.clone() } else { words.acid_cause.clone() });
     limit_cautions(ground, plan);
 }

@@ -138,16 +138,16 @@ impl Rule<'_> {
         }
     }
 
-    /// The worst over several courses.
-    pub fn worst(&self, courses: &[Vec<Point>]) -> Fared {
-        let all = courses.iter().map(|c| self.of(c));
-        let worse = |a: Fared, b: Fared| match self.measure {
-            Measure::Least if b.reached < a.reached => b,
-            Measure::Least => a,
-            _ if b.reached > a.reached => b,
-            _ => a,
-        };
-        all.reduce(worse).unwrap_or(Fared { reached: 0.0, at: 0.0 })
+    /// Whether one value is worse than another.
+    pub fn is_worse(&self, value: f64, than: f64) -> bool {
+        if self.measure == Measure::Least { value < than } else { value > than }
+    }
+
+    /// How much of the limit a value uses: 1 is all of it.
+    pub fn used(&self, reached: f64) -> f64 {
+        let (over, under) =
+            if self.measure == Measure::Least { (self.bound, reached) } else { (reached, self.bound) };
+        if under > 1e-12 { over / under } else { f64::INFINITY }
     }
 
     /// Whether a value passes the limit by more than a share (below zero: comes so near).

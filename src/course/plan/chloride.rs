@@ -3,7 +3,7 @@
 use super::base::{first_dose, levels, named, shares, wait_seconds, weighed};
 use super::check::{self, Measure, Rule, Track};
 use super::ground::Ground;
-use super::made::{amount_words, broken, days_from, limit_cautions, mark_the_pace, refusal, trial};
+use super::made::{Outcome, amount_words, broken, days_from, limit_cautions, mark_the_pace, refusal, trial};
 use super::value::{Kind, Plan, Refused, Step, Trouble, Wish};
 use super::words::fill;
 use super::clock;
@@ -141,11 +141,14 @@ fn paced(
             last = Some(broken(ground, limit, limit.value, salinity, None));
             continue;
         }
-        let end = steps.last().map_or(1.0, |s| days_from(ground, s.at)) + 0.5;
-        let Some(tried) = trial(ground, Kind::Chloride, &steps, &rules, end) else { continue };
-        if let Some((rule, fared)) = tried.broken(&rules) {
-            return Err(refusal(ground, rule, fared));
-        }
+        let end = steps.last().map_or(1.0, |s| days_from(ground, s.at)) + 1.0;
+        let tried = match trial(ground, Kind::Chloride, &steps, &rules, end) {
+            Some(Outcome::Keeps(tried)) => tried,
+            Some(Outcome::Breaks(rule, fared)) => {
+                return Err(refusal(ground, rule, fared));
+            }
+            None => continue,
+        };
         plan.limits = tried.kept(&rules);
         plan.limits.push(check::kept(limit, limit.value, salinity));
         plan.limits.push(first_dose(ground, &steps));

@@ -2,11 +2,11 @@
 
 use super::base::{first_dose, wait_seconds};
 use super::check::{self, Measure, Rule, Track};
-use super::ground::{Ground, Way};
-use super::made::{days_from, limit_cautions, mark_the_pace, refusal, trial};
+use super::ground::Ground;
+use super::made::{Outcome, days_from, limit_cautions, mark_the_pace, refusal, trial};
 use super::value::{Kind, Plan, Refused, Step, Trouble, Wish};
 use super::words::{degrees, fill, liters, short, warmer};
-use super::{clock, replay};
+use super::clock;
 use crate::course::projection::{Action, Deed, Gas, NewWater, Part};
 use crate::knowledge::Side;
 
@@ -165,12 +165,15 @@ fn paced(ground: &Ground<'_>, mut plan: Plan, aim: &Aim) -> Plan {
             last = Some(never(ground, aim, a_day));
             continue;
         };
-        let end = steps.last().map_or(1.0, |s| days_from(ground, s.at)) + 0.5;
-        let Some(tried) = trial(ground, Kind::Exchange, &steps, &rules, end) else { continue };
-        if let Some((rule, fared)) = tried.broken(&rules) {
-            last = Some(refusal(ground, rule, fared));
-            continue;
-        }
+        let end = steps.last().map_or(1.0, |s| days_from(ground, s.at)) + 1.0;
+        let tried = match trial(ground, Kind::Exchange, &steps, &rules, end) {
+            Some(Outcome::Keeps(tried)) => tried,
+            Some(Outcome::Breaks(rule, fared)) => {
+                last = Some(refusal(ground, rule, fared));
+                continue;
+            }
+            None => continue,
+        };
         plan.limits = tried.kept(&rules);
         let volume = ground.begin.farm.volume_l;
         let largest = steps.iter().filter_map(|s| s.liters).fold(0.0, f64::max) / volume;
@@ -217,11 +220,10 @@ fn within_a_day(steps: &[Step]) -> f64 {
 
 /// Batches until the reading is there in the likeliest course; `None` when it is not within the longest plan.
 fn batches(ground: &Ground<'_>, aim: &Aim, a_day: f64, most: f64) -> Option<Vec<Step>> {
-    let farm = replay::farm(ground, Kind::Exchange);
     let makeup = ground.makeup().ok()?;
-    let volume = farm.volume_l;
+    let volume = ground.begin.farm.volume_l;
     let slots = clock::slots(ground.site, ground.now(), LONGEST, BATCHES_A_DAY, wait_seconds(ground));
-    let mut way = Way { gas: Gas::Usual, state: ground.begin.state };
+    let mut way = ground.way(Kind::Exchange, Gas::Usual, &ground.begin.state);
     let mut now = 0.0;
     let mut other = aim.now;
     let down = aim.want < aim.now;
@@ -238,7 +240,7 @@ fn batches(ground: &Ground<'_>, aim: &Aim, a_day: f64, most: f64) -> Option<Vec<
             let share = liters / volume;
             let t = days_from(ground, *at);
             let actions = [Action { at: t - now, deed: Deed::Exchange(share, makeup) }];
-            way.state = ground.course(&farm, &way, &actions, t - now, super::made::PLANNING)?.last()?.y;
+            way.state = ground.course(&way, &actions, t - now, super::made::PLANNING)?.last()?.y;
             now = t;
             other += share * (aim.new - other);
             steps.push(Step { at: *at, liters: Some(liters), ..Step::default() });

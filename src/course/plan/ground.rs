@@ -1,9 +1,9 @@
 //! What plans are made from: the rule base, the site, the readings and how far they can be trusted.
 
-use super::value::{Refused, Trouble};
+use super::value::{Kind, Refused, Trouble};
 use super::words::{fill, short};
 use crate::course::projection::{
-    Begin, Chemistry, Exact, Farm, Gas, Manner, NewWater, Point, Readings, State, run,
+    Begin, Chemistry, Exact, Extreme, Farm, Gas, Manner, NewWater, Point, Readings, State, run,
 };
 use crate::diagnosis::Ranking;
 use crate::engine::Limits;
@@ -60,10 +60,12 @@ pub struct Ground<'k> {
 }
 
 /// One way things may go: how gas passes, and which bacteria there are.
-#[derive(Debug, Clone, Copy, PartialEq)]
-pub struct Way {
+#[derive(Debug, Clone)]
+pub struct Way<'k> {
     /// Gas.
     pub gas: Gas,
+    /// The farm as it must be with those bacteria.
+    pub farm: Farm<'k>,
     /// The water with those bacteria.
     pub state: State,
 }
@@ -82,7 +84,7 @@ impl<'k> Ground<'k> {
         let area = crate::course::projection::area(knowledge, site);
         let mut begin = Begin::new(knowledge, site, area, &readings)?;
         // A plan puts the temperature where it wants it, or leaves it; it doesn't guess the weather.
-        begin.farm.drift = 0.0;
+        begin.farm.drift = 0.0; // `farm_with` keeps it
         Ok(Self {
             knowledge,
             site,
@@ -204,32 +206,35 @@ impl<'k> Ground<'k> {
 
     /// The ways things may go that a plan has to keep its limits in: gas slow and at once, bacteria few and many. What a dose does before any
     /// gas moves shows in every way, at the dose itself.
-    pub fn ways(&self) -> Vec<Way> {
-        let (few, many) = match self.begin.capacity {
-            Some(c) => (
-                self.begin.with_bacteria(c.ammonia.low, c.nitrite.low),
-                self.begin.with_bacteria(c.ammonia.high, c.nitrite.high),
-            ),
-            None => (self.begin.state, self.begin.state),
-        };
-        let way = |gas, state| Way { gas, state };
+    pub fn ways(&self, kind: Kind) -> Vec<Way<'k>> {
+        let begin = &self.begin;
+        let few = begin.extreme(Extreme::Few, Extreme::Few);
+        let many = begin.extreme(Extreme::Many, Extreme::Many);
+        let way = |gas, state: State| self.way(kind, gas, &state);
+        // What breaks limits most often comes first: whoever tries stops at the first that does.
         let mut ways = vec![
+            way(Gas::Open, few),
             way(Gas::Usual, self.begin.state),
             way(Gas::Slow, few),
-            way(Gas::Open, few),
         ];
-        if self.begin.capacity.is_some() {
+        if begin.capacity.is_some() {
+            // The first step may do much and the second little: then nitrite is what comes.
+            let uneven = begin.extreme(Extreme::Many, Extreme::Few);
             ways.push(way(Gas::Slow, many));
-            ways.push(way(Gas::Open, many));
+            ways.push(way(Gas::Usual, uneven));
         }
         ways
+    }
+
+    /// One way, from a state.
+    pub fn way(&self, kind: Kind, gas: Gas, state: &State) -> Way<'k> {
+        Way { gas, farm: super::replay::farm(self, kind, state), state: *state }
     }
 
     /// Runs one way.
     pub fn course(
         &self,
-        farm: &Farm<'_>,
-        way: &Way,
+        way: &Way<'_>,
         actions: &[crate::course::projection::Action],
         days: f64,
         exact: Exact,
@@ -239,7 +244,7 @@ impl<'k> Ground<'k> {
             exact,
             feed: self.begin.feed,
         };
-        run(farm, &way.state, actions, days, &manner).ok()
+        run(&way.farm, &way.state, actions, days, &manner).ok()
     }
 
     /// Equilibrium constants of the water now.

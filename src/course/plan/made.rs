@@ -20,49 +20,62 @@ pub const KEPT_AWAY: f64 = 0.03;
 /// Steps as they were tried.
 #[derive(Debug, Clone)]
 pub struct Tried {
-    /// The courses, the likeliest first.
+    /// The courses, one a way.
     pub courses: Vec<Vec<Point>>,
-    /// Each rule's worst, and what doing nothing comes to.
+    /// Each rule's worst over the ways, and what doing nothing comes to.
     pub fared: Vec<(Fared, f64)>,
 }
 
-/// Runs steps every way and measures them.
-pub fn trial(
+/// What comes of trying steps.
+#[derive(Debug, Clone)]
+pub enum Outcome<'r, 'k> {
+    /// Every rule holds, every way.
+    Keeps(Tried),
+    /// A rule is broken one way; no further way was tried.
+    Breaks(&'r Rule<'k>, Fared),
+}
+
+/// Runs steps every way and measures them; `None` when a course can't be reckoned.
+pub fn trial<'r, 'k>(
     ground: &Ground<'_>,
     kind: Kind,
     steps: &[Step],
-    rules: &[Rule<'_>],
+    rules: &'r [Rule<'k>],
     days: f64,
-) -> Option<Tried> {
-    let farm = replay::farm(ground, kind);
+) -> Option<Outcome<'r, 'k>> {
     let actions = replay::actions(ground, steps);
-    let ways = ground.ways();
-    let every = |actions: &[_]| -> Option<Vec<Vec<Point>>> {
-        ways.iter().map(|w| ground.course(&farm, w, actions, days, PLANNING)).collect()
-    };
-    let courses = every(&actions)?;
-    let idle = if rules.iter().any(|r| r.unless_anyway) { every(&[])? } else { Vec::new() };
-    let fared = rules
-        .iter()
-        .map(|rule| {
-            let without = if rule.unless_anyway { rule.worst(&idle).reached } else { rule.bound };
-            (rule.worst(&courses), without)
-        })
-        .collect();
-    Some(Tried { courses, fared })
+    let anyway = rules.iter().any(|r| r.unless_anyway);
+    let mut tried = Tried { courses: Vec::new(), fared: Vec::new() };
+    for way in ground.ways(kind) {
+        let course = ground.course(&way, &actions, days, PLANNING)?;
+        let idle = if anyway { Some(ground.course(&way, &[], days, PLANNING)?) } else { None };
+        let here: Vec<(Fared, f64)> = rules
+            .iter()
+            .map(|rule| {
+                let without = idle.as_ref().filter(|_| rule.unless_anyway);
+                (rule.of(&course), without.map_or(rule.bound, |i| rule.of(i).reached))
+            })
+            .collect();
+        let broken = rules
+            .iter()
+            .zip(&here)
+            .filter(|(rule, (fared, without))| rule.is_passed(fared.reached, *without, -KEPT_AWAY))
+            .min_by(|a, b| a.1.0.at.total_cmp(&b.1.0.at));
+        if let Some((rule, (fared, _))) = broken {
+            return Some(Outcome::Breaks(rule, *fared));
+        }
+        tried.fared = if tried.fared.is_empty() {
+            here
+        } else {
+            let pairs = rules.iter().zip(tried.fared.iter().zip(here));
+            pairs.map(|(rule, (a, b))| if rule.is_worse(b.0.reached, a.0.reached) { b } else { *a }).collect()
+        };
+        tried.courses.push(course);
+    }
+    Some(Outcome::Keeps(tried))
 }
 
 impl Tried {
-    /// The first rule that is broken, with how it fared.
-    pub fn broken<'r, 'k>(&self, rules: &'r [Rule<'k>]) -> Option<(&'r Rule<'k>, Fared)> {
-        rules
-            .iter()
-            .zip(&self.fared)
-            .filter(|(rule, (fared, without))| rule.is_passed(fared.reached, *without, -KEPT_AWAY))
-            .map(|(rule, (fared, _))| (rule, *fared))
-            .min_by(|a, b| a.1.at.total_cmp(&b.1.at))
-    }
-
     /// The limits as the plan shows them.
     pub fn kept(&self, rules: &[Rule<'_>]) -> Vec<Kept> {
         rules

@@ -46,7 +46,7 @@ pub fn plan(ground: &Ground<'_>, _wish: &Wish) -> Result<Plan, Trouble> {
     }
     plan.steps.push(step(5, &words.do_oxygen_measure));
     let mut later = step(20, &words.do_oxygen_later);
-    later.expect.push(Expect { id: "dissolved-oxygen".to_owned(), low, high: full });
+    later.expect.push(Expect { id: "dissolved-oxygen".to_owned(), low: low.min(full), high: full });
     later.go_on_if.push(fill(&words.go_on_oxygen, &[("low", short(low))]));
     plan.steps.push(later);
     plan.steps.push(step(120, &words.do_oxygen_hold));

@@ -6,9 +6,10 @@ use super::ground::{Ground, Way};
 use super::made::{PLANNING, amount, amount_words, days_from, limit_cautions, mark_the_pace};
 use super::value::{Expect, Kind, Plan, Refused, Step, Trouble, Wish};
 use super::words::{fill, short};
-use super::{feed, replay};
+use super::feed;
 use crate::course::projection::{Gas, Part};
 use crate::knowledge::{Dosable, Use};
+use crate::water::nitrification::ALKALINITY_WITH_CELLS;
 
 /// The longest start that is planned, days.
 const LONGEST: i64 = 70;
@@ -77,17 +78,20 @@ fn first_share(steps: &[Step]) -> f64 {
 }
 
 /// The water of a start with so many bacteria, as a share of what a dose a day asks for.
-fn water(ground: &Ground<'_>, seed: f64, dose: f64) -> Way {
-    Way { gas: Gas::Usual, state: ground.begin.with_bacteria(seed * dose, seed * dose) }
+fn water<'k>(ground: &Ground<'k>, seed: f64, dose: f64) -> Way<'k> {
+    let state = ground.begin.with_bacteria(seed * dose, seed * dose);
+    let mut way = ground.way(Kind::StartUp, Gas::Usual, &state);
+    way.farm.load = 0.0;
+    way.farm.plants = 0.0;
+    way.farm.held = None;
+    // What a dose takes when it is used up in about four days.
+    way.farm.supply = ALKALINITY_WITH_CELLS * dose / 4.0;
+    way
 }
 
 /// Doses whenever the likeliest course has used up the last one, until one is gone within a day.
 fn doses(ground: &Ground<'_>, wish: &Wish, substance: &Dosable, dose: f64) -> Option<Vec<Step>> {
-    let mut farm = replay::farm(ground, Kind::StartUp);
-    farm.load = 0.0;
-    farm.plants = 0.0;
-    farm.supply = 7.05 * dose / 4.0;
-    let volume = farm.volume_l;
+    let volume = ground.begin.farm.volume_l;
     let seed = &ground.knowledge.pacing.kinetics.seed;
     let mut ways = [
         water(ground, seed.value, dose),
@@ -105,10 +109,10 @@ fn doses(ground: &Ground<'_>, wish: &Wish, substance: &Dosable, dose: f64) -> Op
         let at = if day == 0 { begin } else { clock::next(ground.site, begin + day * DAY) };
         let t = days_from(ground, at);
         for way in &mut ways {
-            way.state = ground.course(&farm, way, &[], (t - now).max(0.0), PLANNING)?.last()?.y;
+            way.state = ground.course(way, &[], (t - now).max(0.0), PLANNING)?.last()?.y;
         }
         now = t;
-        let middle = ways.first()?.state;
+        let middle = ways.first().map(|w| w.state)?;
         let (tan, nitrite) = (Part::Ammonia.of(&middle), Part::Nitrite.of(&middle));
         if !steps.is_empty() && tan < NEXT && nitrite < DONE && at - given <= DAY + DAY / 4 && day > 3 {
             steps.push(Step { at, text: words.do_start_done.clone(), ..Step::default() });
@@ -118,11 +122,11 @@ fn doses(ground: &Ground<'_>, wish: &Wish, substance: &Dosable, dose: f64) -> Op
             continue;
         }
         let whole = amount(substance, pure, wish.purity);
-        let levels = |ways: &[Way; 3]| -> (f64, f64) {
+        let levels = |ways: &[Way<'_>; 3]| -> (f64, f64) {
             let all = ways.iter().map(|w| Part::Ammonia.of(&w.state));
             (all.clone().fold(f64::INFINITY, f64::min), all.fold(0.0, f64::max))
         };
-        let mut step = |at: i64, text: &str, a: super::value::Amount, ways: &[Way; 3]| {
+        let mut step = |at: i64, text: &str, a: super::value::Amount, ways: &[Way<'_>; 3]| {
             let (low, high) = levels(ways);
             steps.push(Step {
                 at,

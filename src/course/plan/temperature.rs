@@ -4,7 +4,7 @@ use super::base::wait_seconds;
 use super::check::{self, Measure, Rule, Track};
 use super::clock;
 use super::ground::Ground;
-use super::made::{KEPT_AWAY, days_from, limit_cautions, mark_the_pace, refusal, trial};
+use super::made::{Outcome, KEPT_AWAY, days_from, limit_cautions, mark_the_pace, refusal, trial};
 use super::value::{Kind, Plan, Refused, Step, Trouble, Warmth, Wish};
 use super::words::{degrees, fill, short, warmer};
 use crate::course::projection::Part;
@@ -133,18 +133,21 @@ fn paced(ground: &Ground<'_>, mut plan: Plan, now: f64, to: f64) -> Plan {
     }
     let steps = untangled(steps);
     let end = steps.last().map_or(1.0, |s| days_from(ground, s.at)) + 1.0;
-    let Some(tried) = trial(ground, Kind::Temperature, &steps, &rules, end) else {
-        let limit = &pace.longest_plan;
-        return plan.refuse(Refused {
-            limit: limit.id.clone(),
-            reason: ground.words().too_long.clone(),
-            instead: limit.instead.clone(),
-        });
+    let tried = match trial(ground, Kind::Temperature, &steps, &rules, end) {
+        Some(Outcome::Keeps(tried)) => tried,
+        Some(Outcome::Breaks(rule, fared)) => {
+            let refused = refusal(ground, rule, fared);
+            return plan.refuse(refused);
+        }
+        None => {
+            let limit = &pace.longest_plan;
+            return plan.refuse(Refused {
+                limit: limit.id.clone(),
+                reason: ground.words().too_long.clone(),
+                instead: limit.instead.clone(),
+            });
+        }
     };
-    if let Some((rule, fared)) = tried.broken(&rules) {
-        let refused = refusal(ground, rule, fared);
-        return plan.refuse(refused);
-    }
     plan.limits = tried.kept(&rules);
     let quarter = &pace.first_dose;
     plan.limits.push(check::kept(quarter, quarter.value, first_share(&steps)));

@@ -1,6 +1,6 @@
 //! When which limit is passed if nothing is done, as a range: the run that is kindest and the one that is harshest.
 
-use super::begin::Begin;
+use super::begin::{Begin, Extreme};
 use super::farm::Gas;
 use super::readings::Readings;
 use super::run::{Manner, ORDINARY, Point, run};
@@ -57,12 +57,13 @@ pub fn area(knowledge: &Knowledge, site: &Site) -> Option<f64> {
 /// The runs that span what may come: bacteria as few and as many as may be, a change of temperature that stops soon or
 /// goes on.
 fn courses(begin: &Begin<'_>) -> Vec<Vec<Point>> {
+    let (few, many) = (Extreme::Few, Extreme::Many);
     let starts: Vec<State> = match begin.capacity {
-        Some(c) => vec![
-            begin.with_bacteria(c.ammonia.low, c.nitrite.low),
+        Some(_) => vec![
+            begin.extreme(few, few),
             begin.state,
-            begin.with_bacteria(c.ammonia.high, c.nitrite.high),
-            begin.with_bacteria(c.ammonia.high, c.nitrite.low),
+            begin.extreme(many, many),
+            begin.extreme(many, few),
         ],
         None => vec![begin.state],
     };
@@ -74,9 +75,9 @@ fn courses(begin: &Begin<'_>) -> Vec<Vec<Point>> {
     let mut courses = Vec::new();
     let drifts: &[f64] = if begin.farm.drift == 0.0 { &[1.0] } else { &[0.4, 1.2] };
     for factor in drifts {
-        let mut farm = begin.farm.clone();
-        farm.drift *= factor;
         for start in &starts {
+            let mut farm = begin.farm_with(start);
+            farm.drift *= factor;
             courses.extend(run(&farm, start, &[], AHEAD, &manner));
         }
     }
@@ -136,14 +137,14 @@ fn watches(knowledge: &Knowledge, limits: &Limits<'_>, begin: &Begin<'_>) -> Vec
             Box::new(move |p| least - Part::Oxygen.of(&p.y)),
         );
     }
-    if filter && known("alkalinity") && begin.supply_known {
+    if filter && known("alkalinity") && begin.rising.is_some() {
         let half = knowledge.pacing.kinetics.alkalinity_half.value;
         watch(
             say(&text.ahead_alkalinity, half),
             Box::new(move |p| half - Part::Alkalinity.of(&p.y)),
         );
     }
-    if filter && carbonate && begin.supply_known
+    if filter && carbonate && begin.rising.is_some()
         && let Some(least) = limit("ph", LimitLevel::Stress, low)
     {
         watch(

@@ -12,7 +12,7 @@ pub struct Exact {
 }
 
 /// Steps after which a run is given up: a run of two weeks takes a few hundred.
-const MOST_STEPS: usize = 200_000;
+const MOST_STEPS: usize = 20_000;
 
 /// The run could not be finished within [`MOST_STEPS`], or left the numbers.
 #[derive(Debug, Clone, Copy, PartialEq, Eq)]

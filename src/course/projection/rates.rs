@@ -98,14 +98,15 @@ pub fn rates(farm: &Farm<'_>, y: &State, t: f64, chem: &Chemistry, ph: f64, driv
     // Nitrification takes alkalinity; plants that take nitrate and denitrification give about half of it back.
     let taken = nitrification::ALKALINITY_WITH_CELLS * first;
     let back = nitrification::DENITRIFICATION_ALKALINITY * (plants + lost);
-    Part::Alkalinity.set(&mut d, back - taken + farm.supply);
+    let supply = farm.held.map_or(farm.supply, |by| by + taken - back);
+    Part::Alkalinity.set(&mut d, back - taken + supply);
 
     let metabolism = metabolism(drive.feed);
     let carbon_dioxide = chem.carbon_dioxide(ph, Part::Carbon.of(y));
     let gas = drive.gas_exchange * (farm.air_carbon_dioxide - carbon_dioxide)
         + drive.breath * metabolism;
     // What comes in by routine is counted as bicarbonate.
-    let carbon = gas + farm.supply / CACO3_PER_MEQ;
+    let carbon = gas + supply / CACO3_PER_MEQ;
     Part::Carbon.set(&mut d, carbon);
     Part::CarbonIn.set(&mut d, carbon);
 
