@@ -6,11 +6,14 @@
 mod args;
 mod context;
 mod exit;
+mod incident;
 mod knowledge;
 mod output;
 mod record;
 mod replay;
 mod review;
+mod shift;
+mod site;
 mod standing;
 mod stop;
 pub mod water;
@@ -40,6 +43,9 @@ pub fn run(args: impl IntoIterator<Item = OsString>) -> Exit {
         Command::Why(args) => why::run(args, &options.common, &mut output),
         Command::Knowledge(args) => knowledge::run(args, &options.common, &mut output),
         Command::Record(args) => record::run(args, &options.common, &mut output),
+        Command::Shift(args) => shift::run(args, &options.common, &mut output),
+        Command::Incident(args) => incident::run(args, &options.common, &mut output),
+        Command::Site(args) => site::run(args, &options.common, &mut output),
         Command::Water(args) => calculate(args, &options.common, &mut output),
     };
     let ended = ended.and_then(|exit| output.finish().map(|()| exit));
