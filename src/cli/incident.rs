@@ -14,7 +14,7 @@ use super::stop::Stop;
 use crate::diagnosis::Verdict;
 use crate::fault::{Fault, did_you_mean, plain_io, shown};
 use crate::incident::{
-    Edit, Folder, Followed, Incident, Look, Mark, Opening, Similar, Stored, again, checks, opened,
+    Book, Edit, Folder, Followed, Incident, Look, Mark, Opening, Similar, Stored, again, checks, opened,
     plan_of, similar,
 };
 use crate::render::incident::{self as pages, Told};
@@ -195,15 +195,23 @@ pub(super) fn open(
     let seen = render::seen(&standing.report(context));
     let findings = Similar::holding(&standing.engine, &context.knowledge);
     let incident = opened(&Opening {
-        knowledge: &context.knowledge,
         assessment: &standing.assessment,
-        log: &standing.log,
+        book: book(context, Some(standing)),
         seen: &seen,
         findings: &findings,
-        time: context.now,
         by,
     });
     Ok(Some(folder(context).add(&incident)?))
+}
+
+/// What checks are looked up in.
+fn book<'a>(context: &'a Context, standing: Option<&'a Standing<'_>>) -> Book<'a> {
+    Book {
+        knowledge: &context.knowledge,
+        log: standing.map(|s| &s.log),
+        memory: standing.map(|s| s.engine.memory()),
+        now: context.now,
+    }
 }
 
 fn no_log() -> Stop {
@@ -280,12 +288,9 @@ impl<'a> Desk<'a> {
         incident: &'i Incident,
         standing: Option<&Standing<'_>>,
     ) -> pages::Standing<'i> {
-        let empty = crate::history::log::Log::default();
-        let log = standing.map_or(&empty, |s| &s.log);
-        let knowledge = &self.context.knowledge;
         pages::Standing {
             incident,
-            checks: checks(incident, log, knowledge, self.context.now),
+            checks: checks(incident, &book(self.context, standing)),
         }
     }
 
@@ -320,17 +325,12 @@ impl<'a> Desk<'a> {
         step: &str,
         log: Option<&str>,
     ) -> Result<Option<f64>, Stop> {
-        let verify = incident
-            .steps
-            .iter()
-            .find(|s| s.id == step)
-            .and_then(|s| s.verify.as_ref());
-        let reading = verify.and_then(|v| self.context.knowledge.vocabulary.reading(&v.id));
-        let (Some(reading), Some(standing)) = (reading, self.standing(log)?) else {
+        let found = incident.steps.iter().find(|s| s.id == step);
+        let Some(verify) = found.and_then(|s| s.verify.as_ref()) else {
             return Ok(None);
         };
-        let mut rows = standing.log.rows.iter().rev();
-        Ok(rows.find_map(|r| r.value(reading)).map(|v| v.amount))
+        let standing = self.standing(log)?;
+        Ok(book(self.context, standing.as_ref()).newest(&verify.id))
     }
 
     fn follow(&self, id: Option<&str>, log: Option<&str>, out: &mut Output) -> Result<(), Stop> {

@@ -2,7 +2,21 @@
 
 use super::model::{Checked, Incident};
 use crate::history::log::Log;
+use crate::history::memory::Memory;
 use crate::knowledge::Knowledge;
+
+/// What checks are looked up in.
+#[derive(Debug, Clone, Copy)]
+pub struct Book<'a> {
+    /// The words.
+    pub knowledge: &'a Knowledge,
+    /// The log; `None` where there is none.
+    pub log: Option<&'a Log>,
+    /// What is remembered of it: readings that are worked out from others.
+    pub memory: Option<&'a Memory>,
+    /// What is taken for now, unix seconds.
+    pub now: i64,
+}
 
 /// How a check stands.
 #[derive(Debug, Clone, PartialEq)]
@@ -37,16 +51,19 @@ impl Check {
     }
 }
 
-/// All checks of an incident as the log tells at `now`. Steps that are checked by the same thing moving the same way share
-/// one check: that of the step that was done, else the earliest.
-pub fn checks(incident: &Incident, log: &Log, knowledge: &Knowledge, now: i64) -> Vec<Check> {
+/// All checks of an incident as the log tells. Steps that are checked by the same thing moving the same way share one
+/// check: that of the step that was done, else the earliest. A step for later days is checked once it was done.
+pub fn checks(incident: &Incident, book: &Book<'_>) -> Vec<Check> {
     let mut all: Vec<Check> = Vec::new();
     for step in &incident.steps {
         let Some(verify) = &step.verify else { continue };
+        if step.done.is_none() && !step.is_soon() {
+            continue;
+        }
         let check = Check {
             step: step.id.clone(),
             done: step.done.is_some(),
-            look: looked(verify, step.done.unwrap_or(incident.opened), log, knowledge, now),
+            look: looked(verify, step.done.unwrap_or(incident.opened), book),
             verify: verify.clone(),
         };
         let same = all
@@ -69,15 +86,10 @@ pub fn checks(incident: &Incident, log: &Log, knowledge: &Knowledge, now: i64) -
 /// A reading counts as the answer when it is taken in the last quarter of the time there is, or later.
 const LATE: i64 = 4;
 
-/// How one check stands at `now`; `since` is when the step was done, or the incident opened.
-pub fn looked(
-    verify: &Checked,
-    since: i64,
-    log: &Log,
-    knowledge: &Knowledge,
-    now: i64,
-) -> Look {
-    let values = values(&verify.id, since, log, knowledge, now);
+/// How one check stands; `since` is when the step was done, or the incident opened.
+pub fn looked(verify: &Checked, since: i64, book: &Book<'_>) -> Look {
+    let now = book.now;
+    let values = book.values(&verify.id, since);
     let Some((time, value)) = values.last().copied() else {
         return if now < verify.due {
             Look::Waiting(None, None)
@@ -85,7 +97,7 @@ pub fn looked(
             Look::Unread
         };
     };
-    let least = least(&verify.id, verify.from, knowledge);
+    let least = least(&verify.id, verify.from, book.knowledge);
     // Without a value from before, the first one since is what it moves from.
     let from = verify
         .from
@@ -100,29 +112,39 @@ pub fn looked(
     }
 }
 
-/// Values after `since`, oldest first.
-fn values(
-    id: &str,
-    since: i64,
-    log: &Log,
-    knowledge: &Knowledge,
-    now: i64,
-) -> Vec<(i64, f64)> {
-    let words = &knowledge.vocabulary;
-    let rows = log.rows.iter().filter(|r| r.time > since && r.time <= now);
-    if let Some(reading) = words.reading(id) {
-        return rows
-            .filter_map(|r| r.value(reading).map(|v| (r.time, v.amount)))
-            .collect();
+impl Book<'_> {
+    /// Values of a reading or sign after `since`, oldest first.
+    pub fn values(&self, id: &str, since: i64) -> Vec<(i64, f64)> {
+        let words = &self.knowledge.vocabulary;
+        let during = |time: i64| time > since && time <= self.now;
+        if let Some(reading) = words.reading(id).filter(|r| words[*r].derived) {
+            let track = self.memory.and_then(|m| m.reading(reading));
+            let series = track.and_then(|t| t.newest()).map(|s| s.newest());
+            let values = series.into_iter().flatten().copied();
+            return values.filter(|(time, _)| during(*time)).collect();
+        }
+        let rows = self.log.map_or(&[][..], |log| &log.rows);
+        let rows = rows.iter().filter(|r| during(r.time));
+        if let Some(reading) = words.reading(id) {
+            return rows
+                .filter_map(|r| r.value(reading).map(|v| (r.time, v.amount)))
+                .collect();
+        }
+        let Some(sign) = words.sign(id) else {
+            return Vec::new();
+        };
+        rows.filter_map(|r| {
+            let (_, seen) = r.signs.iter().find(|(s, _)| *s == sign)?;
+            Some((r.time, f64::from(u8::from(*seen))))
+        })
+        .collect()
     }
-    let Some(sign) = words.sign(id) else {
-        return Vec::new();
-    };
-    rows.filter_map(|r| {
-        let (_, seen) = r.signs.iter().find(|(s, _)| *s == sign)?;
-        Some((r.time, f64::from(u8::from(*seen))))
-    })
-    .collect()
+
+    /// The newest value of a reading; signs have none to move from.
+    pub fn newest(&self, id: &str) -> Option<f64> {
+        self.knowledge.vocabulary.reading(id)?;
+        self.values(id, i64::MIN).last().map(|v| v.1)
+    }
 }
 
 /// The smallest difference that is one.

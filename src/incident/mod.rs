@@ -16,7 +16,7 @@ mod store;
 
 pub use again::{Again, again};
 pub use edit::{Edit, Mark, edited};
-pub use follow::{Check, Look, checks, looked};
+pub use follow::{Book, Check, Look, checks, looked};
 pub use model::{
     Avoided, Checked, Closed, Followed, Incident, MadeBy, Note, PlanStep, Ranked, Reopened, Taken,
 };

@@ -61,6 +61,13 @@ pub struct Taken {
     pub by: Option<String>,
 }
 
+impl Taken {
+    /// Whether it is for the first hours, not for later days.
+    pub fn is_soon(&self) -> bool {
+        ["now", "hours"].contains(&self.when.as_str())
+    }
+}
+
 /// Something to leave alone.
 #[derive(Debug, Clone, PartialEq, Eq)]
 pub struct Avoided {

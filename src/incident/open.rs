@@ -1,25 +1,21 @@
 //! A new incident from an assessment: what was seen, the ranking, the steps chosen, the checks due.
 
+use super::follow::Book;
 use super::model::{Avoided, Checked, Incident, MadeBy, Ranked, Taken};
 use crate::assessment::{Assessment, StepReport};
-use crate::history::log::Log;
 use crate::knowledge::{Knowledge, When};
 
 /// What an incident is opened from.
 #[derive(Debug, Clone, Copy)]
 pub struct Opening<'a> {
-    /// The words.
-    pub knowledge: &'a Knowledge,
     /// The outcome of the diagnosis.
     pub assessment: &'a Assessment,
-    /// The log it rests on.
-    pub log: &'a Log,
+    /// What it rests on, and what is taken for now.
+    pub book: Book<'a>,
     /// What was seen, in words.
     pub seen: &'a [String],
     /// Ids of the findings and signs that hold.
     pub findings: &'a [String],
-    /// When, unix seconds.
-    pub time: i64,
     /// Who.
     pub by: Option<&'a str>,
 }
@@ -58,12 +54,12 @@ pub fn opened(opening: &Opening<'_>) -> Incident {
     Incident {
         id: String::new(),
         title,
-        opened: opening.time,
+        opened: opening.book.now,
         by: opening.by.map(str::to_owned),
         verdict: a.verdict.word().to_owned(),
         seen: opening.seen.to_vec(),
         findings: opening.findings.to_vec(),
-        made_by: made_by(opening.knowledge),
+        made_by: made_by(opening.book.knowledge),
         ranking: ranking(a),
         steps,
         avoid: a
@@ -107,7 +103,7 @@ pub(super) fn ranking(assessment: &Assessment) -> Vec<Ranked> {
 
 fn taken(step: &StepReport, opening: &Opening<'_>) -> Taken {
     // A step reckons from the last row, an incident from when it was opened.
-    let later = (opening.time - opening.assessment.as_of).max(0);
+    let later = (opening.book.now - opening.assessment.as_of).max(0);
     Taken {
         id: step.id.clone(),
         text: step.text.clone(),
@@ -118,18 +114,9 @@ fn taken(step: &StepReport, opening: &Opening<'_>) -> Taken {
             id: v.id.clone(),
             direction: v.direction.clone(),
             due: v.by + later,
-            from: last(opening.knowledge, opening.log, &v.id, opening.time),
+            from: opening.book.newest(&v.id),
         }),
         done: None,
         by: None,
     }
-}
-
-/// The last value of a reading at or before a time, in its kept unit.
-pub(super) fn last(knowledge: &Knowledge, log: &Log, id: &str, upto: i64) -> Option<f64> {
-    let reading = knowledge.vocabulary.reading(id)?;
-    let rows = log.rows.iter().rev().filter(|r| r.time <= upto);
-    rows.filter_map(|r| r.value(reading))
-        .map(|v| v.amount)
-        .next()
 }

@@ -35,14 +35,16 @@ pub struct Card {
     pub temperature: Option<f64>,
 }
 
-/// What stops, the causes that it is, and whether the oxygen of the water decides how long there is. Of two causes the
-/// steps of both count.
-const STOPS: [(&str, &[&str], bool); 4] = [
-    ("air", &["aeration-failure"], true),
-    ("pump", &["circulation-stopped"], false),
-    ("heat", &["water-chilled"], false),
-    ("power", &["aeration-failure", "circulation-stopped"], true),
+/// What stops, the causes that it is, whether the oxygen of the water decides how long there is, and the step that goes
+/// first whatever it is worth: without power, air that needs none. Of two causes the steps of both count.
+const STOPS: [(&str, &[&str], bool, &str); 4] = [
+    ("air", &["aeration-failure"], true, ""),
+    ("pump", &["circulation-stopped"], false, ""),
+    ("heat", &["water-chilled"], false, ""),
+    ("power", &["aeration-failure", "circulation-stopped"], true, "backup-oxygen"),
 ];
+/// The line for people, where no step is marked as such.
+const PEOPLE: &str = "people-first";
 /// Things to do.
 const FIRST: usize = 3;
 /// Cautions about people on the card.
@@ -75,8 +77,8 @@ pub fn card(knowledge: &Knowledge, site: &Site, limits: &Limits<'_>, log: Option
     Card {
         stops: STOPS
             .iter()
-            .map(|(what, causes, by_oxygen)| {
-                let steps = first_steps(knowledge, site, causes);
+            .map(|(what, causes, by_oxygen, opening)| {
+                let steps = first_steps(knowledge, site, causes, opening);
                 Stop {
                     what,
                     minutes: minutes.filter(|_| *by_oxygen),
@@ -88,7 +90,7 @@ pub fn card(knowledge: &Knowledge, site: &Site, limits: &Limits<'_>, log: Option
         people: knowledge
             .steps
             .iter()
-            .find(|s| s.people_first)
+            .find(|s| s.people_first || s.id == PEOPLE)
             .map(|s| s.text.clone()),
         cautions: knowledge
             .cautions
@@ -141,7 +143,12 @@ fn minutes(
 }
 
 /// What helps most under these causes, of what is done at once and the site has the equipment for.
-fn first_steps<'k>(knowledge: &'k Knowledge, site: &Site, causes: &[&str]) -> Vec<&'k Step> {
+fn first_steps<'k>(
+    knowledge: &'k Knowledge,
+    site: &Site,
+    causes: &[&str],
+    opening: &str,
+) -> Vec<&'k Step> {
     let causes: Vec<CauseId> = causes.iter().filter_map(|c| knowledge.cause(c)).collect();
     let has = |step: &Step| match step.equipment.as_deref() {
         Some("solids_filter") => site.equipment.solids_filter != Some(false),
@@ -159,11 +166,12 @@ fn first_steps<'k>(knowledge: &'k Knowledge, site: &Site, causes: &[&str]) -> Ve
     let mut steps: Vec<(&Step, f64)> = knowledge
         .steps
         .iter()
-        .filter(|s| s.when == When::Now && !s.people_first && !s.temptation && has(s))
+        .filter(|s| s.when == When::Now && !s.people_first && s.id != PEOPLE && !s.temptation && has(s))
         .map(|s| (s, good(s)))
         .filter(|(_, good)| *good > 0.0)
         .collect();
     // Of equal good the one that is done sooner.
     steps.sort_by(|a, b| b.1.total_cmp(&a.1).then(a.0.effort.total_cmp(&b.0.effort)));
+    steps.sort_by_key(|(step, _)| step.id != opening); // stable
     steps.into_iter().take(FIRST).map(|s| s.0).collect()
 }

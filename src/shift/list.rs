@@ -7,6 +7,7 @@ use super::trend::{Trend, trends};
 use super::window::Window;
 use crate::assessment::Assessment;
 use crate::course;
+use crate::history::balance::inputs;
 use crate::history::log::Log;
 use crate::incident::{Check, Incident, PlanStep, Taken};
 use crate::site::PlaceKind;
@@ -94,6 +95,8 @@ impl Checklist {
     }
 }
 
+/// So much of what would tell more is asked for.
+const TELL: usize = 4;
 /// What is done without walking is done here.
 const BENCH: &str = "bench";
 
@@ -116,7 +119,7 @@ pub fn checklist(ground: &Ground<'_, '_>, window: Window) -> Checklist {
             found.push(of_trend(trend, ground, &window));
         }
     }
-    for missing in ground.assessment.map_or(&[][..], |a| &a.missing) {
+    for missing in ground.assessment.map_or(&[][..], |a| &a.missing).iter().take(TELL) {
         let words = &ground.advice.knowledge.vocabulary;
         let reading = words.reading(&missing.id);
         if reading.is_none_or(|id| !asked(&found, id) && !words[id].derived) {
@@ -194,6 +197,18 @@ fn place_of(id: &str, ground: &Ground<'_, '_>) -> String {
         .map_or_else(|| BENCH.to_owned(), |r| r.place.clone())
 }
 
+/// The blanks of a reading: its own, or those it is worked out from.
+fn measured(id: &str, ground: &Ground<'_, '_>) -> Vec<Blank> {
+    let words = &ground.advice.knowledge.vocabulary;
+    let of = |id: &str| words.reading(id).map(|r| blank(r, ground));
+    match words.reading(id) {
+        Some(reading) if words[reading].derived => {
+            inputs(id).iter().filter_map(|id| of(id)).collect()
+        }
+        _ => of(id).into_iter().collect(),
+    }
+}
+
 fn of_incident(id: &str, pending: Pending, ground: &Ground<'_, '_>) -> (String, Item) {
     let words = &ground.advice.knowledge.vocabulary;
     match pending {
@@ -211,7 +226,7 @@ fn of_incident(id: &str, pending: Pending, ground: &Ground<'_, '_>) -> (String, 
                 due: Some(check.verify.due),
                 last: None,
                 every: None,
-                blanks: reading.map(|id| blank(id, ground)).into_iter().collect(),
+                blanks: measured(&what, ground),
                 rank: 1,
                 kind: Kind::Check(id.to_owned(), check),
             };

@@ -2,7 +2,7 @@
 
 use super::list::Ground;
 use super::window::Window;
-use crate::incident::{Check, Incident, Look, PlanStep, Taken, checks};
+use crate::incident::{Book, Check, Incident, Look, PlanStep, Taken, checks};
 
 /// One thing an incident calls for.
 #[derive(Debug, Clone)]
@@ -24,9 +24,15 @@ pub(super) fn pending(
     ground: &Ground<'_, '_>,
     window: &Window,
 ) -> Vec<Pending> {
-    let empty = crate::history::log::Log::default();
-    let log = ground.log.unwrap_or(&empty);
-    let checks = checks(incident, log, ground.advice.knowledge, ground.now);
+    let checks = checks(
+        incident,
+        &Book {
+            knowledge: ground.advice.knowledge,
+            log: ground.log,
+            memory: Some(ground.advice.engine.memory()),
+            now: ground.now,
+        },
+    );
     let mut found: Vec<Pending> = checks
         .into_iter()
         .filter(|c| match c.look {
@@ -45,7 +51,7 @@ pub(super) fn pending(
     let steps = incident
         .steps
         .iter()
-        .filter(|s| s.done.is_none() && ["now", "hours"].contains(&s.when.as_str()));
+        .filter(|s| s.done.is_none() && s.when != "recovery");
     found.extend(steps.take(STEPS).cloned().map(Pending::Step));
     found
 }

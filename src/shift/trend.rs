@@ -68,7 +68,9 @@ fn trend(id: ReadingId, ground: &Ground<'_, '_>) -> Option<Trend> {
         let outside = beyond > 0.0;
         let toward = if high { pace } else { -pace };
         let nears = way != 0 && toward > 0.0 && -beyond < toward * AHEAD;
-        (outside || nears).then_some(Trend {
+        // What lies outside and stays there is no news: it is read again in half the time of its round.
+        let news = way != 0 || ground.now - time >= usual(id, ground) / 2;
+        ((outside && news) || nears).then_some(Trend {
             reading: id,
             value,
             time,
@@ -80,4 +82,14 @@ fn trend(id: ReadingId, ground: &Ground<'_, '_>) -> Option<Trend> {
     };
     let high = limit(Side::High).and_then(|l| one(l, true));
     high.or_else(|| limit(Side::Low).and_then(|l| one(l, false)))
+}
+
+/// How often a reading is read anyway, seconds; a day where no round asks for it.
+fn usual(id: ReadingId, ground: &Ground<'_, '_>) -> i64 {
+    let rounds = ground.advice.knowledge.rounds.iter();
+    rounds
+        .filter(|r| r.readings.contains(&id))
+        .map(|r| r.every)
+        .min()
+        .unwrap_or(86_400)
 }

@@ -29,6 +29,25 @@ impl<'a> Words<'a> {
         }
     }
 
+    /// A time of the shift by its hour, another by its day.
+    fn day(&self, time: i64) -> String {
+        let zone = &self.sheet.site.timezone;
+        let start = self.sheet.list.window.start;
+        if when::day(time, zone) == when::day(start, zone) {
+            when::hour(time, zone)
+        } else {
+            when::day(time, zone)
+        }
+    }
+
+    /// Which incident it is for, where more than one is open.
+    fn of_incident(&self, id: &str) -> String {
+        match self.sheet.list.open.len() {
+            0 | 1 => String::new(),
+            _ => format!(" [{id}]"),
+        }
+    }
+
     fn amount(&self, id: &str, value: f64) -> String {
         let words = &self.sheet.knowledge.vocabulary;
         match words.reading(id) {
@@ -61,15 +80,19 @@ impl<'a> Words<'a> {
                     _ => format!("due {due}"),
                 };
                 format!(
-                    "{} Should be {should}; {state} [{incident}]",
-                    ended(&sentence(&item.text))
+                    "{} Should be {should}; {state}{}",
+                    ended(&sentence(&item.text)),
+                    self.of_incident(incident)
                 )
             }
-            Kind::Step(incident, _) => format!("{} [{incident}]", item.text),
+            Kind::Step(incident, step) => {
+                format!("{} (step {}){}", item.text, step.id, self.of_incident(incident))
+            }
             Kind::Plan(incident, number, step) => format!(
-                "{}: {} [{incident}, plan-{number}]",
+                "{}: {} (step plan-{number}){}",
                 self.at(step.at),
                 ended(&sentence(&item.text)),
+                self.of_incident(incident)
             ),
             Kind::Trend(trend) => {
                 let words = &self.sheet.knowledge.vocabulary;
@@ -94,6 +117,10 @@ impl<'a> Words<'a> {
                     sentence(&reading.name),
                     units::amount(reading, trend.value, system),
                 )
+            }
+            // Which causes it tells apart is on the page of the diagnosis; here there is no room for it.
+            Kind::Tell(_, why) if why.starts_with("would tell") => {
+                format!("{} (it tells the likely causes apart)", sentence(&item.text))
             }
             Kind::Tell(_, why) => format!("{} ({why})", sentence(&item.text)),
             Kind::Extra(_) => format!("{} ({})", item.text, item.why),
@@ -140,7 +167,7 @@ impl<'a> Words<'a> {
         };
         let last = blank
             .last
-            .map(|(time, value)| format!("last {}, {}", number(value), self.at(time)));
+            .map(|(time, value)| format!("last {}, {}", number(value), self.day(time)));
         let parts: Vec<String> = band.into_iter().chain(last).collect();
         parts.join("; ")
     }

@@ -32,10 +32,11 @@ pub fn handover(standings: &[Standing<'_>], next: Option<&str>, told: &Told<'_>)
 
 fn one(standing: &Standing<'_>, words: &Words<'_>, page: &mut Vec<Block>) {
     let incident = standing.incident;
-    page.push(Block::Heading(format!("{} ({})", incident.title, incident.id)));
+    page.push(Block::Heading(incident.title.clone()));
     let seen = some(&incident.seen, SEEN);
     page.push(Block::Para(format!(
-        "Since {}{}. {seen}",
+        "{}. Since {}{}. {seen}",
+        incident.id,
         words.at(incident.opened),
         incident
             .by
