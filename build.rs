@@ -15,6 +15,10 @@ mod knowledge {
     mod ids;
     #[path = "../src/knowledge/load/mod.rs"]
     mod load;
+    #[path = "../src/knowledge/pace.rs"]
+    mod pace;
+    #[path = "../src/knowledge/pace_words.rs"]
+    mod pace_words;
     #[path = "../src/knowledge/schema.rs"]
     mod schema;
     #[path = "../src/knowledge/test.rs"]
@@ -22,6 +26,10 @@ mod knowledge {
 
     pub use ids::{CauseId, FindingId, StepId};
     pub use load::load;
+    pub use pace::{
+        Dosable, InstrumentDoubt, Kinetic, Kinetics, PaceLimit, PaceLimits, Pacing, Use,
+    };
+    pub use pace_words::PaceWords;
     pub use schema::*;
     pub use test::{Bound, Change, Limit, LimitLevel, Over, Ramp, Side, SiteTest, Test};
 }

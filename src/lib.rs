@@ -15,6 +15,7 @@
 //! | [`diagnosis`] | joint ranking of causes, the balance sheet, what to measure next |
 //! | [`course`] | ranked steps, paced corrections, projections |
 //! | [`assessment`] | causes, steps and cautions put together: the value that a page shows |
+//! | [`walk`] | asking at the tank: what next, and when to stop |
 //! | [`render`] | text and JSON of the values above |
 //! | [`cli`] | one file a command: arguments in, a call, a page out |
 
@@ -33,4 +34,5 @@ pub mod render;
 pub mod shift;
 pub mod site;
 pub mod vocabulary;
+pub mod walk;
 pub mod water;

@@ -1,6 +1,6 @@
 //! Puts a diagnosis together: facts, causes, verdict, steps, what is missing, cautions.
 
-use super::overrides::overrides;
+use super::overrides::{overrides, site_notes};
 use super::routine::{Overdue, missing, overdue};
 use super::{
     Assessment, Avoid, CauseReport, Derived, Missing, StepReport, Tell, VerifyReport, family,
@@ -180,6 +180,7 @@ impl<'k> Assessor<'k> {
             missing: self.missing(&ground, &told),
             derived: self.derived(engine),
             projections: Vec::new(),
+            site_notes: site_notes(self.knowledge, &self.site),
             overrides: overrides(self.knowledge, &self.site),
             cautions: self
                 .knowledge

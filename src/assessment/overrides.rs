@@ -39,3 +39,17 @@ pub(super) fn overrides(knowledge: &Knowledge, site: &Site) -> Vec<Override> {
     }
     list
 }
+
+/// What is odd about the site file: an area that its media do not bear out.
+pub(super) fn site_notes(knowledge: &Knowledge, site: &Site) -> Vec<String> {
+    let area = site.biofilter_area(|kind| knowledge.media_m2_per_m3(kind));
+    area.and_then(|area| Some((area.m2, area.disagrees_with_media?)))
+        .map(|(stated, media)| {
+            format!(
+                "The biofilter area is given as {stated:.0} m2, but the media would have {media:.0} m2. The given area \
+                 is used; check both."
+            )
+        })
+        .into_iter()
+        .collect()
+}

@@ -189,6 +189,8 @@ pub struct Assessment {
     pub derived: Vec<Derived>,
     /// When limits will be passed if nothing is done.
     pub projections: Vec<Projection>,
+    /// What is odd about the site file, as sentences.
+    pub site_notes: Vec<String>,
     /// What this farm has changed in the rule base.
     pub overrides: Vec<Override>,
     /// Ids and texts of the cautions that apply.

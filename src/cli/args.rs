@@ -10,6 +10,7 @@ use super::record::RecordArgs;
 use super::review::ReviewArgs;
 use super::shift::ShiftArgs;
 use super::site::SiteArgs;
+use super::walk::WalkArgs;
 use super::water::WaterArgs;
 use super::why::WhyArgs;
 
@@ -119,6 +120,8 @@ pub(super) enum Command {
     Why(WhyArgs),
     /// Checks and lists the rule base, and says what it rests on
     Knowledge(KnowledgeArgs),
+    /// Asks at the tank what is to be seen and measured, and diagnoses
+    Walk(WalkArgs),
     /// Makes one calculation about water; alone it lists the calculations there are
     Water(WaterArgs),
 }

@@ -56,7 +56,7 @@ impl Context {
     /// A time given on the command line, in the site's zone where it says none.
     pub fn time(&self, option: &str, text: &str) -> Result<i64, Stop> {
         log::read_time(text, &self.site.timezone).map_err(|fault| {
-            Stop::Usage(Fault {
+            Stop::usage(Fault {
                 reason: format!("`{option}`: {}", fault.reason),
                 ..fault
             })
@@ -74,10 +74,7 @@ impl Context {
     /// What the site knows, for single calculations.
     pub fn site_values(&self) -> SiteValues {
         let site = &self.site;
-        let per_m3 = |kind: &str| {
-            let media = self.knowledge.media.iter().find(|m| m.id == kind)?;
-            Some(media.area_m2_per_l * 1000.0)
-        };
+        let area = site.biofilter_area(|kind| self.knowledge.media_m2_per_m3(kind));
         SiteValues {
             salinity: None,
             elevation_m: site.elevation_m,
@@ -85,7 +82,7 @@ impl Context {
             biomass_kg: site.biomass_kg,
             feed_kg_per_day: site.feed_kg_per_day,
             feed_protein_percent: site.feed_protein_percent,
-            biofilter_area_m2: site.biofilter_area(per_m3).map(|area| area.m2),
+            biofilter_area_m2: area.map(|area| area.m2),
             plant_area_m2: site.plant_area_m2,
             makeup_ph: site.makeup.ph,
             makeup_alkalinity: site.makeup.alkalinity,
@@ -147,7 +144,7 @@ pub(super) fn only(format: Format, command: &str, has: &[Format]) -> Result<(), 
         return Ok(());
     }
     let names: Vec<&str> = has.iter().map(|f| f.word()).collect();
-    Err(Stop::Usage(Fault::whole(
+    Err(Stop::usage(Fault::whole(
         "no-such-format",
         format!("`{command}` can't be written as {}", format.word()),
         format!("use --format {}", names.join(" or ")),

@@ -177,7 +177,7 @@ fn sources(
     if let Some(key) = key
         && !known.iter().any(|s| s.key == key)
     {
-        return Err(Stop::Usage(Fault::whole(
+        return Err(Stop::usage(Fault::whole(
             "unknown-id",
             format!("no source is called `{}`", shown(key)),
             did_you_mean(

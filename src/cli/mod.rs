@@ -16,6 +16,7 @@ mod shift;
 mod site;
 mod standing;
 mod stop;
+mod walk;
 pub mod water;
 mod why;
 
@@ -42,6 +43,7 @@ pub fn run(args: impl IntoIterator<Item = OsString>) -> Exit {
         Command::Review(args) => review::run(args, &options.common, &mut output),
         Command::Why(args) => why::run(args, &options.common, &mut output),
         Command::Knowledge(args) => knowledge::run(args, &options.common, &mut output),
+        Command::Walk(args) => walk::run(args, &options.common, &mut output),
         Command::Record(args) => record::run(args, &options.common, &mut output),
         Command::Shift(args) => shift::run(args, &options.common, &mut output),
         Command::Incident(args) => incident::run(args, &options.common, &mut output),
@@ -68,7 +70,8 @@ fn calculate(args: &WaterArgs, common: &Common, output: &mut Output) -> Result<E
     };
     let context = Context::load(common)?;
     let mut text = Vec::new();
-    water::run(args, format, &context.site_values(), &mut text).map_err(Stop::Water)?;
+    water::run(args, format, &context.site_values(), &mut text)
+        .map_err(|error| Stop::Water(Box::new(error)))?;
     output.write(&String::from_utf8_lossy(&text))?;
     Ok(Exit::Done)
 }

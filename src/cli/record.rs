@@ -123,11 +123,11 @@ fn told(
 /// Asks for the readings that are due, one by one.
 fn asked(context: &Context, args: &RecordArgs, telling: &Telling<'_>) -> Result<Given, Stop> {
     let no_terminal = || {
-        Stop::Usage(Fault::whole(
+        Stop::Usage(Box::new(Fault::whole(
             "no-terminal",
             "nothing is given to record, and there is no terminal to ask at",
             "write it like `gillside record ph=6.4 nitrite=0.3`, or fill in a form (`gillside shift --form`) and give it with `--form`",
-        ))
+        )))
     };
     if !(std::io::stdin().is_terminal() && std::io::stderr().is_terminal()) {
         return Err(no_terminal());

@@ -26,8 +26,9 @@ pub(super) fn run(
     for (at, row) in log.rows.iter().enumerate() {
         engine.observe(row);
         let last = at + 1 == log.rows.len();
-        // The same facts rank the same; only what is due changes with time alone.
-        if !last && version == Some(engine.version()) && verdict > Verdict::Watch {
+        // The same facts rank the same, but for what falls due with time and how often an event is noted.
+        let same = version == Some(engine.version()) && row.events.is_empty();
+        if !last && same && verdict > Verdict::Watch {
             continue;
         }
         version = Some(engine.version());

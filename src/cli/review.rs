@@ -102,7 +102,8 @@ pub(super) fn read(
         return Err(Stop::Input(refused().map(fault_of).collect()));
     }
     if !log.is_usable() {
-        let mut faults: Vec<Fault> = refused().map(fault_of).collect();
+        // All that was noticed may be why, not only what cost a row.
+        let mut faults: Vec<Fault> = log.problems.iter().map(fault_of).collect();
         faults.push(match as_of {
             Some(_) if log.rows_read == 0 => Fault::whole(
                 "no-rows",
@@ -127,7 +128,7 @@ fn inputs(named: &[String], context: &Context) -> Result<Vec<Input>, Stop> {
     }
     match &context.site.log {
         Some(path) => Ok(vec![Input::Path(context.beside_site(path))]),
-        None => Err(Stop::Usage(Fault::whole(
+        None => Err(Stop::usage(Fault::whole(
             "no-log",
             "no log is named",
             "name one, such as `gillside review log.csv`, or put `log = \"log.csv\"` into the site file",

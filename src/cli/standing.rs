@@ -72,11 +72,11 @@ pub(super) fn log_path(context: &Context, named: Option<&str>) -> Result<PathBuf
     match (named, &context.site.log) {
         (Some(name), _) => Ok(PathBuf::from(name)),
         (None, Some(path)) => Ok(context.beside_site(path)),
-        (None, None) => Err(Stop::Usage(Fault::whole(
+        (None, None) => Err(Stop::Usage(Box::new(Fault::whole(
             "no-log",
             "no log is named",
             "name one with `--log log.csv`, or put `log = \"log.csv\"` into the site file",
-        ))),
+        )))),
     }
 }
 
@@ -84,7 +84,7 @@ impl From<NotWritten> for Stop {
     fn from(why: NotWritten) -> Self {
         match why {
             NotWritten::Refused(faults) => Self::Input(faults),
-            NotWritten::Failed(fault) => Self::Failed(fault),
+            NotWritten::Failed(fault) => Self::Failed(Box::new(fault)),
         }
     }
 }

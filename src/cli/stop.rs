@@ -10,15 +10,15 @@ use crate::fault::Fault;
 #[derive(Debug)]
 pub(super) enum Stop {
     /// Asked for in a way that can't be answered.
-    Usage(Fault),
+    Usage(Box<Fault>),
     /// An input can't be used.
     Input(Vec<Fault>),
     /// The rule base can't be used.
     Rules(Vec<Fault>),
     /// A calculation gives no number; the message holds its cure.
-    Water(WaterError),
+    Water(Box<WaterError>),
     /// A file can't be changed, which is not the user's doing.
-    Failed(Fault),
+    Failed(Box<Fault>),
     /// The answer can't be written.
     Write(io::Error),
     /// Whoever reads the answer has read enough.
@@ -26,6 +26,11 @@ pub(super) enum Stop {
 }
 
 impl Stop {
+    /// Asked for in a way that can't be answered.
+    pub fn usage(fault: Fault) -> Self {
+        Self::Usage(Box::new(fault))
+    }
+
     /// How the run ends.
     pub fn exit(&self) -> Exit {
         match self {
@@ -53,7 +58,7 @@ impl Stop {
     /// What is to be said about it.
     pub fn faults(&self) -> Vec<Fault> {
         match self {
-            Self::Usage(fault) | Self::Failed(fault) => vec![fault.clone()],
+            Self::Usage(fault) | Self::Failed(fault) => vec![fault.as_ref().clone()],
             Self::Input(faults) | Self::Rules(faults) => faults.clone(),
             Self::Write(error) => vec![Fault::whole(
                 "unwritable",

@@ -52,7 +52,7 @@ pub(super) fn run(args: &WhyArgs, common: &Common, out: &mut Output) -> Result<E
 }
 
 fn unknown(book: &why::Book<'_>, id: &str) -> Stop {
-    Stop::Usage(Fault::whole(
+    Stop::usage(Fault::whole(
         "unknown-id",
         format!("nothing is called `{}`", shown(id)),
         book.nearest(id).map_or_else(
@@ -68,7 +68,7 @@ fn proof(args: &WhyArgs, context: &Context, book: &why::Book<'_>) -> Result<Vec<
     if cause.is_none() && finding.is_none() {
         return Err(match book.explain(&args.id) {
             None => unknown(book, &args.id),
-            Some(_) => Stop::Usage(Fault::whole(
+            Some(_) => Stop::usage(Fault::whole(
                 "no-proof",
                 format!(
                     "`{}` is neither a cause nor a finding, so no log proves it",

@@ -3,7 +3,7 @@
 
 use crate::diagnosis::{Decision, Doctor, Ranking, Verdict};
 use crate::engine::{Degree, Engine, Limits};
-use crate::knowledge::{CauseId, Knowledge, Step, StepId, Test, Urgency};
+use crate::knowledge::{CauseId, Knowledge, Step, StepId, Test, Urgency, When};
 use crate::site::Site;
 
 /// One step and what is to be said of it.
@@ -45,6 +45,24 @@ pub struct Advice {
 const FIRST_AID: usize = 5;
 /// At most so many things to avoid: who is told of everything remembers nothing.
 const AVOID: usize = 7;
+/// At most so many steps of each time beside first aid.
+const MOST: [(When, usize); 4] = [
+    (When::Now, 5),
+    (When::Hours, 5),
+    (When::Days, 4),
+    (When::Recovery, 4),
+];
+/// A step worth less than this share of the best of its time, or of the best of all, is left out.
+const LEAST_OF_ITS_TIME: f64 = 0.2;
+const LEAST_OF_ALL: f64 = 0.06;
+/// Causes named with a step.
+const BECAUSE: usize = 4;
+/// A cause this likely may be acted on, and not only looked at, while nothing is urgent; the smaller one where it takes
+/// weeks to harm, and a wrong step does little.
+const ACT_ON_WATCH: f64 = 0.5;
+const ACT_ON_WATCH_WEEKS: f64 = 0.25;
+/// What is forbidden but would help is named under avoid with this share of its good as harm.
+const TEMPTS: f64 = 0.4;
 /// When fish may die within minutes, a cause that kills in minutes counts at least so likely for first aid.
 const LEAST_FOR_FIRST_AID: f64 = 0.02;
 
@@ -112,6 +130,18 @@ impl Ground<'_, '_> {
         standing
     }
 
+    /// The law or a life hangs on it: when what it needs is known to hold it leads its list and is never left out.
+    fn pinned(&self, step: StepId) -> bool {
+        let step = &self.knowledge[step];
+        step.pinned && step.needs.as_ref().is_none_or(|n| self.holds(n))
+    }
+
+    /// First aid can't wait for measurements: only what is known to forbid it stops a step. What it needs must be known.
+    fn fit_for_first_aid(&self, step: &Step) -> bool {
+        let needed = step.needs.as_ref().is_none_or(|n| self.holds(n));
+        needed && matches!(self.standing(step), Standing::Open | Standing::CheckFirst)
+    }
+
     fn has(&self, key: &str) -> Option<bool> {
         let equipment = &self.site.equipment;
         match key {
@@ -176,61 +206,176 @@ fn prove_degree(
 /// Advises.
 pub fn advise(ground: &Ground<'_, '_>) -> Advice {
     let mut advice = Advice::default();
-    let floor = ground.knowledge.scales.step_floor;
+    if ground.decision.verdict == Verdict::Steady {
+        return advice;
+    }
+    if ground.decision.first_aid {
+        advice.first_aid = first_aid(ground);
+    }
+    let aid: Vec<StepId> = advice.first_aid.iter().map(|a| a.step).collect();
     for (number, step) in ground.knowledge.steps.iter().enumerate() {
         let Ok(id) = u16::try_from(number).map(StepId) else {
             continue;
         };
-        let standing = ground.standing(step);
-        let good = ground.expected(step.helps.iter(), |_| 0.0);
-        let harm = ground.expected(step.harms.iter(), |_| 0.0);
-        let sum = |shares: &[(CauseId, f64)]| shares.iter().map(|s| s.1).sum::<f64>();
-        let worth = sum(&good) - sum(&harm);
-        let likely = good.iter().any(|(c, _)| ground.ranking.of(*c) >= floor);
-        let advised = !step.temptation
-            && worth > floor / 4.0
-            && likely
-            && matches!(standing, Standing::Open | Standing::CheckFirst)
-            && ground.decision.verdict > Verdict::Steady;
-        if advised {
+        let weighed = weigh(ground, step);
+        if weighed.advised(ground, step) {
             advice.steps.push(Advised {
                 step: id,
-                because: good.iter().map(|s| s.0).take(4).collect(),
-                check_first: standing == Standing::CheckFirst,
-                worth,
+                because: weighed.good.iter().map(|s| s.0).take(BECAUSE).collect(),
+                check_first: weighed.standing == Standing::CheckFirst,
+                worth: weighed.worth(),
             });
-        } else if !step.avoid_text.is_empty() && ground.decision.verdict > Verdict::Steady {
-            let forbidden = standing == Standing::Forbidden && likely;
-            let expected = sum(&harm);
-            if forbidden
-                || (standing != Standing::Pointless
-                    && expected >= ground.knowledge.scales.avoid_floor
-                    && worth < 0.0)
-            {
-                advice.avoid.push(Warned {
-                    step: id,
-                    because: harm.iter().map(|s| s.0).take(4).collect(),
-                    harm: expected.max(if forbidden { sum(&good) } else { 0.0 }),
-                });
-            }
+        } else if let Some(harm) = weighed.warned(ground, step)
+            && !aid.contains(&id)
+        {
+            advice.avoid.push(Warned {
+                step: id,
+                because: weighed.harm.iter().map(|s| s.0).take(BECAUSE).collect(),
+                harm,
+            });
         }
     }
-    let when = |a: &Advised| ground.knowledge[a.step].when;
+    let pinned = |w: &Warned| ground.pinned(w.step);
     advice
-        .steps
-        .sort_by(|a, b| when(a).cmp(&when(b)).then(b.worth.total_cmp(&a.worth)));
-    advice.avoid.sort_by(|a, b| b.harm.total_cmp(&a.harm));
+        .avoid
+        .sort_by(|a, b| pinned(b).cmp(&pinned(a)).then(b.harm.total_cmp(&a.harm)));
+    one_of_each_choice(&mut advice.avoid, |w| choice(ground, w.step));
     advice.avoid.truncate(AVOID);
-    if ground.decision.first_aid {
-        advice.first_aid = first_aid(ground);
-        let aid: Vec<StepId> = advice.first_aid.iter().map(|a| a.step).collect();
-        advice.avoid.retain(|w| !aid.contains(&w.step));
-    }
+    shorten(ground, &mut advice.steps, &aid);
     advice
 }
 
+/// What one step is worth under the facts.
+struct Weighed {
+    standing: Standing,
+    good: Vec<(CauseId, f64)>,
+    harm: Vec<(CauseId, f64)>,
+    /// How likely the likeliest cause is that it helps under.
+    likeliest: f64,
+    /// One of those causes is likely enough to act on while nothing is urgent.
+    on_watch: bool,
+}
+
+fn sum(shares: &[(CauseId, f64)]) -> f64 {
+    shares.iter().map(|s| s.1).sum()
+}
+
+fn weigh(ground: &Ground<'_, '_>, step: &Step) -> Weighed {
+    let good = ground.expected(step.helps.iter(), |_| 0.0);
+    Weighed {
+        standing: ground.standing(step),
+        harm: ground.expected(step.harms.iter(), |_| 0.0),
+        likeliest: good
+            .iter()
+            .map(|(c, _)| ground.ranking.of(*c))
+            .fold(0.0, f64::max),
+        on_watch: good.iter().any(|(c, _)| {
+            let least = match ground.knowledge[*c].urgency {
+                Urgency::Weeks => ACT_ON_WATCH_WEEKS,
+                _ => ACT_ON_WATCH,
+            };
+            ground.ranking.of(*c) >= least
+        }),
+        good,
+    }
+}
+
+impl Weighed {
+    fn worth(&self) -> f64 {
+        sum(&self.good) - sum(&self.harm)
+    }
+
+    fn likely(&self, ground: &Ground<'_, '_>) -> bool {
+        self.likeliest >= ground.knowledge.scales.step_floor
+    }
+
+    fn advised(&self, ground: &Ground<'_, '_>, step: &Step) -> bool {
+        // Nothing urgent: to look costs little; to act takes a likely cause, and hardly any harm under another.
+        let fits = step.looks
+            || ground.decision.verdict > Verdict::Watch
+            || (self.on_watch && sum(&self.harm) < sum(&self.good) / 4.0);
+        !step.temptation
+            && fits
+            && self.worth() > ground.knowledge.scales.step_floor / 4.0
+            && self.likely(ground)
+            && matches!(self.standing, Standing::Open | Standing::CheckFirst)
+    }
+
+    /// The harm that is worth a warning.
+    fn warned(&self, ground: &Ground<'_, '_>, step: &Step) -> Option<f64> {
+        if step.avoid_text.is_empty() || self.standing == Standing::Pointless {
+            return None;
+        }
+        let expected = sum(&self.harm);
+        if self.standing == Standing::Forbidden && self.likely(ground) {
+            // What would help but for what forbids it tempts most.
+            return Some(expected.max(sum(&self.good) * TEMPTS));
+        }
+        (expected >= ground.knowledge.scales.avoid_floor && self.worth() < 0.0).then_some(expected)
+    }
+}
+
+fn choice<'g>(ground: &'g Ground<'_, '_>, step: StepId) -> &'g str {
+    &ground.knowledge[step].choice
+}
+
+/// Of steps that stand for one another (half the feed, or none) the first of the list is kept.
+fn one_of_each_choice<'g, T>(list: &mut Vec<T>, choice: impl Fn(&T) -> &'g str) {
+    let mut taken: Vec<&str> = Vec::new();
+    list.retain(|item| {
+        let choice = choice(item);
+        let first = choice.is_empty() || !taken.contains(&choice);
+        if first && !choice.is_empty() {
+            taken.push(choice);
+        }
+        first
+    });
+}
+
+/// Puts the steps in order and leaves out what is worth least. What first aid says stays and is not counted.
+fn shorten(ground: &Ground<'_, '_>, steps: &mut Vec<Advised>, aid: &[StepId]) {
+    let when = |a: &Advised| ground.knowledge[a.step].when;
+    let in_aid = |a: &Advised| aid.contains(&a.step);
+    steps.sort_by(|a, b| in_aid(b).cmp(&in_aid(a)).then(b.worth.total_cmp(&a.worth)));
+    one_of_each_choice(steps, |a| choice(ground, a.step));
+    let pinned = |a: &Advised| ground.pinned(a.step);
+    steps.sort_by(|a, b| {
+        when(a)
+            .cmp(&when(b))
+            .then(pinned(b).cmp(&pinned(a)))
+            .then(b.worth.total_cmp(&a.worth))
+    });
+    let best = |of: Option<When>| {
+        steps
+            .iter()
+            .filter(|a| of.is_none_or(|w| when(a) == w))
+            .map(|a| a.worth)
+            .fold(0.0, f64::max)
+    };
+    let overall = best(None) * LEAST_OF_ALL;
+    let least: Vec<(When, f64, usize)> = MOST
+        .iter()
+        .map(|(w, most)| (*w, overall.max(best(Some(*w)) * LEAST_OF_ITS_TIME), *most))
+        .collect();
+    let mut counted = [0usize; MOST.len()];
+    steps.retain(|a| {
+        if in_aid(a) {
+            return true;
+        }
+        let Some(at) = least.iter().position(|(w, _, _)| *w == when(a)) else {
+            return true;
+        };
+        let (Some((_, least, most)), Some(count)) = (least.get(at), counted.get_mut(at)) else {
+            return true;
+        };
+        let kept = (a.worth >= *least || pinned(a)) && *count < *most;
+        *count += usize::from(kept);
+        kept
+    });
+}
+
 /// First aid: the line for people, then what does most good if any of the causes that kill in minutes is there. Only a
-/// `never_if` known to hold stops it.
+/// `never_if` known to hold stops it; what `needs` something waits until that is known.
 fn first_aid(ground: &Ground<'_, '_>) -> Vec<Advised> {
     let least = |cause: CauseId| {
         if ground.knowledge[cause].urgency == Urgency::Minutes {
@@ -244,26 +389,30 @@ fn first_aid(ground: &Ground<'_, '_>) -> Vec<Advised> {
         .steps
         .iter()
         .enumerate()
-        .filter(|(_, step)| step.first_aid && !step.temptation)
-        .filter(|(_, step)| matches!(ground.standing(step), Standing::Open | Standing::CheckFirst))
+        .filter(|(_, step)| step.people_first || (step.first_aid && !step.temptation))
+        .filter(|(_, step)| step.people_first || ground.fit_for_first_aid(step))
         .filter_map(|(number, step)| {
             let id = u16::try_from(number).ok().map(StepId)?;
             let good = ground.expected(step.helps.iter(), least);
             let harm = ground.expected(step.harms.iter(), |_| 0.0);
-            let worth =
-                good.iter().map(|s| s.1).sum::<f64>() - harm.iter().map(|s| s.1).sum::<f64>();
-            (worth > 0.0).then(|| Advised {
+            let worth = sum(&good) - sum(&harm);
+            (worth > 0.0 || step.people_first || ground.pinned(id)).then(|| Advised {
                 step: id,
-                because: good.iter().map(|s| s.0).take(4).collect(),
+                because: good.iter().map(|s| s.0).take(BECAUSE).collect(),
                 check_first: false,
                 worth,
             })
         })
         .collect();
     aid.sort_by(|a, b| b.worth.total_cmp(&a.worth));
+    one_of_each_choice(&mut aid, |a| choice(ground, a.step));
     // The line for people opens first aid, whatever it is worth to the fish.
     let people = |a: &Advised| ground.knowledge[a.step].people_first;
     let opening = aid.iter().position(people).map(|at| aid.remove(at));
-    aid.truncate(FIRST_AID - usize::from(opening.is_some()));
+    let most = FIRST_AID - usize::from(opening.is_some());
+    while aid.len() > most {
+        let least = aid.iter().rposition(|a| !ground.pinned(a.step));
+        aid.remove(least.unwrap_or(most));
+    }
     opening.into_iter().chain(aid).collect()
 }

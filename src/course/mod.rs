@@ -1,5 +1,7 @@
 //! What to do: steps ranked by most good for least harm, what to leave alone, first aid, cautions.
 
 mod advice;
+pub mod plan;
+pub mod projection;
 
 pub use advice::{Advice, Advised, Ground, Warned, advise};

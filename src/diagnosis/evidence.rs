@@ -17,7 +17,9 @@ pub struct Item {
     pub group: usize,
     /// A cause must explain it.
     pub alarming: bool,
-    /// How often it shows under the cause that shows it most.
+    /// It is usual: there on most ordinary days, so that it tells by being absent.
+    pub usual: bool,
+    /// How often what tells (its presence, or the absence of what is usual) shows under the cause that shows it most.
     pub expected: f64,
     /// How often it shows under the causes that it is an effect of.
     pub causes: Vec<(CauseId, f64)>,
@@ -50,7 +52,12 @@ impl Table {
                     items.len() - 1
                 });
                 items[at].causes.push((id, effect.seen_in));
-                items[at].expected = items[at].expected.max(effect.seen_in);
+                let telling = if items[at].usual {
+                    1.0 - effect.seen_in
+                } else {
+                    effect.seen_in
+                };
+                items[at].expected = items[at].expected.max(telling);
                 by_cause[number].push((at, effect.seen_in));
             }
             by_cause[number].sort_unstable_by_key(|(at, _)| *at);
@@ -71,26 +78,46 @@ impl Table {
     }
 
     /// What each item's presence and absence weighs: members of a group that tell the same thing are added and divided
-    /// by the root of their number. An absence counts as a member as far as some cause would have shown it: what hardly
-    /// ever shows does not dilute the absence of what nearly always does.
+    /// by the root of their number. What is usual tells by its absence, so that "ammonia is low" not being so and
+    /// "ammonia is raised" share one weight. What tells nothing counts as a member as far as some cause would have shown
+    /// it: what hardly ever shows does not dilute the absence of what nearly always does.
     pub fn weights(&self, degrees: &[Degree]) -> Vec<(f64, f64)> {
-        let mut present = vec![0.0; self.groups];
-        let mut absent = vec![0.0; self.groups];
+        let mut telling = vec![0.0; self.groups];
+        let mut silent = vec![0.0; self.groups];
         for (item, degree) in self.items.iter().zip(degrees) {
-            present[item.group] += degree.lo;
-            absent[item.group] += (1.0 - degree.hi) * item.expected;
+            let (tells, not) = item.sides(*degree);
+            telling[item.group] += tells;
+            silent[item.group] += not * item.expected;
         }
         self.items
             .iter()
             .zip(degrees)
             .map(|(item, degree)| {
                 let shared = |count: f64| 1.0 / count.max(1.0).sqrt();
-                (
-                    degree.lo * shared(present[item.group]),
-                    (1.0 - degree.hi) * shared(absent[item.group]),
-                )
+                let (tells, not) = item.sides(*degree);
+                let (tells, not) = (
+                    tells * shared(telling[item.group]),
+                    not * shared(silent[item.group]),
+                );
+                if item.usual {
+                    (not, tells)
+                } else {
+                    (tells, not)
+                }
             })
             .collect()
+    }
+}
+
+impl Item {
+    /// How much of what tells was seen, and how much of its opposite.
+    fn sides(&self, degree: Degree) -> (f64, f64) {
+        let (present, absent) = (degree.lo, 1.0 - degree.hi);
+        if self.usual {
+            (absent, present)
+        } else {
+            (present, absent)
+        }
     }
 }
 
@@ -117,6 +144,7 @@ fn item(knowledge: &Knowledge, evidence: Evidence, groups: &mut HashMap<String, 
         background: background.max(knowledge.scales.least_background),
         group: *groups.entry(key).or_insert(next),
         alarming,
+        usual: background > 0.5,
         expected: 0.0,
         causes: Vec::new(),
     }

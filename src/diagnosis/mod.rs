@@ -15,7 +15,7 @@ use crate::engine::{Degree, Engine, Limits};
 use crate::knowledge::{CauseId, Knowledge};
 use crate::site::Site;
 
-pub use evidence::{Item, Table};
+pub use evidence::{Item, Table, shows};
 pub use rank::{Ranking, Scored};
 pub use sheet::{Books, Piece};
 pub use tell::Told;
@@ -64,6 +64,11 @@ impl<'k> Doctor<'k> {
             occasion,
             table: Table::new(knowledge),
         }
+    }
+
+    /// The table of evidence.
+    pub fn table(&self) -> &Table {
+        &self.table
     }
 
     /// How true every piece of evidence is.

@@ -335,6 +335,7 @@ mod tests {
                     background: *background,
                     group: *group,
                     alarming: false,
+                    usual: false,
                     expected: causes.iter().map(|c| c.1).fold(0.0, f64::max),
                     causes,
                 }

@@ -214,10 +214,8 @@ fn collect(
                 ids.push(words[*reading].id.clone());
             }
         }
-        Test::Sign { sign, .. } => {
-            if engine.evidence(Evidence::Sign(*sign)).is_unknown() {
-                ids.push(words[*sign].id.clone());
-            }
+        Test::Sign { sign, .. } if engine.evidence(Evidence::Sign(*sign)).is_unknown() => {
+            ids.push(words[*sign].id.clone());
         }
         Test::Event { event, .. } => ids.push(words[*event].id.clone()),
         Test::Finding(id) => {

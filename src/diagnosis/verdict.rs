@@ -71,11 +71,17 @@ pub(super) fn decide<'k>(
     let dangers: Vec<&Finding> = alarms.iter().filter(holding).map(|(_, f)| *f).collect();
     let distress = dangers.iter().any(|f| f.distress);
     let at = |urgency: Urgency| dangers.iter().any(|f| f.danger == Some(urgency));
+    // Many causes that are each unlikely are no reason to act: what is too unlikely to advise anything for counts for
+    // nothing here. What kills in minutes always counts.
+    let counts = |c: CauseId, least: Urgency| {
+        knowledge[c].urgency >= least
+            && (knowledge[c].urgency == Urgency::Minutes || ranking.of(c) >= scales.step_floor)
+    };
     let summed = |least: Urgency| -> f64 {
         let sum: f64 = ranking
             .sets
             .iter()
-            .filter(|set| set.causes.iter().any(|c| knowledge[*c].urgency >= least))
+            .filter(|set| set.causes.iter().any(|c| counts(*c, least)))
             .map(|set| set.probability)
             .sum();
         sum.min(1.0)

@@ -21,7 +21,7 @@ impl<'k> Limits<'k> {
         let species: Vec<&Species> = knowledge
             .species
             .iter()
-            .filter(|s| site.species.iter().any(|id| *id == s.id))
+            .filter(|s| site.species.contains(&s.id))
             .collect();
         let cautious = species.is_empty();
         Self {
@@ -131,7 +131,7 @@ fn flag(site: &Site, key: &str, knowledge: &Knowledge) -> Option<bool> {
             let mut known = knowledge
                 .species
                 .iter()
-                .filter(|s| site.species.iter().any(|id| *id == s.id))
+                .filter(|s| site.species.contains(&s.id))
                 .map(|s| s.warm)
                 .peekable();
             known.peek()?;

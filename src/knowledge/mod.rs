@@ -8,6 +8,8 @@ mod check;
 mod ids;
 mod load;
 mod origin;
+mod pace;
+mod pace_words;
 mod schema;
 mod sourced;
 mod test;
@@ -16,6 +18,10 @@ pub use check::{Finding as CheckFinding, check};
 pub use ids::{CauseId, FindingId, StepId};
 pub use load::load;
 pub use origin::{embedded, embedded_text, folder, shipped};
+pub use pace::{
+    Dosable, InstrumentDoubt, Kinetic, Kinetics, PaceLimit, PaceLimits, Pacing, Use,
+};
+pub use pace_words::PaceWords;
 pub use schema::*;
 pub use sourced::{Coverage, SourceUse, Sourced, coverage, sourced};
 pub use test::{Bound, Change, Limit, LimitLevel, Over, Ramp, Side, SiteTest, Test};

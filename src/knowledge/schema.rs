@@ -203,6 +203,12 @@ pub struct Step {
     pub people_first: bool,
     /// Never advised, only ever named under avoid.
     pub temptation: bool,
+    /// It only looks or measures: no harm under any cause.
+    pub looks: bool,
+    /// The law or a life hangs on it: when its `needs` holds it leads its list and is never left out.
+    pub pinned: bool,
+    /// Steps of one choice stand for one another, and only the one worth most is said; empty for none.
+    pub choice: String,
     /// Minutes of work.
     pub effort: f64,
     /// Good done under a cause, 0 to 1.
@@ -381,6 +387,42 @@ pub struct Scales {
     pub words: Vec<(f64, String)>,
 }
 
+/// Things a person may tell without being asked, picked from one list.
+#[derive(Debug, Clone, Serialize, Deserialize)]
+pub struct WalkGroup {
+    /// What the list is about.
+    pub name: String,
+    /// The screens whose signs it holds.
+    pub signs: Vec<String>,
+    /// The screens whose events it holds.
+    pub events: Vec<String>,
+}
+
+/// What a walk asks first, and when it stops: `knowledge/walk.toml`.
+#[derive(Debug, Clone, Serialize, Deserialize)]
+pub struct WalkRules {
+    /// The signs that are asked for before anything else.
+    pub vital: Vec<SignId>,
+    /// What may be told without being asked.
+    pub groups: Vec<WalkGroup>,
+    /// So many things a simulated attendant tells without being asked.
+    pub told: usize,
+    /// Minutes that a question takes besides its effort.
+    pub asking: f64,
+    /// Probability from which the leading cause stands out.
+    pub stands_out: f64,
+    /// Expected information, weighted by urgency, per minute, from which a question is worth asking.
+    pub least_bits: f64,
+    /// Share of the best question's worth from which a line joins its screen.
+    pub together: f64,
+    /// Lines of a screen at the most.
+    pub lines: usize,
+    /// Probability that the first steps stay the same from which asking on is idle.
+    pub same_steps: f64,
+    /// Questions at the most.
+    pub most: usize,
+}
+
 /// The whole rule base.
 #[derive(Debug, Clone, Serialize, Deserialize)]
 pub struct Knowledge {
@@ -410,6 +452,10 @@ pub struct Knowledge {
     pub references: Vec<Reference>,
     /// Priors and thresholds.
     pub scales: Scales,
+    /// How a walk goes.
+    pub walk: WalkRules,
+    /// What corrections and projections reckon with.
+    pub pacing: super::Pacing,
     /// SHA-256 of the shipped files, in hexadecimal.
     pub digest: String,
     /// The folder of house rules that were laid over it.
@@ -430,6 +476,12 @@ impl Knowledge {
     /// The step with this id.
     pub fn step(&self, id: &str) -> Option<StepId> {
         position(&self.steps, |s| s.id == id).map(StepId)
+    }
+
+    /// Wetted square meters in a cubic meter of a kind of media.
+    pub fn media_m2_per_m3(&self, kind: &str) -> Option<f64> {
+        let media = self.media.iter().find(|m| m.id == kind)?;
+        Some(media.area_m2_per_l * 1000.0)
     }
 
     /// The causes of a family.

@@ -4,7 +4,8 @@ use std::fmt::Write as _;
 
 use console::Style;
 
-use crate::fault::{Fault, shown};
+use super::safe::safe;
+use crate::fault::Fault;
 
 /// All faults of one run; empty for none.
 pub fn faults(faults: &[Fault], color: bool) -> String {
@@ -24,11 +25,11 @@ fn one(text: &mut String, fault: &Fault, color: bool) {
         text,
         "{}: {} [{}]",
         red.apply_to("error"),
-        fault.reason,
+        safe(&fault.reason),
         fault.code
     );
     if let Some(place) = &fault.place {
-        let file = shown(&place.file);
+        let file = safe(&place.file);
         let _ = writeln!(
             text,
             "  {} {file}:{}:{}",
@@ -51,7 +52,7 @@ fn one(text: &mut String, fault: &Fault, color: bool) {
             );
         }
     }
-    let _ = writeln!(text, "  {} {}", blue.apply_to("fix:"), fault.cure);
+    let _ = writeln!(text, "  {} {}", blue.apply_to("fix:"), safe(&fault.cure));
 }
 
 /// Characters of a line that are shown around what is meant.
@@ -83,4 +84,44 @@ fn window(line: &str, column: usize, width: usize) -> (String, usize, usize) {
     from = from.min(end);
     let width = width.clamp(1, end.saturating_sub(from).max(1));
     (out, from, width)
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+    use crate::fault::Source;
+
+    fn shown(text: &str, span: std::ops::Range<usize>) -> String {
+        let source = Source::new("a.toml", text);
+        faults(
+            &[Fault::at(&source, span, "bad", "it is bad", "mend it")],
+            false,
+        )
+    }
+
+    #[test]
+    fn the_carets_stand_under_what_is_meant() {
+        let text = "x = 1\ny = \"é\" # ä\n";
+        assert_eq!(
+            shown(text, 10..14),
+            "error: it is bad [bad]\n  at a.toml:2:5\n  2 | y = \"é\" # ä\n    |     ^^^\n  fix: mend it\n"
+        );
+    }
+
+    #[test]
+    fn a_long_line_is_cut_around_what_is_meant() {
+        let text = format!("{}HERE{}", "a".repeat(500), "b".repeat(500));
+        let out = shown(&text, 500..504);
+        let lines: Vec<&str> = out.lines().collect();
+        let at = lines[2].find("HERE").map(|i| lines[2][..i].chars().count());
+        assert_eq!(at, lines[3].find('^'));
+        assert!(lines.iter().all(|l| l.chars().count() < 100), "{out}");
+    }
+
+    #[test]
+    fn nothing_in_a_fault_moves_the_cursor() {
+        assert!(!shown("x\u{1b}[2J = 1\n", 0..4).contains('\u{1b}'));
+        let fault = Fault::whole("bad", "a file called \u{1b}[2J", "mend \u{1b}it");
+        assert!(!faults(&[fault], false).contains('\u{1b}'));
+    }
 }

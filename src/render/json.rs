@@ -59,6 +59,7 @@ pub fn value(report: &Report<'_>) -> Value {
         "projections": a.projections.iter().map(|p| json!({
             "limit": p.limit, "earliest": utc(p.earliest), "latest": p.latest.map(utc),
         })).collect::<Vec<_>>(),
+        "site_notes": a.site_notes,
         "overrides": a.overrides.iter().map(|o| json!({
             "id": o.id, "from": o.from, "to": o.to, "loosens": o.loosens,
         })).collect::<Vec<_>>(),
@@ -129,6 +130,7 @@ fn log(log: &Log) -> Value {
         "rows_read": log.rows_read,
         "rows_used": log.rows_used,
         "rows_refused": log.rows_refused,
+        "rows_corrected": log.corrected.len(),
         "problem_count": log.problem_count,
         "problems": problems.collect::<Vec<_>>(),
     })

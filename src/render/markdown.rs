@@ -42,7 +42,7 @@ fn one(block: &Block) -> String {
 /// Marks that would be read as Markdown or HTML, behind a backslash; code marks that pair up stay.
 fn escaped(text: &str) -> String {
     let text = safe(text);
-    let paired = text.matches('`').count() % 2 == 0;
+    let paired = text.matches('`').count().is_multiple_of(2);
     let mut out = String::with_capacity(text.len());
     for c in text.chars() {
         let special = matches!(
@@ -55,4 +55,19 @@ fn escaped(text: &str) -> String {
         out.push(c);
     }
     out
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    #[test]
+    fn words_are_not_read_as_markdown_or_html() {
+        let page = [Block::Bullet("a *b* <script> [x](y) `id`".to_owned())];
+        assert_eq!(
+            markdown(&page),
+            "- a \\*b\\* \\<script\\> \\[x\\](y) `id`\n"
+        );
+        assert_eq!(markdown(&[Block::Para("a ` b".to_owned())]), "a \\` b\n");
+    }
 }

@@ -31,3 +31,4 @@ pub use replay::line as replay_line;
 pub use report::Report;
 pub use seen::seen;
 pub use text::text;
+pub use units::amount;

@@ -79,3 +79,55 @@ fn with_unit(number: &str, unit: &str) -> String {
         unit => format!("{number} {unit}"),
     }
 }
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+    use crate::vocabulary::Question;
+
+    fn reading(id: &str, unit: &str, decimals: usize) -> Reading {
+        Reading {
+            id: id.to_owned(),
+            name: id.to_owned(),
+            unit: unit.to_owned(),
+            also: Vec::new(),
+            derived: false,
+            local: false,
+            per_interval: false,
+            resolution: 0.1,
+            resolution_share: 0.0,
+            plausible: (0.0, 100.0),
+            good_for: 3600,
+            decimals,
+            question: Question::default(),
+            source: Vec::new(),
+        }
+    }
+
+    #[test]
+    fn a_temperature_and_a_difference_of_temperatures_convert_differently() {
+        let t = reading("temperature", "C", 1);
+        assert_eq!(amount(&t, 20.0, Units::Metric), "20.0 C");
+        assert_eq!(amount(&t, 20.0, Units::Us), "68.0 F");
+        assert_eq!(difference(&t, 2.0, Units::Us), "3.6 F");
+        assert_eq!(from_to(&t, 24.0, 17.0, Units::Us), "75.2 to 62.6 F");
+    }
+
+    #[test]
+    fn small_numbers_keep_two_figures_and_zero_is_zero() {
+        let free = reading("un-ionized-ammonia", "mg/L as N", 2);
+        assert_eq!(amount(&free, 0.00123, Units::Metric), "0.0012 mg/L as N");
+        assert_eq!(amount(&free, 0.0, Units::Metric), "0.00 mg/L as N");
+        assert_eq!(amount(&free, -0.0, Units::Metric), "0.00 mg/L as N");
+    }
+
+    #[test]
+    fn numbers_without_a_unit_have_none() {
+        assert_eq!(amount(&reading("ph", "pH", 2), 6.9, Units::Us), "6.90");
+        assert_eq!(amount(&reading("deaths", "count", 0), 3.0, Units::Us), "3");
+        assert_eq!(
+            amount(&reading("fall", "share", 2), 0.384, Units::Us),
+            "38%"
+        );
+    }
+}

@@ -51,27 +51,38 @@ fn bytes(case: &Case) -> Vec<u8> {
 }
 
 fn prepared(case: &Case) -> Run {
-    let mut run = gillside(["review", "log.csv", "--format", "json"]);
+    let log = case.of == "log";
+    let missing = case.disk.as_deref() == Some("missing");
+    let wrong = match (log, missing) {
+        (true, true) => "nothing.csv",
+        (true, false) => "log.csv",
+        (false, true) => "nothing.toml",
+        (false, false) => "site.toml",
+    };
+    let mut run = gillside([
+        "review",
+        "--format",
+        "json",
+        if log { wrong } else { "log.csv" },
+    ]);
     if case.strict {
         run = run.and(["--strict"]);
     }
-    let wrong = if case.of == "log" {
-        "log.csv"
-    } else {
-        "site.toml"
+    run = match case.disk.as_deref() {
+        None => run.file(wrong, bytes(case)),
+        Some("folder") => {
+            std::fs::create_dir(run.folder().join(wrong)).unwrap();
+            run
+        }
+        Some("large") => run.file(wrong, "# nothing here\n".repeat(10_000)),
+        Some(_) => run,
     };
-    match case.disk.as_deref() {
-        None => run = run.file(wrong, bytes(case)),
-        Some("folder") => std::fs::create_dir(run.folder().join(wrong)).unwrap(),
-        Some("large") => run = run.file(wrong, "#".repeat(1_100_000)),
-        Some(_) => {}
-    }
-    match (case.of.as_str(), &case.site) {
-        ("log", Some(site)) => run.file("site.toml", site),
-        ("log", None) => run,
-        _ => run
-            .and(["--site", "site.toml"])
+    match &case.site {
+        _ if !log => run
+            .and(["--site", wrong])
             .file("log.csv", "time,ph\n2026-03-02 07:30,7\n"),
+        Some(site) => run.file("site.toml", site),
+        None => run,
     }
 }
 

@@ -30,13 +30,14 @@ DO FIRST
     );
     for part in [
         "Hillfoot greenhouse 2, as of Mar 4 2026, 07:30 (Europe/Lisbon).",
-        "Very likely: Cold water has slowed the biofilter.",
-        "Very likely: The water has become too cold.",
+        "Very likely: Cold water has slowed the biofilter [biofilter-cold-slowed].",
+        "\nHOW\n1. ",
+        "Very likely: The water has become too cold [water-chilled].",
         "\nTODAY\n",
         "\nLEAVE ALONE\n- Do not heat the water fast",
         "\nCAUTIONS\n",
         "61 of 61 rows read and used, 0 refused.",
-        "no house rules; site file ",
+        "no house rules; site file",
     ] {
         assert!(
             came.out.contains(part),
@@ -60,6 +61,40 @@ fn the_first_thing_to_do_is_within_six_lines_at_any_width() {
                 &lines[..6]
             );
         }
+    }
+}
+
+/// The folders of incidents that come with the project.
+fn farms() -> Vec<std::path::PathBuf> {
+    let root = std::path::Path::new(env!("CARGO_MANIFEST_DIR")).join("tests/cases/open");
+    let folders = std::fs::read_dir(root).unwrap().map(|e| e.unwrap().path());
+    folders
+        .filter(|p| p.join("log.csv").is_file() && p.join("site.toml").is_file())
+        .collect()
+}
+
+#[test]
+fn every_page_fits_and_begins_with_something_to_do() {
+    let farms = farms();
+    assert!(farms.len() >= 20, "only {} farms", farms.len());
+    for farm in farms {
+        let (site, log) = (farm.join("site.toml"), farm.join("log.csv"));
+        let came = gillside([
+            "review",
+            log.to_str().unwrap(),
+            "--site",
+            site.to_str().unwrap(),
+        ])
+        .columns(40)
+        .check();
+        // Paths and other words without spaces may be longer than the page is wide, and break.
+        let top = &lines(&came.out, 40)[..6];
+        assert!(
+            top.iter()
+                .any(|l| l.starts_with("1. ") || l.starts_with("- ")),
+            "{}: {top:?}",
+            farm.display()
+        );
     }
 }
 
@@ -214,6 +249,19 @@ fn a_farm_s_own_targets_are_told() {
         .out_has([
             "CHANGED FOR THIS FARM",
             "target.ph.low: 5 pH instead of 6.2 pH (less careful than shipped)",
+        ])
+        .check();
+}
+
+#[test]
+fn an_area_that_the_media_do_not_bear_out_is_told() {
+    let site =
+        "name = \"x\"\nbiofilter_area_m2 = 10\n[[media]]\nkind = \"pea-gravel\"\nvolume_l = 3000\n";
+    gillside(["review", "log.csv", "--clock", "2026-03-02 08:00"])
+        .file("site.toml", site)
+        .file("log.csv", "time,ph\n2026-03-02 07:30,6.4\n")
+        .out_has([
+            "ABOUT THE SITE FILE\n- The biofilter area is given as 10 m2, but the media would have",
         ])
         .check();
 }

@@ -98,7 +98,7 @@ fn a_log_proves_a_cause_from_the_readings_up() {
         "--log",
         &log,
         "--as-of",
-        "2026-03-01 17:00",
+        "2026-02-27 08:00",
     ])
     .out_has(["nitrite is raised: 0.00 (nitrite-raised)"])
     .check();

@@ -35,6 +35,9 @@ pub(super) fn update(water: &Water<'_>, farm: &Farm, pending: &mut Pending) {
             .or_else(|| fall(water, ids.salinity).map(|(share, _)| share));
         put(pending, ids.tracer_fall_share, 0, tracer);
     }
+    if water.just_read(ids.nitrate) {
+        put(pending, ids.nitrogen_unaccounted, 0, unaccounted(water, farm));
+    }
     if water.just_read(ids.alkalinity) {
         put(
             pending,
@@ -73,6 +76,38 @@ fn without_nitrate(water: &Water<'_>) -> Option<f64> {
     (rest > before * 0.25).then(|| (share * before - explained) / rest)
 }
 
+/// g N/m2/day that a leafy crop takes up: 0.5 to 2 (common practice); the middle.
+const CROP_UPTAKE: f64 = 1.2;
+/// Share of a day's water that a farm replaces where it does not say: 1 to 3 % (Somerville et al. 2014).
+const USUAL_MAKEUP: f64 = 0.02;
+/// Protein of feed that nobody stated, percent (common practice).
+const USUAL_PROTEIN: f64 = 32.0;
+
+/// The nitrogen budget over the window: of the ammonia nitrogen that the feed made, the share that is neither in the
+/// water (ammonia, nitrite, nitrate), nor in the crop, nor gone with water that was replaced. Near 0 where all is
+/// accounted for, near 1 where nitrogen vanishes (denitrification, or a test that reads low); below 0 where more is
+/// found than the feed made. Crop uptake is known to a factor of two, so this is evidence of its sign and rough size.
+fn unaccounted(water: &Water<'_>, farm: &Farm) -> Option<f64> {
+    let ids = water.ids;
+    let shift = series(water, ids.nitrate)?.shift(WINDOW)?;
+    #[allow(clippy::cast_precision_loss)] // spans are far below 2^53 seconds
+    let days = shift.span as f64 / 86_400.0;
+    let (feed, volume) = (farm.feed_kg_per_day?, farm.volume_l?);
+    let protein = farm.protein_percent.unwrap_or(USUAL_PROTEIN);
+    let made = feed::ammonia(feed, protein).ok()? * days;
+    let dissolved = |id| {
+        let moved = series(water, id).and_then(|s| s.shift(WINDOW));
+        moved.map_or(0.0, |s| s.change) * volume / 1000.0
+    };
+    let kept = dissolved(ids.nitrate) + dissolved(ids.ammonia) + dissolved(ids.nitrite);
+    let crop = farm.plant_area_m2.unwrap_or(0.0) * CROP_UPTAKE * days;
+    let replaced = water
+        .fresh(ids.makeup_share, WINDOW)
+        .map_or(USUAL_MAKEUP, |percent| percent / 100.0);
+    let drained = replaced * days * shift.early * volume / 1000.0;
+    (days >= 3.0 && made > 0.0).then(|| 1.0 - (kept + crop + drained) / made)
+}
+
 /// Observed loss of alkalinity over what nitrifying the feed's ammonia should use: near 1 where nitrification runs and
 /// nothing gives alkalinity back; low where it has slowed, or where denitrification or base put some back.
 fn alkalinity_use(water: &Water<'_>, farm: &Farm) -> Option<f64> {
@@ -81,8 +116,6 @@ fn alkalinity_use(water: &Water<'_>, farm: &Farm) -> Option<f64> {
     let volume = farm.volume_l?;
     #[allow(clippy::cast_precision_loss)] // spans are far below 2^53 seconds
     let days = shift.span as f64 / 86_400.0;
-    /// Protein of feed that nobody stated, percent (common practice).
-    const USUAL_PROTEIN: f64 = 32.0;
     let use_per_day =
         feed::alkalinity_use(feed, farm.protein_percent.unwrap_or(USUAL_PROTEIN)).ok()?;
     let expected = use_per_day * 1000.0 / volume * days;

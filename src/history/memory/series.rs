@@ -12,6 +12,9 @@ const DAYS_KEPT: usize = 75;
 /// Trends look at no more than so many points; a longer window is thinned by medians.
 const TREND_POINTS: usize = 16;
 
+/// A time and a value.
+type Point = (i64, f64);
+
 /// A series that is remembered in constant space.
 #[derive(Debug, Clone)]
 pub struct Series {
@@ -149,7 +152,7 @@ impl Series {
     }
 
     /// Points from `from` on in the order of time, at the finest grain that is still kept, and the point before them.
-    fn points(&self, from: i64) -> (Option<(i64, f64)>, Vec<(i64, f64)>) {
+    fn points(&self, from: i64) -> (Option<Point>, Vec<Point>) {
         if self.raw_covers(from) {
             let first = self.raw.partition_point(|p| p.0 < from);
             let before = first.checked_sub(1).and_then(|i| self.raw.get(i)).copied();

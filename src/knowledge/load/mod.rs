@@ -5,12 +5,14 @@ mod causes;
 mod entry;
 mod findings;
 mod names;
+mod pace;
 mod rest;
 mod scales;
 mod species;
 mod steps;
 mod tests;
 mod vocabulary;
+mod walk;
 
 use sha2::{Digest, Sha256};
 
@@ -46,6 +48,8 @@ pub fn load(shipped: &[Source], house: &[Source]) -> Result<Knowledge, Vec<Fault
         rest::read(&mut root, &names, &mut made);
         species::read(&mut root, &names, &mut made);
         scales::read(&mut root, &mut made);
+        walk::read(&mut root, &names, &mut made);
+        pace::read(&mut root, &names, &mut made);
         root.finish();
     }
     steps::join(&mut made);

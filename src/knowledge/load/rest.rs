@@ -9,7 +9,7 @@ use crate::decode::Section;
 use crate::fault::Fault;
 use crate::knowledge::{
     Cause, CauseId, Caution, Family, Finding, FindingId, Knowledge, Media, Reference, Round,
-    Scales, Species, Step, StepId,
+    Scales, Species, Step, StepId, WalkRules,
 };
 use crate::vocabulary::{EventId, ReadingId, Vocabulary};
 
@@ -27,6 +27,8 @@ pub(super) struct Made {
     pub references: Vec<Reference>,
     pub families: Vec<Family>,
     pub scales: Option<Scales>,
+    pub walk: Option<WalkRules>,
+    pub pace: super::pace::Parts,
     digest: String,
 }
 
@@ -44,6 +46,8 @@ pub(super) fn empty(digest: String) -> Made {
         references: Vec::new(),
         families: Vec::new(),
         scales: None,
+        walk: None,
+        pace: super::pace::Parts::default(),
         digest,
     }
 }
@@ -167,6 +171,15 @@ impl Made {
             ));
             return None;
         };
+        let Some(walk) = self.walk else {
+            faults.push(Fault::whole(
+                "no-walk",
+                "the rule base has no `[walk]`",
+                "add knowledge/walk.toml",
+            ));
+            return None;
+        };
+        let pacing = super::pace::finish(self.pace, faults)?;
         let order = match order(&self.findings) {
             Ok(order) => order,
             Err(fault) => {
@@ -188,6 +201,8 @@ impl Made {
             references: self.references,
             families: self.families,
             scales,
+            walk,
+            pacing,
             digest: self.digest,
             house_rules: None,
         })

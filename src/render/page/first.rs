@@ -24,32 +24,51 @@ pub(super) fn title(report: &Report<'_>) -> Block {
     Block::Title(a.verdict, format!("{word}{age}: {rest}"))
 }
 
-/// First aid, the first steps, or what to measure. Gives the ids of the steps that were named.
-pub(super) fn block(report: &Report<'_>, page: &mut Vec<Block>) -> Vec<String> {
+/// What the first block has said.
+pub(super) struct Said {
+    /// Ids of the steps that were named.
+    pub steps: Vec<String>,
+    /// What to measure was said.
+    pub missing: bool,
+}
+
+/// First aid, the first steps, or what to measure.
+pub(super) fn block(report: &Report<'_>, page: &mut Vec<Block>) -> Said {
     let a = report.assessment;
-    match a.verdict {
-        Verdict::Steady => Vec::new(),
-        Verdict::Watch => {
-            super::reasons::missing(report, page);
-            Vec::new()
-        }
-        _ if a.first_aid.is_empty() => {
-            let first = first_steps(report);
-            page.push(Block::Heading("Do first".to_owned()));
-            named(&first, page)
-        }
-        _ => {
-            page.push(Block::Heading("First aid, before anything else".to_owned()));
-            let first: Vec<&StepReport> = a.first_aid.iter().collect();
-            let named = named(&first, page);
-            if let Some(minutes) = a.minutes_left {
-                let s = if minutes == 1 { "" } else { "s" };
-                page.push(Block::Para(format!(
-                    "You may have {minutes} minute{s} or less."
-                )));
-            }
-            named
-        }
+    if a.verdict == Verdict::Steady {
+        return Said {
+            steps: Vec::new(),
+            missing: true,
+        };
+    }
+    let first = match a.first_aid.is_empty() {
+        true => first_steps(report),
+        false => a.first_aid.iter().collect(),
+    };
+    // Where nothing is to be done for certain, looking is the first thing to do.
+    if a.verdict == Verdict::Watch || first.is_empty() {
+        super::reasons::missing(report, page);
+        return Said {
+            steps: Vec::new(),
+            missing: true,
+        };
+    }
+    let heading = match a.first_aid.is_empty() {
+        true => "Do first",
+        false => "First aid, before anything else",
+    };
+    page.push(Block::Heading(heading.to_owned()));
+    let steps = named(&first, page);
+    if let Some(minutes) = a.minutes_left {
+        let s = if minutes == 1 { "" } else { "s" };
+        page.push(Block::Para(format!(
+            "You may have {minutes} minute{s} or less."
+        )));
+    }
+    how(&first, page);
+    Said {
+        steps,
+        missing: false,
     }
 }
 
@@ -72,6 +91,16 @@ fn first_steps<'a>(report: &Report<'a>) -> Vec<&'a StepReport> {
         now
     };
     best.into_iter().take(FIRST).collect()
+}
+
+/// Why and how, for the steps that were named, by their numbers.
+fn how(steps: &[&StepReport], page: &mut Vec<Block>) {
+    if steps.iter().all(|s| s.detail.is_empty()) {
+        return;
+    }
+    page.push(Block::Heading("How".to_owned()));
+    let details = (1..).zip(steps).filter(|(_, s)| !s.detail.is_empty());
+    page.extend(details.map(|(number, step)| Block::Numbered(number, step.detail.clone())));
 }
 
 fn named(steps: &[&StepReport], page: &mut Vec<Block>) -> Vec<String> {

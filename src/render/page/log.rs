@@ -12,10 +12,14 @@ pub(super) fn block(report: &Report<'_>, page: &mut Vec<Block>) {
     let log = report.log;
     page.push(Block::Heading("The log".to_owned()));
     page.push(Block::Para(format!(
-        "{} of {} read and used, {} refused.",
+        "{} of {} read and used, {} refused{}.",
         log.rows_used,
         rows(log.rows_read),
-        log.rows_refused
+        log.rows_refused,
+        match log.corrected.len() {
+            0 => String::new(),
+            corrected => format!(", {corrected} corrected by later ones"),
+        }
     )));
     for problem in log.problems.iter().take(SHOWN) {
         page.push(Block::Bullet(said(problem, log.files.len() > 1)));

@@ -20,7 +20,7 @@ pub(super) fn block(report: &Report<'_>, page: &mut Vec<Block>) {
     page.push(Block::Heading("How this was made".to_owned()));
     page.push(Block::Para(format!(
         "gillside {}, rule base {digest}, {house}; {site}. Likelihoods are calibrated on the project's own cases, which \
-         are not field data. `gillside why ID` explains any cause, step or reading.",
+         are not field data. `gillside why ID` explains whatever has an id in brackets here, and any reading, sign or source.",
         env!("CARGO_PKG_VERSION")
     )));
 }

@@ -16,12 +16,12 @@ use crate::diagnosis::Verdict;
 pub fn diagnosis(report: &Report<'_>) -> Vec<Block> {
     let a = report.assessment;
     let mut page = vec![first::title(report)];
-    let shown = first::block(report, &mut page);
+    let said = first::block(report, &mut page);
     first::about(report, &mut page);
     if a.verdict > Verdict::Steady {
         reasons::block(report, &mut page);
-        steps::block(report, &shown, &mut page);
-        if a.verdict > Verdict::Watch {
+        steps::block(report, &said.steps, &mut page);
+        if !said.missing {
             reasons::missing(report, &mut page);
         }
         list(
@@ -32,6 +32,11 @@ pub fn diagnosis(report: &Report<'_>) -> Vec<Block> {
         steps::calls(report, &mut page);
     }
     list(&mut page, "If nothing is done", made::projections(report));
+    list(
+        &mut page,
+        "About the site file",
+        a.site_notes.iter().cloned(),
+    );
     list(&mut page, "Changed for this farm", made::overrides(report));
     list(
         &mut page,

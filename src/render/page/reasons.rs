@@ -57,9 +57,10 @@ fn claim(cause: &CauseReport, words: &Words<'_>, page: &mut Vec<Block>) {
         .as_ref()
         .map_or_else(String::new, |p| format!(" (at {})", shown(p)));
     page.push(Block::Claim(format!(
-        "{}: {}{place}.",
+        "{}: {}{place} [{}].",
         sentence(&cause.likely),
-        cause.name
+        cause.name,
+        cause.id
     )));
     let lines = |pieces: &[crate::diagnosis::Piece]| -> Vec<String> {
         pieces.iter().take(LINES).map(|p| words.piece(p)).collect()

@@ -34,9 +34,14 @@ pub(super) fn block(report: &Report<'_>, named: &[String], page: &mut Vec<Block>
         if steps.is_empty() {
             continue;
         }
+        let heading = if time == When::Now && named.is_empty() {
+            "Now"
+        } else {
+            heading
+        };
         page.push(Block::Heading(heading.to_owned()));
         for step in steps.iter().take(most) {
-            page.push(Block::Bullet(step.text.clone()));
+            page.push(Block::Bullet(format!("{} [{}]", step.text, step.id)));
             page.extend(check_first(step));
         }
         left += steps.len().saturating_sub(most);
