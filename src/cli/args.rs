@@ -5,8 +5,11 @@ use std::path::PathBuf;
 use clap::{Args, Parser, Subcommand, ValueEnum};
 
 use super::knowledge::KnowledgeArgs;
+use super::incident::IncidentArgs;
 use super::record::RecordArgs;
 use super::review::ReviewArgs;
+use super::shift::ShiftArgs;
+use super::site::SiteArgs;
 use super::walk::WalkArgs;
 use super::water::WaterArgs;
 use super::why::WhyArgs;
@@ -105,8 +108,14 @@ pub(super) enum Color {
 pub(super) enum Command {
     /// Diagnoses from logged readings: what is most likely wrong, and what to do first
     Review(ReviewArgs),
+    /// Makes the checklist for a shift: rounds, blanks to fill in, what open incidents and trends call for
+    Shift(ShiftArgs),
     /// Writes readings, signs and events into the log, and warns at once
     Record(RecordArgs),
+    /// Follows incidents: lists, shows, notes, follows up, closes; makes the handover note
+    Incident(IncidentArgs),
+    /// Makes a site file, or checks one
+    Site(SiteArgs),
     /// Explains a cause, finding, step, reading, sign, event, limit or source
     Why(WhyArgs),
     /// Checks and lists the rule base, and says what it rests on

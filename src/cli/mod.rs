@@ -6,12 +6,15 @@
 mod args;
 mod context;
 mod exit;
+mod incident;
 mod knowledge;
 mod output;
 pub mod pace;
 mod record;
 mod replay;
 mod review;
+mod shift;
+mod site;
 mod standing;
 mod stop;
 mod walk;
@@ -43,6 +46,9 @@ pub fn run(args: impl IntoIterator<Item = OsString>) -> Exit {
         Command::Knowledge(args) => knowledge::run(args, &options.common, &mut output),
         Command::Walk(args) => walk::run(args, &options.common, &mut output),
         Command::Record(args) => record::run(args, &options.common, &mut output),
+        Command::Shift(args) => shift::run(args, &options.common, &mut output),
+        Command::Incident(args) => incident::run(args, &options.common, &mut output),
+        Command::Site(args) => site::run(args, &options.common, &mut output),
         Command::Water(args) => calculate(args, &options.common, &mut output),
     };
     let ended = ended.and_then(|exit| output.finish().map(|()| exit));

@@ -64,6 +64,12 @@ impl Output {
         Ok(self.out.flush()?)
     }
 
+    /// Says something beside the answer, on standard error.
+    pub fn remark(&self, text: &str) {
+        // Nobody is left to tell when standard error is gone.
+        let _ = writeln!(io::stderr(), "{text}");
+    }
+
     /// Says on standard error why there is no answer.
     pub fn complain(&self, stop: &Stop) {
         let text = match stop.message() {

@@ -5,7 +5,7 @@ use serde::{Deserialize, Serialize};
 
 use super::{CauseId, FindingId, LimitLevel, Side, StepId, Test};
 use crate::fault::Place;
-use crate::vocabulary::{ReadingId, SignId, Vocabulary};
+use crate::vocabulary::{EventId, ReadingId, SignId, Vocabulary};
 
 /// How soon something harms.
 #[derive(Debug, Clone, Copy, PartialEq, Eq, PartialOrd, Ord, Hash, Serialize, Deserialize)]
@@ -291,6 +291,8 @@ pub struct Round {
     pub every: i64,
     /// Readings it gives.
     pub readings: Vec<ReadingId>,
+    /// Events that say it was done.
+    pub events: Vec<EventId>,
     /// Only where this holds.
     pub needs: Option<Test>,
     /// Why it is worth the while.

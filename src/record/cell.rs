@@ -16,7 +16,7 @@ pub(super) struct Cell {
 }
 
 /// The unit of a bare number where the log has no such column yet: what the site's people read.
-pub(super) fn usual_unit(reading: &Reading, site: &Site) -> String {
+pub fn usual_unit(reading: &Reading, site: &Site) -> String {
     let us = match site.units {
         Units::Us => units::us(&reading.id),
         Units::Metric => None,

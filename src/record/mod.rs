@@ -17,6 +17,7 @@ mod write;
 pub use change::{Change, changes};
 pub use form::form;
 pub use given::{Amount, Given, Telling, given};
+pub use cell::usual_unit;
 pub use moment::clock_text;
 pub use safe::{NotWritten, edit};
 pub use write::{Target, Written, write};

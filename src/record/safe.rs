@@ -23,7 +23,7 @@ pub enum NotWritten {
 
 impl NotWritten {
     /// A failure of the system.
-    pub(super) fn io(path: &Path, what: &str, error: &io::Error) -> Self {
+    pub fn io(path: &Path, what: &str, error: &io::Error) -> Self {
         let cure = match error.kind() {
             io::ErrorKind::PermissionDenied | io::ErrorKind::ReadOnlyFilesystem => {
                 "ask for the right to write there, or choose another place"

@@ -1,8 +1,11 @@
 //! The `render` room: text and JSON of the values of [`crate::assessment`] and of faults. It computes nothing.
 
 mod block;
+pub mod checklist;
 mod evidence;
 mod fault;
+mod html;
+pub mod incident;
 pub mod json;
 pub mod listing;
 mod look;
@@ -10,6 +13,7 @@ mod markdown;
 mod page;
 pub mod plan;
 pub mod recorded;
+mod seen;
 mod replay;
 mod report;
 mod safe;
@@ -26,5 +30,6 @@ pub use markdown::markdown;
 pub use page::diagnosis;
 pub use replay::line as replay_line;
 pub use report::Report;
+pub use seen::seen;
 pub use text::text;
 pub use units::amount;

@@ -25,6 +25,16 @@ pub fn difference(reading: &Reading, by: f64, system: Units) -> String {
     with_unit(&number_of(reading, to - from), unit)
 }
 
+/// A number of a reading alone, as many decimals as it has and no zeros at the end: `0.5`, `22`.
+pub(super) fn plain_number(reading: &Reading, value: f64) -> String {
+    let text = number_of(reading, value);
+    if text.contains('.') {
+        text.trim_end_matches('0').trim_end_matches('.').to_owned()
+    } else {
+        text
+    }
+}
+
 fn converted(reading: &Reading, value: f64, system: Units) -> (f64, &str) {
     if system == Units::Us
         && let Some(unit) = units::us(&reading.id)

@@ -13,6 +13,21 @@ pub(super) fn short(time: i64, zone: &TimeZone) -> String {
     local(time, zone, "%b %-d, %H:%M")
 }
 
+/// The hour alone: `07:30`.
+pub(super) fn hour(time: i64, zone: &TimeZone) -> String {
+    local(time, zone, "%H:%M")
+}
+
+/// The month and year: `March 2026`.
+pub(super) fn month(time: i64, zone: &TimeZone) -> String {
+    local(time, zone, "%B %Y")
+}
+
+/// The day alone: `Mar 4`.
+pub(super) fn day(time: i64, zone: &TimeZone) -> String {
+    local(time, zone, "%b %-d")
+}
+
 /// As the site's clocks show it: `Mar 4 2026, 07:30`.
 pub(super) fn long(time: i64, zone: &TimeZone) -> String {
     local(time, zone, "%b %-d %Y, %H:%M")

@@ -11,7 +11,7 @@ use crate::knowledge::{
     Cause, CauseId, Caution, Family, Finding, FindingId, Knowledge, Media, Reference, Round,
     Scales, Species, Step, StepId, WalkRules,
 };
-use crate::vocabulary::{ReadingId, Vocabulary};
+use crate::vocabulary::{EventId, ReadingId, Vocabulary};
 
 /// The rule base while it is read.
 pub(super) struct Made {
@@ -106,7 +106,12 @@ fn round(section: &mut Section<'_>, names: &Names, made: &Made) -> Option<Round>
         let ids = node.texts().unwrap_or_default();
         ids.iter().filter_map(|r| names.reading(&node, r)).collect()
     });
+    let events: Vec<EventId> = section.node("events").map_or_else(Vec::new, |node| {
+        let ids = node.texts().unwrap_or_default();
+        ids.iter().filter_map(|e| names.event(&node, e)).collect()
+    });
     Some(Round {
+        events,
         needs: section.node("needs").and_then(|n| test(&n, names, true)),
         why: section.text("why").unwrap_or_default(),
         place: section.text("place").unwrap_or_default(),
