@@ -11,6 +11,7 @@ use super::review::ReviewArgs;
 use super::shift::ShiftArgs;
 use super::site::SiteArgs;
 use super::walk::WalkArgs;
+use super::pace::PaceArgs;
 use super::water::WaterArgs;
 use super::why::WhyArgs;
 
@@ -122,6 +123,8 @@ pub(super) enum Command {
     Knowledge(KnowledgeArgs),
     /// Asks at the tank what is to be seen and measured, and diagnoses
     Walk(WalkArgs),
+    /// Plans one correction in safe steps
+    Pace(PaceArgs),
     /// Makes one calculation about water; alone it lists the calculations there are
     Water(WaterArgs),
 }

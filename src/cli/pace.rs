@@ -9,6 +9,7 @@ use clap::{Args, ValueEnum};
 use crate::assessment::Assessor;
 use crate::course::plan::{Ground, Kind, Trouble, Wish, doubts, plan};
 use crate::course::projection::Readings;
+use crate::diagnosis::Occasion;
 use crate::engine::{Engine, Limits};
 use crate::fault::{Fault, did_you_mean};
 use crate::history::log::{self, Input};
@@ -209,7 +210,7 @@ pub fn run(args: &PaceArgs, world: &PaceWorld<'_>, out: &mut dyn Write) -> Resul
     let mut ground = Ground::new(knowledge, &site, &limits, readings)?;
     ground.confirmed = args.confirmed;
     if let Some(engine) = &engine {
-        let assessor = Assessor::new(knowledge, &site, knowledge.scales.incident_review);
+        let assessor = Assessor::new(knowledge, &site, Occasion::Review);
         ground.doubts = doubts(knowledge, &assessor.review(engine).ranking);
     }
     let kind = args.kind.kind();
