@@ -81,6 +81,7 @@ fn acid_is_never_planned_unasked_nor_into_water_with_little_alkalinity() {
     let limit = little.refused.unwrap().limit;
     assert!(limit == "alkalinity-left-by-acid" || limit == "ph-fall-per-day", "{limit}");
     let still = Site { feed_kg_per_day: None, ..greenhouse() };
+    let acid = Wish { to: Some(7.3), ..acid };
     on(&k, &still, &[("feed", 0.0), ("ph", 7.6), ("alkalinity", 150.0), ("total-ammonia", 0.1)], &acid, |ground, made| {
         let plan = made.unwrap();
         kept(&plan);

@@ -3,5 +3,6 @@
 mod advice;
 pub mod plan;
 pub mod projection;
+pub mod standing;
 
 pub use advice::{Advice, Advised, Ground, Warned, advise};

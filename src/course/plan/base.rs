@@ -218,7 +218,7 @@ fn paced(
 ) -> Plan {
     let rules = rules(ground, substance, up, wish.kind);
     let wait = wait_seconds(ground);
-    let mut last = None;
+    let (mut last, mut level_met) = (None, false);
     let tries = LENGTHS.iter().flat_map(|days| {
         let doses = DOSES_A_DAY.iter().map(move |doses| (*days, *doses));
         doses.flat_map(|(days, doses)| paths.iter().map(move |path| (days, doses, path)))
@@ -240,7 +240,12 @@ fn paced(
             Some(Outcome::Keeps(tried)) => tried,
             Some(Outcome::Breaks(rule, fared)) => {
                 best = best.min(rule.used(fared.reached));
-                last = Some(refusal(ground, rule, fared));
+                // A level that is passed at any pace says more than a pace that is too fast.
+                let level = matches!(rule.measure, Measure::Most(_) | Measure::Least);
+                if level || !level_met {
+                    last = Some(refusal(ground, rule, fared));
+                }
+                level_met |= level;
                 continue;
             }
             None => continue,
