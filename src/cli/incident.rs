@@ -166,7 +166,7 @@ pub(super) fn run(args: &IncidentArgs, common: &Common, out: &mut Output) -> Res
                 && context.knowledge.cause(cause).is_none()
             {
                 let known = context.knowledge.causes.iter().map(|c| c.id.as_str());
-                return Err(Stop::Usage(Fault::whole(
+                return Err(Stop::usage(Fault::whole(
                     "unknown-cause",
                     format!("no cause is called `{}`", shown(cause)),
                     did_you_mean(cause, known, "`gillside knowledge list causes` has all; leave it out if nobody knows"),
@@ -215,7 +215,7 @@ fn book<'a>(context: &'a Context, standing: Option<&'a Standing<'_>>) -> Book<'a
 }
 
 fn no_log() -> Stop {
-    Stop::Usage(Fault::whole(
+    Stop::usage(Fault::whole(
         "no-log",
         "there is no log to judge by",
         "name one with `--log log.csv`, or begin one with `gillside record`",
@@ -255,7 +255,7 @@ impl<'a> Desk<'a> {
     }
 
     fn meant(&self, id: Option<&str>) -> Result<&'a Incident, Stop> {
-        self.stored.meant(id).map_err(Stop::Usage)
+        self.stored.meant(id).map_err(Stop::usage)
     }
 
     fn write(&self, page: &[Block], command: &str, out: &mut Output) -> Result<(), Stop> {

@@ -82,14 +82,14 @@ pub(super) fn asked(
     let on = match on {
         None => None,
         Some(text) => Some(text.parse::<Date>().map_err(|_| {
-            Stop::Usage(Fault::whole(
+            Stop::usage(Fault::whole(
                 "bad-date",
                 format!("`--on {}` is not a date", shown(text)),
                 "write the day as YYYY-MM-DD, such as 2026-03-04",
             ))
         })?),
     };
-    shift::window(&context.site, name, on, context.now).map_err(Stop::Usage)
+    shift::window(&context.site, name, on, context.now).map_err(Stop::usage)
 }
 
 /// The checklist of a shift.
