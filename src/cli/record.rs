@@ -120,6 +120,9 @@ fn told(
     })
 }
 
+/// What is due within so long is asked for.
+const SOON: i64 = 8 * 3600;
+
 /// Asks for the readings that are due, one by one.
 fn asked(context: &Context, args: &RecordArgs, telling: &Telling<'_>) -> Result<Given, Stop> {
     let no_terminal = || {
@@ -132,13 +135,58 @@ fn asked(context: &Context, args: &RecordArgs, telling: &Telling<'_>) -> Result<
     if !(std::io::stdin().is_terminal() && std::io::stderr().is_terminal()) {
         return Err(no_terminal());
     }
-    let _ = (context, args);
-    let mut words: Vec<String> = Vec::new();
-    for reading in context.knowledge.vocabulary.readings.iter().filter(|r| !r.derived) {
-        if !["temperature", "ph"].contains(&reading.id.as_str()) {
-            continue;
+    let standing = Standing::load(context, args.log.as_deref())?;
+    let window = super::shift::asked(context, None, None)?;
+    let window = crate::shift::Window {
+        start: context.now,
+        end: window.start.max(context.now.saturating_add(SOON)),
+        name: window.name,
+    };
+    let stored = super::incident::folder(context)
+        .load()
+        .map_err(|f| Stop::Input(vec![f]))?;
+    let list = super::shift::list(context, standing.as_ref(), &stored, window);
+    let term = console::Term::stderr();
+    term.write_line("One after the other; Enter for what was not measured. Units go behind a number if they are others.")?;
+    let words = &context.knowledge.vocabulary;
+    let mut made = Given::default();
+    let ask = |key: &str, prompt: &str, made: &mut Given| -> Result<(), Stop> {
+        loop {
+            let asked = dialoguer::Input::<String>::new().with_prompt(prompt);
+            let line = match asked.allow_empty(true).interact_text_on(&term) {
+                Ok(line) => line,
+                Err(dialoguer::Error::IO(e)) => return Err(Stop::Write(e)),
+            };
+            if line.trim().is_empty() {
+                return Ok(());
+            }
+            match given(&[format!("{key}={line}")], telling) {
+                Ok(one) => {
+                    made.readings.extend(one.readings);
+                    made.signs.extend(one.signs);
+                    made.events.extend(one.events);
+                    made.note = one.note.or(made.note.take());
+                    made.by = one.by.or(made.by.take());
+                    return Ok(());
+                }
+                Err(faults) => {
+                    for fault in faults {
+                        term.write_line(&format!("{}; {}", fault.reason, fault.cure))?;
+                    }
+                }
+            }
         }
-        words.push(reading.id.clone());
+    };
+    ask("by", "Your name", &mut made)?;
+    for blank in list.items().flat_map(|i| &i.blanks) {
+        let reading = &words[blank.reading];
+        if made.readings.iter().all(|a| a.reading != blank.reading) {
+            let prompt = format!("{} ({})", reading.name, blank.unit);
+            ask(&reading.id, &prompt, &mut made)?;
+        }
     }
-    given(&words, telling).map_err(Stop::Input)
+    ask("sign", "Signs seen, ids between ; (!id for looked for and not there)", &mut made)?;
+    ask("event", "What happened, ids between ;", &mut made)?;
+    ask("note", "Anything else in your own words", &mut made)?;
+    Ok(made)
 }
