@@ -4,14 +4,14 @@ use std::path::PathBuf;
 
 use clap::{Args, Parser, Subcommand, ValueEnum};
 
-use super::knowledge::KnowledgeArgs;
 use super::incident::IncidentArgs;
+use super::knowledge::KnowledgeArgs;
+use super::pace::PaceArgs;
 use super::record::RecordArgs;
 use super::review::ReviewArgs;
 use super::shift::ShiftArgs;
 use super::site::SiteArgs;
 use super::walk::WalkArgs;
-use super::pace::PaceArgs;
 use super::water::WaterArgs;
 use super::why::WhyArgs;
 

@@ -30,8 +30,8 @@ use args::{Command, Common, Format, Options};
 use context::{Context, only};
 pub use exit::Exit;
 use output::Output;
-use stop::Stop;
 use pace::{PaceArgs, PaceFormat, PaceWorld};
+use stop::Stop;
 use water::{WaterArgs, WaterFormat};
 
 /// Parses the arguments, runs one command, and says how it ended. Everything that is printed is printed in here.
@@ -95,7 +95,11 @@ fn plan(args: &PaceArgs, common: &Common, output: &mut Output) -> Result<Exit, S
     let world = PaceWorld {
         knowledge: &context.knowledge,
         site: &context.site,
-        site_log: context.site.log.as_deref().map(|log| context.beside_site(log)),
+        site_log: context
+            .site
+            .log
+            .as_deref()
+            .map(|log| context.beside_site(log)),
         now: context.now,
         format,
         width: output.look().width,

@@ -216,7 +216,11 @@ pub fn run(args: &PaceArgs, world: &PaceWorld<'_>, out: &mut dyn Write) -> Resul
     let kind = args.kind.kind();
     let wish = Wish {
         kind,
-        to: args.to.as_deref().map(|text| aim(kind, args.reading.as_deref(), text)).transpose()?,
+        to: args
+            .to
+            .as_deref()
+            .map(|text| aim(kind, args.reading.as_deref(), text))
+            .transpose()?,
         substance: args.substance.clone(),
         purity: args.purity,
         reading: args.reading.clone(),
@@ -251,7 +255,8 @@ fn read<'k>(
     let knowledge = world.knowledge;
     let inputs: Vec<Input> = if args.log.is_empty() {
         let own = world.site_log.iter().filter(|path| path.exists());
-        own.map(|path| Input::named(&path.display().to_string())).collect()
+        own.map(|path| Input::named(&path.display().to_string()))
+            .collect()
     } else {
         args.log.iter().map(|path| Input::named(path)).collect()
     };
@@ -278,12 +283,16 @@ fn in_unit(id: &str, text: &str) -> Result<f64, PaceError> {
         .find(|c: char| !(c.is_ascii_digit() || matches!(c, '.' | '-' | '+')))
         .unwrap_or(text.len());
     let (digits, unit) = text.split_at(end);
-    let value: f64 = digits.parse().ok().filter(|v: &f64| v.is_finite()).ok_or_else(|| {
-        PaceError::Usage(format!(
-            "`{}` is not a number; write one such as `6.8` or `75F`",
-            crate::fault::shown(text)
-        ))
-    })?;
+    let value: f64 = digits
+        .parse()
+        .ok()
+        .filter(|v: &f64| v.is_finite())
+        .ok_or_else(|| {
+            PaceError::Usage(format!(
+                "`{}` is not a number; write one such as `6.8` or `75F`",
+                crate::fault::shown(text)
+            ))
+        })?;
     if unit.trim().is_empty() {
         return Ok(value);
     }
@@ -334,18 +343,28 @@ fn give(
     };
     if let Some(slot) = slot {
         if value < 0.0 && id != "elevation_m" || value == 0.0 && id == "volume_l" {
-            return Err(PaceError::Usage(format!("`{id}` can't be {value}; give a number above zero")));
+            return Err(PaceError::Usage(format!(
+                "`{id}` can't be {value}; give a number above zero"
+            )));
         }
         *slot = Some(value);
         return Ok(());
     }
     let words = &knowledge.vocabulary;
     let Some(reading) = words.reading(id).filter(|r| !words[*r].derived) else {
-        let known = words.readings.iter().filter(|r| !r.derived).map(|r| r.id.as_str());
+        let known = words
+            .readings
+            .iter()
+            .filter(|r| !r.derived)
+            .map(|r| r.id.as_str());
         return Err(PaceError::Usage(format!(
             "no reading is called `{}`; {}",
             crate::fault::shown(id),
-            did_you_mean(id, known, "use a reading's id or a key of the site file such as volume_l")
+            did_you_mean(
+                id,
+                known,
+                "use a reading's id or a key of the site file such as volume_l"
+            )
         )));
     };
     let (low, high) = words[reading].plausible;

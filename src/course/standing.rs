@@ -40,7 +40,11 @@ impl Standing {
         inputs: [(&'static str, Option<f64>); N],
         reckon: impl FnOnce([f64; N]) -> Option<(f64, f64)>,
     ) -> Self {
-        self.lacks = inputs.iter().filter(|(_, v)| v.is_none()).map(|(n, _)| *n).collect();
+        self.lacks = inputs
+            .iter()
+            .filter(|(_, v)| v.is_none())
+            .map(|(n, _)| *n)
+            .collect();
         if self.lacks.is_empty() {
             self.value = reckon(inputs.map(|(_, v)| v.unwrap_or(f64::NAN)))
                 .filter(|(a, b)| a.is_finite() && b.is_finite());
@@ -67,7 +71,11 @@ const COOLING: (f64, f64) = (0.02, 0.08);
 
 /// Everything that can be said of a farm.
 pub fn standing(ground: &Ground<'_>, year: Year) -> Vec<Standing> {
-    let mut all = vec![air_stops(ground, false), air_stops(ground, true), pump_stops(ground)];
+    let mut all = vec![
+        air_stops(ground, false),
+        air_stops(ground, true),
+        pump_stops(ground),
+    ];
     all.push(heater_stops(ground));
     all.push(filter_dies(ground));
     all.push(alkalinity_days(ground));
@@ -88,18 +96,26 @@ fn low_oxygen(ground: &Ground<'_>) -> Option<f64> {
 
 /// Minutes until oxygen is short without air, before or after feeding.
 fn air_stops(ground: &Ground<'_>, fed: bool) -> Standing {
-    let id = if fed { "minutes-without-air-fed" } else { "minutes-without-air" };
+    let id = if fed {
+        "minutes-without-air-fed"
+    } else {
+        "minutes-without-air"
+    };
     let t = ground.readings.value("temperature");
     Standing::new(id, "min", &["water::respiration"]).from(
         [
-            ("dissolved-oxygen", ground.readings.value("dissolved-oxygen")),
+            (
+                "dissolved-oxygen",
+                ground.readings.value("dissolved-oxygen"),
+            ),
             ("temperature", t),
             ("biomass_kg", ground.site.biomass_kg.filter(|b| *b > 0.0)),
             ("volume_l", ground.site.volume_l),
             ("low-oxygen", low_oxygen(ground)),
         ],
         |[now, t, biomass, volume, low]| {
-            let each = respiration::oxygen_use(t.clamp(0.0, 36.0), respiration::USUAL_FISH_G, fed).ok()?;
+            let each =
+                respiration::oxygen_use(t.clamp(0.0, 36.0), respiration::USUAL_FISH_G, fed).ok()?;
             let most = respiration::minutes_until(now, low, biomass, volume, each).ok()?;
             Some((most / BACTERIA_TOO, most))
         },
@@ -110,9 +126,17 @@ fn air_stops(ground: &Ground<'_>, fed: bool) -> Standing {
 /// tanks' water alone. Reckoned for the whole water, so the tank that is fullest has less.
 fn pump_stops(ground: &Ground<'_>) -> Standing {
     let t = ground.readings.value("temperature");
-    Standing::new("minutes-without-flow", "min", &["water::respiration", "common-practice"]).from(
+    Standing::new(
+        "minutes-without-flow",
+        "min",
+        &["water::respiration", "common-practice"],
+    )
+    .from(
         [
-            ("dissolved-oxygen", ground.readings.value("dissolved-oxygen")),
+            (
+                "dissolved-oxygen",
+                ground.readings.value("dissolved-oxygen"),
+            ),
             ("temperature", t),
             ("biomass_kg", ground.site.biomass_kg.filter(|b| *b > 0.0)),
             ("volume_l", ground.site.volume_l),
@@ -121,8 +145,11 @@ fn pump_stops(ground: &Ground<'_>) -> Standing {
         |[now, t, biomass, volume, low]| {
             /// Share of a loop's water that stands in its fish tanks.
             const IN_TANKS: (f64, f64) = (0.3, 0.7);
-            let each = respiration::oxygen_use(t.clamp(0.0, 36.0), respiration::USUAL_FISH_G, true).ok()?;
-            let in_share = |share: f64| respiration::minutes_until(now, low, biomass, share * volume, each).ok();
+            let each = respiration::oxygen_use(t.clamp(0.0, 36.0), respiration::USUAL_FISH_G, true)
+                .ok()?;
+            let in_share = |share: f64| {
+                respiration::minutes_until(now, low, biomass, share * volume, each).ok()
+            };
             Some((in_share(IN_TANKS.0)?, in_share(IN_TANKS.1)?))
         },
     )
@@ -166,7 +193,10 @@ fn filter_dies(ground: &Ground<'_>) -> Standing {
             let dead = ground.begin.with_bacteria(0.0, 0.0);
             let days = |share: f64| -> Option<f64> {
                 let way = ground.way(crate::course::plan::Kind::Feed, Gas::Usual, &dead);
-                let actions = [Action { at: 0.0, deed: Deed::Feed(share) }];
+                let actions = [Action {
+                    at: 0.0,
+                    deed: Deed::Feed(share),
+                }];
                 let points = ground.course(&way, &actions, AHEAD, ORDINARY)?;
                 Some(first_day(&points, |p| p.un_ionized > harmful))
             };
@@ -199,7 +229,12 @@ fn alkalinity_days(ground: &Ground<'_>) -> Standing {
 fn nitrification_margin(ground: &Ground<'_>, year: Year) -> Standing {
     let area = crate::course::projection::area(ground.knowledge, ground.site);
     let protein = ground.site.feed_protein_percent;
-    Standing::new("nitrification-margin-coldest", "times", &["water::biofilter"]).from(
+    Standing::new(
+        "nitrification-margin-coldest",
+        "times",
+        &["water::biofilter"],
+    )
+    .from(
         [
             ("biofilter_area_m2", area),
             ("coldest month", year.coldest),
@@ -215,7 +250,8 @@ fn nitrification_margin(ground: &Ground<'_>, year: Year) -> Standing {
                 alkalinity: None,
                 adapted: true,
             };
-            let margin = biofilter::capacity(area, &conditions).ok()? / feed::ammonia(kg, protein).ok()?;
+            let margin =
+                biofilter::capacity(area, &conditions).ok()? / feed::ammonia(kg, protein).ok()?;
             // The formula is good to about a factor of two.
             Some((margin / 2.0, margin * 2.0))
         },
@@ -233,7 +269,9 @@ fn aeration_margin(ground: &Ground<'_>, year: Year) -> Standing {
         ],
         |[rated, t, kg, wanted]| {
             let now = Part::Temperature.of(&ground.begin.state);
-            let full = |t: f64| oxygen::solubility(t.clamp(0.0, 40.0), 0.0, ground.begin.farm.pressure).ok();
+            let full = |t: f64| {
+                oxygen::solubility(t.clamp(0.0, 40.0), 0.0, ground.begin.farm.pressure).ok()
+            };
             // Rated at 5 mg/L in water as it is now; the pull goes with the distance to saturation.
             let pull = (full(t)? - wanted).max(0.0) / (full(now)? - 5.0).max(0.5);
             let (less, more) = feed::oxygen_per_feed(feed::OxygenFor::WholeSystem);
@@ -247,7 +285,10 @@ fn feed_per_area(ground: &Ground<'_>) -> Standing {
     Standing::new("feed-per-plant-area", "g/m2/day", &["FAO-bal", "RAK07"]).from(
         [
             ("feed_kg_per_day", ground.begin.usual_feed_kg),
-            ("plant_area_m2", ground.site.plant_area_m2.filter(|a| *a > 0.0)),
+            (
+                "plant_area_m2",
+                ground.site.plant_area_m2.filter(|a| *a > 0.0),
+            ),
         ],
         |[kg, area]| Some((1000.0 * kg / area, 1000.0 * kg / area)),
     )
@@ -256,7 +297,11 @@ fn feed_per_area(ground: &Ground<'_>) -> Standing {
 /// The usual range of feed for each square meter of plants (g/m2/day) by what grows.
 pub fn usual_feed_per_area(crops: &[Crop]) -> (f64, f64) {
     let fruiting = crops.contains(&Crop::Fruiting);
-    let (low, _) = feed_rate_ratio(if fruiting { Growing::FruitingFao } else { Growing::LeafyFao });
+    let (low, _) = feed_rate_ratio(if fruiting {
+        Growing::FruitingFao
+    } else {
+        Growing::LeafyFao
+    });
     let (_, high) = feed_rate_ratio(Growing::RaftUvi);
     (low, high)
 }

@@ -208,10 +208,7 @@ fn done(
 }
 
 fn plan(root: &mut Table, steps: &[PlanStep]) {
-    if let Some(old) = root
-        .get_mut("plan")
-        .and_then(Item::as_array_of_tables_mut)
-    {
+    if let Some(old) = root.get_mut("plan").and_then(Item::as_array_of_tables_mut) {
         old.retain(|t| t.contains_key("done"));
     }
     let tables = steps.iter().map(|step| {
@@ -264,7 +261,7 @@ fn step(step: &Taken) -> Table {
         let mut inner = toml_edit::InlineTable::new();
         inner.insert("id", verify.id.as_str().into());
         inner.insert("direction", verify.direction.as_str().into());
-        if let Some(due) = time(verify.due).into_value().ok() {
+        if let Ok(due) = time(verify.due).into_value() {
             inner.insert("due", due);
         }
         if let Some(from) = verify.from {

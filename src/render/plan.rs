@@ -29,7 +29,11 @@ fn number(value: f64) -> Json {
     let digits = (4 - value.abs().max(1e-9).log10().floor() as i32).clamp(0, 8);
     let scale = 10f64.powi(digits);
     let rounded = (value * scale).round() / scale;
-    if rounded.is_finite() { json!(rounded) } else { Json::Null }
+    if rounded.is_finite() {
+        json!(rounded)
+    } else {
+        Json::Null
+    }
 }
 
 fn utc(seconds: i64) -> String {
@@ -37,7 +41,11 @@ fn utc(seconds: i64) -> String {
 }
 
 fn readings(list: &[(String, f64)]) -> Json {
-    Json::Object(list.iter().map(|(id, v)| (id.clone(), number(*v))).collect())
+    Json::Object(
+        list.iter()
+            .map(|(id, v)| (id.clone(), number(*v)))
+            .collect(),
+    )
 }
 
 fn amount_json(amount: &Amount) -> Json {
@@ -87,9 +95,10 @@ fn kept_json(kept: &Kept) -> Json {
 
 /// The plan as the contract writes it, with fields of its own added.
 pub fn plan_json(plan: &Plan) -> Json {
-    let refused = plan.refused.as_ref().map(|r| {
-        json!({"limit": r.limit, "reason": r.reason, "instead": r.instead})
-    });
+    let refused = plan
+        .refused
+        .as_ref()
+        .map(|r| json!({"limit": r.limit, "reason": r.reason, "instead": r.instead}));
     json!({
         "schema": 1,
         "kind": plan.kind.word(),
@@ -171,7 +180,9 @@ impl Writer<'_> {
 
     fn name(&self, id: &str) -> String {
         let vocabulary = self.page.vocabulary;
-        vocabulary.reading(id).map_or(id.to_owned(), |r| vocabulary[r].name.clone())
+        vocabulary
+            .reading(id)
+            .map_or(id.to_owned(), |r| vocabulary[r].name.clone())
     }
 
     fn list(&self, list: &[(String, f64)]) -> String {
@@ -195,7 +206,11 @@ impl Writer<'_> {
 }
 
 fn write(plan: &Plan, page: &PlanPage<'_>, set: Set) -> String {
-    let mut w = Writer { set, page, out: String::new() };
+    let mut w = Writer {
+        set,
+        page,
+        out: String::new(),
+    };
     let farm = page.site.map_or(String::new(), |s| format!(", {s}"));
     let title = format!("Plan: {}{farm}", plan.kind.word());
     match set {
@@ -227,12 +242,17 @@ fn write(plan: &Plan, page: &PlanPage<'_>, set: Set) -> String {
     if !plan.total.is_empty() {
         w.heading("In all");
         for amount in &plan.total {
-            let ml = amount.milliliters.map_or(String::new(), |m| format!(" ({m:.0} mL)"));
+            let ml = amount
+                .milliliters
+                .map_or(String::new(), |m| format!(" ({m:.0} mL)"));
             let ounces = match page.units {
                 Units::Us => format!(" ({:.1} oz)", amount.grams / 28.349_523_125),
                 Units::Metric => String::new(),
             };
-            w.item(&format!("{:.0} g{ounces}{ml} of {}", amount.grams, amount.name));
+            w.item(&format!(
+                "{:.0} g{ounces}{ml} of {}",
+                amount.grams, amount.name
+            ));
         }
     }
     if !plan.limits.is_empty() {
@@ -266,11 +286,19 @@ fn step_lines(w: &mut Writer<'_>, number: usize, step: &Step) {
         .iter()
         .map(|e| {
             let (low, high) = (w.value(&e.id, e.low), w.value(&e.id, e.high));
-            let span = if low == high { low } else { format!("{} to {high}", first_word(&low)) };
+            let span = if low == high {
+                low
+            } else {
+                format!("{} to {high}", first_word(&low))
+            };
             format!("{} {span}", w.name(&e.id))
         })
         .collect();
-    let indent = if w.set == Set::Text { "        " } else { "   - " };
+    let indent = if w.set == Set::Text {
+        "        "
+    } else {
+        "   - "
+    };
     let deeper = if w.set == Set::Text { "          " } else { "" };
     if !expected.is_empty() {
         w.line(indent, deeper, &format!("Expect {}.", expected.join(", ")));
@@ -287,10 +315,18 @@ fn first_word(text: &str) -> &str {
 fn limit_line(w: &mut Writer<'_>, kept: &Kept) {
     let bound = if kept.is_floor { "at least" } else { "at most" };
     let short = |v: f64| {
-        let text = if v.abs() >= 10.0 { format!("{v:.1}") } else { format!("{v:.3}") };
+        let text = if v.abs() >= 10.0 {
+            format!("{v:.1}")
+        } else {
+            format!("{v:.3}")
+        };
         text.trim_end_matches('0').trim_end_matches('.').to_owned()
     };
-    let pace = if kept.set_the_pace { "; this one set the pace" } else { "" };
+    let pace = if kept.set_the_pace {
+        "; this one set the pace"
+    } else {
+        ""
+    };
     let text = format!(
         "{}: {} of {bound} {} {} [{}]{pace}",
         kept.name,

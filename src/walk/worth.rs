@@ -185,7 +185,9 @@ impl View<'_, '_> {
             site: self.site,
             limits: self.limits,
         };
-        let mut rates: BTreeMap<(Ask, usize), Vec<(CauseId, f64, f64)>> = BTreeMap::new();
+        /// What is asked and how it may be answered; under each cause, how often so and how often not.
+        type Rates = BTreeMap<(Ask, usize), Vec<(CauseId, f64, f64)>>;
+        let mut rates = Rates::new();
         for (number, cause) in self.knowledge.causes.iter().enumerate() {
             let Ok(id) = u16::try_from(number).map(CauseId) else {
                 continue;

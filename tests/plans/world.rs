@@ -13,7 +13,13 @@ pub const NOW: i64 = 1_772_611_200;
 
 pub fn rule_base() -> Knowledge {
     knowledge::load(&knowledge::embedded(), &[]).unwrap_or_else(|f| {
-        panic!("{}", f.iter().map(ToString::to_string).collect::<Vec<_>>().join("\n"))
+        panic!(
+            "{}",
+            f.iter()
+                .map(ToString::to_string)
+                .collect::<Vec<_>>()
+                .join("\n")
+        )
     })
 }
 
@@ -85,5 +91,7 @@ pub fn on<T>(
 }
 
 pub fn made(k: &Knowledge, site: &Site, water: &[(&str, f64)], wish: &Wish) -> Plan {
-    on(k, site, water, wish, |_, p| p.unwrap_or_else(|t| panic!("{t}")))
+    on(k, site, water, wish, |_, p| {
+        p.unwrap_or_else(|t| panic!("{t}"))
+    })
 }

@@ -377,7 +377,7 @@ impl Dialog<'_, '_> {
         let reading = &self.context.knowledge.vocabulary[id];
         let value = match typed::number(reading, text) {
             Ok(Typed::Kept(value)) => Ok(value),
-            Ok(Typed::Saturation(percent)) => self.from_saturation(percent),
+            Ok(Typed::Saturation(percent)) => self.of_saturation(percent),
             Ok(Typed::Which(value, units)) => match self.which(value, &units)? {
                 Some(unit) => typed::in_unit(reading, value, unit)
                     .ok_or_else(|| "That unit can't be used.".to_owned()),
@@ -402,7 +402,7 @@ impl Dialog<'_, '_> {
             .vocabulary
             .reading("dissolved-oxygen")
             == Some(id);
-        let Some(full) = oxygen.then(|| self.from_saturation(100.0).ok()).flatten() else {
+        let Some(full) = oxygen.then(|| self.of_saturation(100.0).ok()).flatten() else {
             return Ok(Some(value));
         };
         if value <= ODD * full {
@@ -446,7 +446,7 @@ impl Dialog<'_, '_> {
         }
     }
 
-    fn from_saturation(&self, percent: f64) -> Result<f64, String> {
+    fn of_saturation(&self, percent: f64) -> Result<f64, String> {
         let words = &self.context.knowledge.vocabulary;
         let latest = |id: &str| {
             let id = words.reading(id)?;

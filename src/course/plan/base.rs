@@ -22,11 +22,21 @@ const NEAR: (f64, f64) = (0.03, 1.5);
 /// What the doses lead along.
 #[derive(Debug, Clone, Copy, PartialEq)]
 enum Path {
-    Alkalinity { from: f64, to: f64 },
+    Alkalinity {
+        from: f64,
+        to: f64,
+    },
     /// In equal factors: small doses first, where the water has little.
-    Factors { from: f64, to: f64 },
+    Factors {
+        from: f64,
+        to: f64,
+    },
     /// pH at the present carbon dioxide (mmol/L): where it settles once gas has.
-    Ph { from: f64, to: f64, carbon_dioxide: f64 },
+    Ph {
+        from: f64,
+        to: f64,
+        carbon_dioxide: f64,
+    },
 }
 
 /// Plans alkalinity or pH.
@@ -69,7 +79,10 @@ pub fn plan(ground: &Ground<'_>, wish: &Wish) -> Result<Plan, Trouble> {
             to,
             carbon_dioxide: chem.carbon_dioxide(ph, Part::Carbon.of(&ground.begin.state)),
         },
-        _ => Path::Alkalinity { from: alkalinity, to },
+        _ => Path::Alkalinity {
+            from: alkalinity,
+            to,
+        },
     };
     let mut paths = vec![path];
     if let Path::Alkalinity { from, to } = path
@@ -94,14 +107,25 @@ fn aim(ground: &Ground<'_>, wish: &Wish, ph: f64) -> Result<f64, Trouble> {
         }
         _ => ground.target(id, Side::Low),
     };
-    let to = wish.to.or(own).ok_or_else(|| Trouble::Lacks(vec!["--to".to_owned()]))?;
-    let range = if wish.kind == Kind::Ph { 4.5..=9.5 } else { 0.0..=500.0 };
+    let to = wish
+        .to
+        .or(own)
+        .ok_or_else(|| Trouble::Lacks(vec!["--to".to_owned()]))?;
+    let range = if wish.kind == Kind::Ph {
+        4.5..=9.5
+    } else {
+        0.0..=500.0
+    };
     if range.contains(&to) {
         Ok(to)
     } else {
         Err(Trouble::Usage(fill(
             &ground.words().aim_out_of_range,
-            &[("value", short(to)), ("low", short(*range.start())), ("high", short(*range.end()))],
+            &[
+                ("value", short(to)),
+                ("low", short(*range.start())),
+                ("high", short(*range.end())),
+            ],
         )))
     }
 }
@@ -178,10 +202,19 @@ fn rules<'k>(ground: &Ground<'k>, substance: &Dosable, up: bool, kind: Kind) -> 
         rules.push(plain(&pace.ph_rise_per_dose, Track::Ph, Measure::Jump));
         rules.push(plain(&pace.ph_rise_per_day, Track::Ph, Measure::Rise(24.0)));
         let limit = ground.un_ionized_limit();
-        rules.push(rule(&pace.un_ionized_ammonia, limit, Track::UnIonized, Measure::Most(0.0)));
+        rules.push(rule(
+            &pace.un_ionized_ammonia,
+            limit,
+            Track::UnIonized,
+            Measure::Most(0.0),
+        ));
         if kind == Kind::Alkalinity {
             let track = Track::Part(Part::Alkalinity);
-            rules.push(plain(&pace.alkalinity_rise_per_day, track, Measure::NetRise));
+            rules.push(plain(
+                &pace.alkalinity_rise_per_day,
+                track,
+                Measure::NetRise,
+            ));
         }
         if substance.gives("sodium") > 0.0 && ground.has_plants() {
             let track = Track::Part(Part::Sodium);
@@ -227,14 +260,20 @@ fn paced(
     let (mut length, mut best, mut best_before, mut in_vain) = (0, f64::INFINITY, f64::INFINITY, 0);
     for (days, doses, path) in tries {
         if days != length {
-            in_vain = if best < 0.97 * best_before { 0 } else { in_vain + 1 };
+            in_vain = if best < 0.97 * best_before {
+                0
+            } else {
+                in_vain + 1
+            };
             if in_vain >= 4 {
                 break;
             }
             (length, best_before) = (days, best.min(best_before));
         }
         let slots = clock::slots(ground.site, ground.now(), days, doses, wait);
-        let Some(mut steps) = along(ground, wish, path, substance, &slots) else { continue };
+        let Some(mut steps) = along(ground, wish, path, substance, &slots) else {
+            continue;
+        };
         let end = steps.last().map_or(1.0, |s| days_from(ground, s.at)) + 1.0;
         let tried = match trial(ground, wish.kind, &steps, &rules, end) {
             Some(Outcome::Keeps(tried)) => tried,
@@ -317,7 +356,10 @@ fn along(
     for (times, parts) in slots.iter().zip(shares(ground, slots)) {
         for (at, part) in times.iter().zip(parts) {
             let t = days_from(ground, *at);
-            way.state = ground.course(&way, &[], t - now, super::made::PLANNING)?.last()?.y;
+            way.state = ground
+                .course(&way, &[], t - now, super::made::PLANNING)?
+                .last()?
+                .y;
             now = t;
             share += part / days;
             let wanted = wanted(ground, path, share)?;
@@ -337,7 +379,11 @@ fn along(
         .iter()
         .zip(amounts)
         .filter(|(_, a)| a.grams > 0.0)
-        .map(|((at, _), amount)| Step { at: *at, amounts: vec![amount], ..Step::default() })
+        .map(|((at, _), amount)| Step {
+            at: *at,
+            amounts: vec![amount],
+            ..Step::default()
+        })
         .collect();
     Some(steps)
 }
@@ -350,11 +396,18 @@ pub(super) fn weighed(
     first_day: usize,
     most: f64,
 ) -> Vec<Amount> {
-    let mut amounts: Vec<Amount> = pure.iter().map(|(_, g)| amount(substance, *g, purity)).collect();
+    let mut amounts: Vec<Amount> = pure
+        .iter()
+        .map(|(_, g)| amount(substance, *g, purity))
+        .collect();
     let rest: f64 = amounts.iter().take(first_day).skip(1).map(|a| a.pure).sum();
     if let Some(first) = amounts.first_mut() {
         // A lone dose is a quarter of what its day could have had.
-        let top = if first_day > 1 { rest * most / (1.0 - most) } else { first.pure * most };
+        let top = if first_day > 1 {
+            rest * most / (1.0 - most)
+        } else {
+            first.pure * most
+        };
         if first.pure > top {
             *first = amount(substance, top, purity);
         }
@@ -367,7 +420,11 @@ fn wanted(ground: &Ground<'_>, path: &Path, share: f64) -> Option<f64> {
     match *path {
         Path::Alkalinity { from, to } => Some(from + (to - from) * share),
         Path::Factors { from, to } => Some(from * (to / from).powf(share)),
-        Path::Ph { from, to, carbon_dioxide } => {
+        Path::Ph {
+            from,
+            to,
+            carbon_dioxide,
+        } => {
             let chem = ground.chemistry()?;
             let ph = from + (to - from) * share;
             let [free, ..] = state::carbon_shares(&chem.carbonate, ph);
@@ -384,7 +441,11 @@ pub(super) fn first_dose(ground: &Ground<'_>, steps: &[Step]) -> super::value::K
     let first = steps.first();
     let begin = first.map_or(0, |s| s.at);
     let grams = |s: &Step| s.amounts.iter().map(|a| a.pure).sum::<f64>() + s.liters.unwrap_or(0.0);
-    let day: f64 = steps.iter().filter(|s| s.at < begin + 86_400).map(grams).sum();
+    let day: f64 = steps
+        .iter()
+        .filter(|s| s.at < begin + 86_400)
+        .map(grams)
+        .sum();
     let alone = steps.iter().filter(|s| s.at < begin + 86_400).count() == 1;
     let share = first.map_or(0.0, grams) / day.max(1e-12);
     super::check::kept(limit, limit.value, if alone { limit.value } else { share })
@@ -412,10 +473,12 @@ pub(super) fn levels(
         if reached > limit.value {
             return Some(broken(ground, limit, limit.value, reached, None));
         }
-        plan.limits.push(super::check::kept(limit, limit.value, reached));
+        plan.limits
+            .push(super::check::kept(limit, limit.value, reached));
         if ground.readings.value(id).is_none() {
             let words = &ground.words().unmeasured;
-            plan.notes.push(fill(words, &[("reading", ground.name(id))]));
+            plan.notes
+                .push(fill(words, &[("reading", ground.name(id))]));
         }
     }
     None
@@ -426,7 +489,9 @@ fn tell(ground: &Ground<'_>, steps: &mut [Step], tried: &super::made::Tried, up:
     let words = ground.words();
     let wait = wait_seconds(ground);
     for step in steps.iter_mut() {
-        let Some(amount) = step.amounts.first().cloned() else { continue };
+        let Some(amount) = step.amounts.first().cloned() else {
+            continue;
+        };
         let substance = ground.knowledge.pacing.substance(&amount.substance);
         let strong = substance.is_some_and(|s| s.strong);
         let text = match (up, strong, amount.substance.as_str()) {
@@ -457,10 +522,19 @@ fn tell(ground: &Ground<'_>, steps: &mut [Step], tried: &super::made::Tried, up:
         }
         let (jump, pace) = (
             ground.pace().ph_rise_per_dose.value,
-            if up { ground.pace().ph_rise_per_day.value } else { ground.pace().ph_fall_per_day.value },
+            if up {
+                ground.pace().ph_rise_per_day.value
+            } else {
+                ground.pace().ph_fall_per_day.value
+            },
         );
-        let text = if up { &words.stop_ph_up } else { &words.stop_ph_down };
-        step.stop_if.push(fill(text, &[("jump", short(jump)), ("pace", short(pace))]));
+        let text = if up {
+            &words.stop_ph_up
+        } else {
+            &words.stop_ph_down
+        };
+        step.stop_if
+            .push(fill(text, &[("jump", short(jump)), ("pace", short(pace))]));
         step.stop_if.push(words.stop_fish.clone());
     }
 }
@@ -468,7 +542,11 @@ fn tell(ground: &Ground<'_>, steps: &mut [Step], tried: &super::made::Tried, up:
 fn cautions(ground: &Ground<'_>, plan: &mut Plan, substance: &Dosable, up: bool) {
     let words = ground.words();
     if substance.strong {
-        let text = if up { &words.strong_base_people } else { &words.acid_people };
+        let text = if up {
+            &words.strong_base_people
+        } else {
+            &words.acid_people
+        };
         plan.cautions.push(text.clone());
     }
     if !up {
@@ -477,6 +555,10 @@ fn cautions(ground: &Ground<'_>, plan: &mut Plan, substance: &Dosable, up: bool)
     if substance.id == "CaCO3" {
         plan.cautions.push(words.lime_slow.clone());
     }
-    plan.cautions.push(if up { words.base_besides.clone() } else { words.acid_cause.clone() });
+    plan.cautions.push(if up {
+        words.base_besides.clone()
+    } else {
+        words.acid_cause.clone()
+    });
     limit_cautions(ground, plan);
 }

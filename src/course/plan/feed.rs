@@ -32,12 +32,19 @@ pub fn plan(ground: &Ground<'_>, wish: &Wish) -> Result<Plan, Trouble> {
     if !(to >= 0.0 && to <= 10.0 * usual) {
         return Err(Trouble::Usage(fill(
             &words.aim_out_of_range,
-            &[("value", short(to)), ("low", "0".into()), ("high", short(10.0 * usual))],
+            &[
+                ("value", short(to)),
+                ("low", "0".into()),
+                ("high", short(10.0 * usual)),
+            ],
         )));
     }
     plan.from = vec![
         ("feed".to_owned(), ground.begin.feed * usual),
-        ("total-ammonia".to_owned(), Part::Ammonia.of(&ground.begin.state)),
+        (
+            "total-ammonia".to_owned(),
+            Part::Ammonia.of(&ground.begin.state),
+        ),
         ("nitrite".to_owned(), Part::Nitrite.of(&ground.begin.state)),
     ];
     plan.to = vec![("feed".to_owned(), to)];
@@ -151,9 +158,12 @@ fn paced(ground: &Ground<'_>, mut plan: Plan, usual: f64, to: f64) -> Plan {
         return plan.refuse(refused);
     };
     plan.limits = tried.kept(&rules);
-    let largest = levels.windows(2).map(|w| w.last().map_or(0.0, |b| b.1) - w.first().map_or(0.0, |a| a.1));
+    let largest = levels
+        .windows(2)
+        .map(|w| w.last().map_or(0.0, |b| b.1) - w.first().map_or(0.0, |a| a.1));
     let largest = largest.fold(0.0, f64::max);
-    plan.limits.push(check::kept(&pace.feed_step, pace.feed_step.value, largest));
+    plan.limits
+        .push(check::kept(&pace.feed_step, pace.feed_step.value, largest));
     let apart = steps.windows(2).map(|w| match w {
         [a, b] => days_from(ground, b.at) - days_from(ground, a.at),
         _ => f64::INFINITY,
@@ -164,17 +174,22 @@ fn paced(ground: &Ground<'_>, mut plan: Plan, usual: f64, to: f64) -> Plan {
         plan.limits.push(kept);
     }
     mark_the_pace(&mut plan.limits);
-    let fasting = levels.get(1).map(|l| days_from(ground, l.0.at)).unwrap_or(end);
+    let fasting = levels
+        .get(1)
+        .map(|l| days_from(ground, l.0.at))
+        .unwrap_or(end);
     plan.steps = steps;
     tell(ground, &mut plan, usual, &tried);
     plan.cautions.push(words.feed_alkalinity.clone());
     if levels.first().is_some_and(|l| l.1 <= 0.0) && fasting > pace.days_without_feed.value {
         let days = short(pace.days_without_feed.value);
-        plan.cautions.push(fill(&words.feed_fast, &[("days", days)]));
+        plan.cautions
+            .push(fill(&words.feed_fast, &[("days", days)]));
     }
     if reached < to - 1e-9 {
         let share = short(100.0 * reached);
-        plan.notes.push(fill(&words.feed_not_full, &[("share", share)]));
+        plan.notes
+            .push(fill(&words.feed_not_full, &[("share", share)]));
     }
     limit_cautions(ground, &mut plan);
     plan
@@ -214,7 +229,10 @@ fn tell(ground: &Ground<'_>, plan: &mut Plan, usual: f64, tried: &super::made::T
         } else {
             fill(
                 &words.do_feed,
-                &[("feed", kilograms(units, kg)), ("share", short(100.0 * kg / usual))],
+                &[
+                    ("feed", kilograms(units, kg)),
+                    ("share", short(100.0 * kg / usual)),
+                ],
             )
         };
         for (id, part) in [("total-ammonia", Part::Ammonia), ("nitrite", Part::Nitrite)] {

@@ -172,10 +172,14 @@ impl<'k> Ground<'k> {
         let (words, limits) = (self.words(), self.pace());
         let name = |id: &str| {
             let vocabulary = &self.knowledge.vocabulary;
-            vocabulary.reading(id).map_or(id.to_owned(), |r| vocabulary[r].name.clone())
+            vocabulary
+                .reading(id)
+                .map_or(id.to_owned(), |r| vocabulary[r].name.clone())
         };
         for id in ids {
-            let Some(known) = self.readings.get(id) else { continue };
+            let Some(known) = self.readings.get(id) else {
+                continue;
+            };
             if self.readings.is_stale(id, known) {
                 let age = crate::assessment::span(self.now() - known.time);
                 return Ok(Some(Refused {
@@ -228,7 +232,11 @@ impl<'k> Ground<'k> {
 
     /// One way, from a state.
     pub fn way(&self, kind: Kind, gas: Gas, state: &State) -> Way<'k> {
-        Way { gas, farm: super::replay::farm(self, kind, state), state: *state }
+        Way {
+            gas,
+            farm: super::replay::farm(self, kind, state),
+            state: *state,
+        }
     }
 
     /// Runs one way.
@@ -311,6 +319,8 @@ impl<'k> Ground<'k> {
     /// The name of a reading, for the middle of a sentence.
     pub fn name(&self, id: &str) -> String {
         let vocabulary = &self.knowledge.vocabulary;
-        vocabulary.reading(id).map_or(id.to_owned(), |r| vocabulary[r].name.clone())
+        vocabulary
+            .reading(id)
+            .map_or(id.to_owned(), |r| vocabulary[r].name.clone())
     }
 }

@@ -50,14 +50,20 @@ pub fn actions(ground: &Ground<'_>, steps: &[Step]) -> Vec<Action> {
             }
         }
         if let (Some(liters), Ok(makeup)) = (step.liters, ground.makeup()) {
-            put(at, Deed::Exchange((liters / volume).clamp(0.0, 1.0), makeup));
+            put(
+                at,
+                Deed::Exchange((liters / volume).clamp(0.0, 1.0), makeup),
+            );
         }
         if let (Some(kg), Some(usual)) = (step.feed_kg, ground.begin.usual_feed_kg) {
             put(at, Deed::Feed(kg / usual));
         }
         if let Some(warmth) = step.warmth {
             put(at, Deed::Heat(24.0 * warmth.per_hour * warmth.by.signum()));
-            put(at + warmth.by.abs() / warmth.per_hour / 24.0, Deed::Heat(0.0));
+            put(
+                at + warmth.by.abs() / warmth.per_hour / 24.0,
+                Deed::Heat(0.0),
+            );
         }
     }
     all.sort_by(|a, b| a.at.total_cmp(&b.at));
@@ -69,6 +75,10 @@ pub fn actions(ground: &Ground<'_>, steps: &[Step]) -> Vec<Action> {
 pub fn farm<'k>(ground: &Ground<'k>, kind: Kind, state: &State) -> Farm<'k> {
     let mut farm = ground.begin.farm_with(state);
     let rising = ground.begin.rising.unwrap_or(0.0);
-    farm.held = Some(if kind == Kind::Feed { rising.max(0.0) } else { rising.min(0.0) });
+    farm.held = Some(if kind == Kind::Feed {
+        rising.max(0.0)
+    } else {
+        rising.min(0.0)
+    });
     farm
 }

@@ -73,7 +73,11 @@ fn courses(begin: &Begin<'_>) -> Vec<Vec<Point>> {
         feed: begin.feed,
     };
     let mut courses = Vec::new();
-    let drifts: &[f64] = if begin.farm.drift == 0.0 { &[1.0] } else { &[0.4, 1.2] };
+    let drifts: &[f64] = if begin.farm.drift == 0.0 {
+        &[1.0]
+    } else {
+        &[0.4, 1.2]
+    };
     for factor in drifts {
         for start in &starts {
             let mut farm = begin.farm_with(start);
@@ -86,7 +90,11 @@ fn courses(begin: &Begin<'_>) -> Vec<Vec<Point>> {
 
 fn watches(knowledge: &Knowledge, limits: &Limits<'_>, begin: &Begin<'_>) -> Vec<Watch> {
     let words = &knowledge.vocabulary;
-    let limit = |id: &str, level, side| words.reading(id).and_then(|r| limits.species(r, level, side));
+    let limit = |id: &str, level, side| {
+        words
+            .reading(id)
+            .and_then(|r| limits.species(r, level, side))
+    };
     let known = |id: &str| !begin.assumed.contains(&id);
     let filter = begin.capacity.is_some();
     let carbonate = known("ph") && known("alkalinity") && known("temperature");
@@ -104,10 +112,7 @@ fn watches(knowledge: &Knowledge, limits: &Limits<'_>, begin: &Begin<'_>) -> Vec
         ];
         for (level, note) in levels {
             if let Some(top) = limit("un-ionized-ammonia", level, high) {
-                watch(
-                    say(note, top),
-                    Box::new(move |p| p.un_ionized - top),
-                );
+                watch(say(note, top), Box::new(move |p| p.un_ionized - top));
             }
         }
     }
@@ -117,11 +122,16 @@ fn watches(knowledge: &Knowledge, limits: &Limits<'_>, begin: &Begin<'_>) -> Vec
                 say(&text.ahead_chloride, ratio),
                 Box::new(move |p| {
                     let nitrite = Part::Nitrite.of(&p.y);
-                    if nitrite < NO_NITRITE { -1.0 } else { ratio * nitrite - Part::Chloride.of(&p.y) }
+                    if nitrite < NO_NITRITE {
+                        -1.0
+                    } else {
+                        ratio * nitrite - Part::Chloride.of(&p.y)
+                    }
                 }),
             );
         }
-    } else if filter && known("nitrite")
+    } else if filter
+        && known("nitrite")
         && let Some(top) = limit("nitrite", LimitLevel::Stress, high)
     {
         watch(
@@ -129,7 +139,8 @@ fn watches(knowledge: &Knowledge, limits: &Limits<'_>, begin: &Begin<'_>) -> Vec
             Box::new(move |p| Part::Nitrite.of(&p.y) - top),
         );
     }
-    if known("dissolved-oxygen") && known("temperature")
+    if known("dissolved-oxygen")
+        && known("temperature")
         && let Some(least) = limit("dissolved-oxygen", LimitLevel::Stress, low)
     {
         watch(
@@ -144,13 +155,12 @@ fn watches(knowledge: &Knowledge, limits: &Limits<'_>, begin: &Begin<'_>) -> Vec
             Box::new(move |p| half - Part::Alkalinity.of(&p.y)),
         );
     }
-    if filter && carbonate && begin.rising.is_some()
+    if filter
+        && carbonate
+        && begin.rising.is_some()
         && let Some(least) = limit("ph", LimitLevel::Stress, low)
     {
-        watch(
-            say(&text.ahead_ph, least),
-            Box::new(move |p| least - p.ph),
-        );
+        watch(say(&text.ahead_ph, least), Box::new(move |p| least - p.ph));
     }
     if known("temperature") {
         if let Some(least) = limit("temperature", LimitLevel::Stress, low) {
@@ -175,7 +185,11 @@ fn when(watch: &Watch, course: &[Point]) -> Option<f64> {
         let [a, b] = pair else { return None };
         let (before, after) = ((watch.excess)(a), (watch.excess)(b));
         (after > 0.0).then(|| {
-            let share = if before < 0.0 { -before / (after - before) } else { 0.0 };
+            let share = if before < 0.0 {
+                -before / (after - before)
+            } else {
+                0.0
+            };
             a.t + share * (b.t - a.t)
         })
     })

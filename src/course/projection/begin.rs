@@ -75,7 +75,9 @@ impl<'k> Begin<'k> {
         readings: &Readings<'_>,
     ) -> Result<Self, Lacks> {
         let kinetics = &knowledge.pacing.kinetics;
-        let volume_l = site.volume_l.ok_or_else(|| Lacks(vec!["volume_l".to_owned()]))?;
+        let volume_l = site
+            .volume_l
+            .ok_or_else(|| Lacks(vec!["volume_l".to_owned()]))?;
         let mut assumed = Vec::new();
         let mut take = |id: &'static str| {
             readings.value(id).unwrap_or_else(|| {
@@ -112,8 +114,9 @@ impl<'k> Begin<'k> {
         };
         let protein = site.feed_protein_percent.unwrap_or(kinetics.protein.value) / 100.0;
         let per_liter = |grams: f64| 1000.0 * grams / volume_l;
-        let load = usual_feed_kg
-            .map_or(0.0, |kg| per_liter(1000.0 * kg * protein * kinetics.ammonia_per_protein.value));
+        let load = usual_feed_kg.map_or(0.0, |kg| {
+            per_liter(1000.0 * kg * protein * kinetics.ammonia_per_protein.value)
+        });
 
         let phosphorus = readings.value("phosphorus").unwrap_or(0.0) / 30_974.0;
         let carbon = chem.carbon(ph, alkalinity, phosphorus);
@@ -169,7 +172,10 @@ impl<'k> Begin<'k> {
             (Part::Oxygen, level),
             (Part::Chloride, chloride),
             (Part::Sodium, sodium),
-            (Part::UsedToPh, readings.middle("ph", 30 * DAY).unwrap_or(ph).min(9.0)),
+            (
+                Part::UsedToPh,
+                readings.middle("ph", 30 * DAY).unwrap_or(ph).min(9.0),
+            ),
         ] {
             part.set(&mut state, value);
         }
@@ -210,7 +216,9 @@ impl<'k> Begin<'k> {
     /// The water with as few (or as many) bacteria as the log allows, and with the ammonia and nitrite that go with that:
     /// a test that reads low hides a filter that does less.
     pub fn extreme(&self, ammonia: Extreme, nitrite: Extreme) -> State {
-        let Some(c) = self.capacity else { return self.state };
+        let Some(c) = self.capacity else {
+            return self.state;
+        };
         let pick = |span: super::Span, end| match end {
             Extreme::Few => span.low,
             Extreme::Many => span.high,
@@ -241,7 +249,12 @@ impl<'k> Begin<'k> {
 /// Sets what keeps the water where it is: breathing and breath that hold oxygen and carbon dioxide, and the alkalinity that
 /// comes in (mg/L as CaCO3 a day) for it to rise by so much while the filter takes its part.
 fn calibrate(farm: &mut Farm<'_>, state: &State, feed: f64, ph: f64, rising: f64) -> Option<()> {
-    let chem = Chemistry::at(Part::Temperature.of(state), farm.ionic, farm.salinity, farm.pressure)?;
+    let chem = Chemistry::at(
+        Part::Temperature.of(state),
+        farm.ionic,
+        farm.salinity,
+        farm.pressure,
+    )?;
     let n = nitrifying(farm, state, &chem, ph);
     let filter = nitrification::oxygen(Basis::EnergyFirstStep) * n.ammonia.0
         + nitrification::oxygen(Basis::EnergySecondStep) * n.nitrite.0;
@@ -272,7 +285,9 @@ fn calibrate(farm: &mut Farm<'_>, state: &State, feed: f64, ph: f64, rising: f64
 
 /// How alkalinity moved in the log's last week, mg/L as CaCO3 a day; `None` where too little tells.
 fn rising(readings: &Readings<'_>) -> Option<f64> {
-    let shift = readings.shift("alkalinity", 7 * DAY).filter(|s| s.span >= DAY / 2)?;
+    let shift = readings
+        .shift("alkalinity", 7 * DAY)
+        .filter(|s| s.span >= DAY / 2)?;
     #[allow(clippy::cast_precision_loss)] // windows are days
     let days = shift.span as f64 / 86_400.0;
     Some(shift.change / days)

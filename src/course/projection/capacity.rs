@@ -110,7 +110,12 @@ pub fn estimate(
         middle: made,
         high: made,
     };
-    let chem = Chemistry::at(Part::Temperature.of(state), farm.ionic, farm.salinity, farm.pressure)?;
+    let chem = Chemistry::at(
+        Part::Temperature.of(state),
+        farm.ionic,
+        farm.salinity,
+        farm.pressure,
+    )?;
     let share_at = |part: Part, value: f64, second: bool| {
         let mut there = *state;
         part.set(&mut there, value.max(0.0));
@@ -127,7 +132,10 @@ pub fn estimate(
         }
     };
     let shares = |part: Part, level: Span, second: bool| {
-        let (a, b) = (share_at(part, level.low, second), share_at(part, level.high, second));
+        let (a, b) = (
+            share_at(part, level.low, second),
+            share_at(part, level.high, second),
+        );
         (a.min(b), share_at(part, level.middle, second), a.max(b))
     };
     let total_ammonia = level(Part::Ammonia, "total-ammonia");

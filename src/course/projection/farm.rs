@@ -70,11 +70,16 @@ impl Farm<'_> {
         let exchange = match gas {
             Gas::Closed => return (0.0, 0.0),
             // Never so slow that what nitrification frees alone would lift the level.
-            Gas::Slow if self.above_air > 1e-9 => usual.min((usual * SLOW).max(self.freed / self.above_air)),
+            Gas::Slow if self.above_air > 1e-9 => {
+                usual.min((usual * SLOW).max(self.freed / self.above_air))
+            }
             Gas::Slow => usual * SLOW,
             Gas::Usual => usual,
             Gas::Open => usual.max(OPEN_PER_DAY),
         };
-        (exchange, (exchange * self.above_air - self.freed) / self.metabolism.max(1e-9))
+        (
+            exchange,
+            (exchange * self.above_air - self.freed) / self.metabolism.max(1e-9),
+        )
     }
 }

@@ -126,7 +126,10 @@ impl Memory {
     /// Whether the last value of a reading stands alone: far from what is usual here, not borne out by the value before
     /// it, by any other reading of the time, or by anything seen. Such a value is to be read again before it is believed.
     pub fn is_doubtful(&self, id: ReadingId) -> bool {
-        self.doubtful.get(usize::from(id.0)).copied().unwrap_or(false)
+        self.doubtful
+            .get(usize::from(id.0))
+            .copied()
+            .unwrap_or(false)
     }
 
     /// Marks a value computed from a doubtful one.
@@ -212,7 +215,8 @@ impl Memory {
                 None => self.doubt(*id, false),
             }
         }
-        let lonely = outliers.iter().filter(|(_, outlier)| *outlier).count() == 1 && !seen_something;
+        let lonely =
+            outliers.iter().filter(|(_, outlier)| *outlier).count() == 1 && !seen_something;
         for (id, outlier) in outliers {
             self.doubt(id, outlier && lonely);
         }
