@@ -9,8 +9,8 @@ mod values;
 
 pub use assess::{Assessor, Review};
 pub use proven::{CauseProof, ProvenPiece};
-pub use routine::span;
+pub use crate::course::{Projection, span};
 pub use values::{
-    Assessment, Avoid, CauseReport, Derived, LeadingFamily, Missing, Override, Projection,
+    Assessment, Avoid, CauseReport, Derived, LeadingFamily, Missing, Override,
     StepReport, Tell, VerifyReport,
 };

@@ -181,7 +181,7 @@ impl<'k> Ground<'k> {
                 continue;
             };
             if self.readings.is_stale(id, known) {
-                let age = crate::assessment::span(self.now() - known.time);
+                let age = crate::course::span(self.now() - known.time);
                 return Ok(Some(Refused {
                     limit: "stale-reading".to_owned(),
                     reason: fill(&words.stale, &[("reading", name(id)), ("age", age)]),

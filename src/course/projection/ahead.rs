@@ -5,7 +5,7 @@ use super::farm::Gas;
 use super::readings::Readings;
 use super::run::{Manner, ORDINARY, Point, run};
 use super::state::{Part, State};
-use crate::assessment::Projection;
+use crate::course::Projection;
 use crate::engine::Limits;
 use crate::history::memory::Memory;
 use crate::knowledge::{Knowledge, LimitLevel, Side};
