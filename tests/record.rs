@@ -32,7 +32,10 @@ fn last_row(farm: &Farm) -> Vec<(String, String)> {
 }
 
 fn cells(pairs: &[(&str, &str)]) -> Vec<(String, String)> {
-    pairs.iter().map(|(h, c)| ((*h).to_owned(), (*c).to_owned())).collect()
+    pairs
+        .iter()
+        .map(|(h, c)| ((*h).to_owned(), (*c).to_owned()))
+        .collect()
 }
 
 fn refused(came: &Came, status: i32, part: &str) {
@@ -46,8 +49,15 @@ fn a_row_goes_into_the_columns_that_there_are() {
     let farm = farm();
     let before = farm.read("log.csv");
     let said = farm.does(&[
-        "record", "ph=6.4", "nitrite=0.99mg/L as NO2", "temperature=70F", "sign=fish-off-feed;!fish-gasping",
-        "event=feed-stopped", "note=two, \"fat\" ones jumped", "by=Ines", "done=air-round",
+        "record",
+        "ph=6.4",
+        "nitrite=0.99mg/L as NO2",
+        "temperature=70F",
+        "sign=fish-off-feed;!fish-gasping",
+        "event=feed-stopped",
+        "note=two, \"fat\" ones jumped",
+        "by=Ines",
+        "done=air-round",
     ]);
     assert_eq!(
         last_row(&farm),
@@ -62,8 +72,14 @@ fn a_row_goes_into_the_columns_that_there_are() {
             ("note", "done: air-round; two, \"fat\" ones jumped"),
         ])
     );
-    assert!(farm.read("log.csv").starts_with(&before), "older rows are untouched");
-    assert!(said.contains("pH 6.40: down by 0.42 from 6.82 on Mar 1, 17:00"), "{said}");
+    assert!(
+        farm.read("log.csv").starts_with(&before),
+        "older rows are untouched"
+    );
+    assert!(
+        said.contains("pH 6.40: down by 0.42 from 6.82 on Mar 1, 17:00"),
+        "{said}"
+    );
 }
 
 #[test]
@@ -71,17 +87,38 @@ fn a_new_reading_gets_a_column_and_every_row_an_empty_cell() {
     let farm = farm();
     farm.does(&["record", "iron=1.2", "makeup-water=10gal"]);
     let log = farm.read("log.csv");
-    assert!(log.lines().next().unwrap().ends_with("note,iron,makeup-water"));
+    assert!(
+        log.lines()
+            .next()
+            .unwrap()
+            .ends_with("note,iron,makeup-water")
+    );
     let commas: BTreeSet<usize> = log.lines().map(|l| l.matches(',').count()).collect();
-    assert_eq!(commas, BTreeSet::from([15]), "one number of cells in all rows");
+    assert_eq!(
+        commas,
+        BTreeSet::from([15]),
+        "one number of cells in all rows"
+    );
     let review = farm.json(&["review"]);
-    assert_eq!((review["log"]["rows_used"].as_u64(), review["log"]["rows_refused"].as_u64()), (Some(29), Some(0)));
-    assert_eq!(last_row(&farm)[2], ("makeup-water".to_owned(), "37.8541".to_owned()));
+    assert_eq!(
+        (
+            review["log"]["rows_used"].as_u64(),
+            review["log"]["rows_refused"].as_u64()
+        ),
+        (Some(29), Some(0))
+    );
+    assert_eq!(
+        last_row(&farm)[2],
+        ("makeup-water".to_owned(), "37.8541".to_owned())
+    );
 }
 
 #[test]
 fn a_log_is_begun_where_there_is_none() {
-    let mut farm = Farm::with(&[("site.toml", "name = \"New\"\nlog = \"log.csv\"\nunits = \"us\"\n")]);
+    let mut farm = Farm::with(&[(
+        "site.toml",
+        "name = \"New\"\nlog = \"log.csv\"\nunits = \"us\"\n",
+    )]);
     farm.at("2026-03-02 07:30");
     let said = farm.does(&["record", "temperature=75", "nitrite=0.1", "by=Rui"]);
     assert_eq!(
@@ -94,10 +131,26 @@ fn a_log_is_begun_where_there_is_none() {
 #[test]
 fn other_logs_keep_their_ways() {
     for (log, args, made) in [
-        ("time;ph;note\r\n2026-03-01 07:00;6,8;\r\n", ["ph=6.45", "note=a;b"], "time;ph;note\r\n2026-03-01 07:00;6,8;\r\n2026-03-02 07:30;6,45;\"a;b\"\r\n"),
-        ("\u{feff}time\tph\n2026-03-01 07:00\t6.8", ["ph=6.4", "by=Ines"], "\u{feff}time\tph\tby\n2026-03-01 07:00\t6.8\t\n2026-03-02 07:30\t6.4\tInes\n"),
-        ("time,note,ph\n2026-03-01 07:00,\"two\nlines, \"\"so\"\"\",6.8\n", ["ph=6.4", "by=Ines"], "time,note,ph,by\n2026-03-01 07:00,\"two\nlines, \"\"so\"\"\",6.8,\n2026-03-02 07:30,,6.4,Ines\n"),
-        ("{\"time\":\"2026-03-01 07:00\",\"ph\":6.8}\n", ["ph=6.4", "by=Ines"], "{\"time\":\"2026-03-01 07:00\",\"ph\":6.8}\n{\"time\":\"2026-03-02 07:30\",\"ph\":6.4,\"by\":\"Ines\"}\n"),
+        (
+            "time;ph;note\r\n2026-03-01 07:00;6,8;\r\n",
+            ["ph=6.45", "note=a;b"],
+            "time;ph;note\r\n2026-03-01 07:00;6,8;\r\n2026-03-02 07:30;6,45;\"a;b\"\r\n",
+        ),
+        (
+            "\u{feff}time\tph\n2026-03-01 07:00\t6.8",
+            ["ph=6.4", "by=Ines"],
+            "\u{feff}time\tph\tby\n2026-03-01 07:00\t6.8\t\n2026-03-02 07:30\t6.4\tInes\n",
+        ),
+        (
+            "time,note,ph\n2026-03-01 07:00,\"two\nlines, \"\"so\"\"\",6.8\n",
+            ["ph=6.4", "by=Ines"],
+            "time,note,ph,by\n2026-03-01 07:00,\"two\nlines, \"\"so\"\"\",6.8,\n2026-03-02 07:30,,6.4,Ines\n",
+        ),
+        (
+            "{\"time\":\"2026-03-01 07:00\",\"ph\":6.8}\n",
+            ["ph=6.4", "by=Ines"],
+            "{\"time\":\"2026-03-01 07:00\",\"ph\":6.8}\n{\"time\":\"2026-03-02 07:30\",\"ph\":6.4,\"by\":\"Ines\"}\n",
+        ),
     ] {
         let farm = farm();
         farm.write("log.csv", log);
@@ -122,7 +175,10 @@ fn a_correction_names_the_wrong_row() {
     farm.does(&["record", "corrects=2026-03-01 17:00", "ph=6.9", "by=Ines"]);
     assert!(last_row(&farm).contains(&("corrects".to_owned(), "2026-03-01 17:00".to_owned())));
     let review = farm.json(&["review"]);
-    assert_eq!(review["last_row"], "2026-03-01T17:00:00Z", "a correction is no new row");
+    assert_eq!(
+        review["last_row"], "2026-03-01T17:00:00Z",
+        "a correction is no new row"
+    );
     let came = farm.run(&["record", "corrects=2026-03-01 17:01", "ph=6.9"]);
     refused(&came, 3, "no earlier row at 2026-03-01 17:01");
 }
@@ -132,13 +188,22 @@ fn what_can_not_be_is_refused_with_its_reason() {
     let farm = farm();
     let before = farm.read("log.csv");
     for (args, part) in [
-        (&["ph=64"][..], "pH 64 is outside of what water shows (2 to 12 pH)"),
-        (&["temperature=72"], "if it is in F, write `temperature=72F`"),
+        (
+            &["ph=64"][..],
+            "pH 64 is outside of what water shows (2 to 12 pH)",
+        ),
+        (
+            &["temperature=72"],
+            "if it is in F, write `temperature=72F`",
+        ),
         (&["nitrite=-1"], "outside of what water shows"),
         (&["nitrite=0,3"], "write a decimal point"),
         (&["nitrit=0.3"], "did you mean `nitrite`?"),
         (&["brown-gills=yes"], "write it as `sign=brown-gills`"),
-        (&["un-ionized-ammonia=0.1"], "worked out from other readings"),
+        (
+            &["un-ionized-ammonia=0.1"],
+            "worked out from other readings",
+        ),
         (&["nitrite=0.3 furlong"], "it takes mg/L as N"),
         (&["nitrite=nan"], "is not a number"),
         (&["ph"], "is not key=value"),
@@ -159,8 +224,17 @@ fn what_can_not_be_is_refused_with_its_reason() {
 #[test]
 fn a_value_that_needs_action_is_warned_of_at_once() {
     let farm = farm();
-    farm.does(&["record", "dissolved-oxygen=2.0", "temperature=24", "sign=fish-gasping;fish-at-inflow;weak-aeration"]);
-    let said = farm.does(&["record", "dissolved-oxygen=1.8", "sign=fish-gasping;weak-aeration"]);
+    farm.does(&[
+        "record",
+        "dissolved-oxygen=2.0",
+        "temperature=24",
+        "sign=fish-gasping;fish-at-inflow;weak-aeration",
+    ]);
+    let said = farm.does(&[
+        "record",
+        "dissolved-oxygen=1.8",
+        "sign=fish-gasping;weak-aeration",
+    ]);
     assert!(said.contains("ACT NOW"), "{said}");
     assert!(said.contains("Turn on all the air there is"), "{said}");
 }
@@ -186,14 +260,31 @@ fn a_form_is_made_filled_in_and_taken_back() {
     farm.write("form.csv", &filled);
     farm.does(&["record", "--form", "form.csv"]);
     let log = farm.read("log.csv");
-    let new: Vec<&str> = log.lines().filter(|l| l.starts_with("2026-03-02 07:30")).collect();
+    let new: Vec<&str> = log
+        .lines()
+        .filter(|l| l.starts_with("2026-03-02 07:30"))
+        .collect();
     assert_eq!(new.len(), 2, "oxygen has a place of its own: {new:?}");
-    assert!(log.contains("done: quiet-look air-round; all quiet"), "{log}");
+    assert!(
+        log.contains("done: quiet-look air-round; all quiet"),
+        "{log}"
+    );
     let list = farm.does(&["shift", "--shift", "early"]);
-    assert!(!list.contains("Sound of the blower"), "what was done is not due again");
-    refused(&farm.run(&["record", "--form", "site.toml"]), 3, "no columns `item` and `value`");
+    assert!(
+        !list.contains("Sound of the blower"),
+        "what was done is not due again"
+    );
+    refused(
+        &farm.run(&["record", "--form", "site.toml"]),
+        3,
+        "no columns `item` and `value`",
+    );
     farm.write("form.csv", &filled.replace("6.75", "67.5"));
-    refused(&farm.run(&["record", "--form", "form.csv"]), 3, "outside of what water shows");
+    refused(
+        &farm.run(&["record", "--form", "form.csv"]),
+        3,
+        "outside of what water shows",
+    );
     assert_eq!(farm.read("log.csv"), log);
 }
 
@@ -204,7 +295,9 @@ fn two_at_once_are_both_written() {
         .map(|n| {
             // Half of them bring a column of their own.
             let more = if n % 2 == 0 { "iron=1" } else { "potassium=30" };
-            farm.command(&["record", &format!("note=row-{n}"), more]).spawn().unwrap()
+            farm.command(&["record", &format!("note=row-{n}"), more])
+                .spawn()
+                .unwrap()
         })
         .collect();
     for child in many {
@@ -213,16 +306,29 @@ fn two_at_once_are_both_written() {
     }
     let log = farm.read("log.csv");
     for n in 0..12 {
-        assert_eq!(log.matches(&format!("row-{n},")).count(), 1, "row-{n} in\n{log}");
+        assert_eq!(
+            log.matches(&format!("row-{n},")).count(),
+            1,
+            "row-{n} in\n{log}"
+        );
     }
     let review = farm.json(&["review"]);
-    assert_eq!((review["log"]["rows_used"].as_u64(), review["log"]["rows_refused"].as_u64()), (Some(40), Some(0)));
+    assert_eq!(
+        (
+            review["log"]["rows_used"].as_u64(),
+            review["log"]["rows_refused"].as_u64()
+        ),
+        (Some(40), Some(0))
+    );
 }
 
 /// Killed at random points: after each the log is as it was, or has the whole new row. `GILLSIDE_KILLS` sets how often.
 #[test]
 fn killed_at_any_point_nothing_is_lost_or_half_written() {
-    let kills: u32 = std::env::var("GILLSIDE_KILLS").ok().and_then(|n| n.parse().ok()).unwrap_or(220);
+    let kills: u32 = std::env::var("GILLSIDE_KILLS")
+        .ok()
+        .and_then(|n| n.parse().ok())
+        .unwrap_or(220);
     let farm = farm();
     let begun = Instant::now();
     farm.does(&["record", "note=how long it takes"]);
@@ -232,12 +338,24 @@ fn killed_at_any_point_nothing_is_lost_or_half_written() {
     for n in 0..kills {
         let before = farm.read("log.csv");
         // Every eighth brings a column that is new, so that the head is written anew as well.
-        let column = ["iron", "copper", "zinc", "hardness", "sodium", "redox"][(n as usize / 8) % 6];
+        let column =
+            ["iron", "copper", "zinc", "hardness", "sodium", "redox"][(n as usize / 8) % 6];
         let more = format!("{column}=1");
         let note = format!("note=kill-{n}");
-        let args: &[&str] = if n % 8 == 0 { &["record", &note, &more] } else { &["record", &note] };
-        let mut child = farm.command(args).stdout(Stdio::null()).stderr(Stdio::null()).spawn().unwrap();
-        random = random.wrapping_mul(6_364_136_223_846_793_005).wrapping_add(1_442_695_040_888_963_407);
+        let args: &[&str] = if n % 8 == 0 {
+            &["record", &note, &more]
+        } else {
+            &["record", &note]
+        };
+        let mut child = farm
+            .command(args)
+            .stdout(Stdio::null())
+            .stderr(Stdio::null())
+            .spawn()
+            .unwrap();
+        random = random
+            .wrapping_mul(6_364_136_223_846_793_005)
+            .wrapping_add(1_442_695_040_888_963_407);
         let share = u32::try_from(random >> 40).unwrap() % 1300;
         let begun = Instant::now();
         sleep(usual * share / 1000);
@@ -254,7 +372,8 @@ fn killed_at_any_point_nothing_is_lost_or_half_written() {
         let mark = format!("kill-{n}");
         let last = after.lines().last().unwrap();
         assert!(after.ends_with('\n') && last.contains(&mark), "{last}");
-        let (old, new): (Vec<&str>, Vec<&str>) = (before.lines().collect(), after.lines().collect());
+        let (old, new): (Vec<&str>, Vec<&str>) =
+            (before.lines().collect(), after.lines().collect());
         assert_eq!(new.len(), old.len() + 1);
         for (was, is) in old.iter().zip(&new) {
             assert!(is.starts_with(was), "{was} became {is}");
@@ -262,12 +381,21 @@ fn killed_at_any_point_nothing_is_lost_or_half_written() {
         let counts: BTreeSet<usize> = new.iter().map(|l| l.matches(',').count()).collect();
         assert_eq!(counts.len(), 1, "all rows have as many cells as the head");
     }
-    assert!(whole > 0 && none > 0, "killed too early or too late to tell: {none} without, {whole} with the row");
+    assert!(
+        whole > 0 && none > 0,
+        "killed too early or too late to tell: {none} without, {whole} with the row"
+    );
     farm.does(&["record", "note=goes on"]);
     let review = farm.json(&["review"]);
     assert_eq!(review["log"]["rows_refused"], 0);
-    let hidden: Vec<_> = std::fs::read_dir(farm.path(".")).unwrap().map(|e| e.unwrap().file_name()).collect();
-    assert!(!hidden.iter().any(|n| n.to_string_lossy().ends_with(".new")), "no litter: {hidden:?}");
+    let hidden: Vec<_> = std::fs::read_dir(farm.path("."))
+        .unwrap()
+        .map(|e| e.unwrap().file_name())
+        .collect();
+    assert!(
+        !hidden.iter().any(|n| n.to_string_lossy().ends_with(".new")),
+        "no litter: {hidden:?}"
+    );
 }
 
 /// A file may not grow beyond so many blocks: what a full disk does to a write, without being root.
@@ -277,15 +405,33 @@ fn a_full_disk_leaves_the_log_as_it_was() {
     let farm = farm();
     let mut log = two_weeks();
     // Larger than the limit below, so that the new file does not fit.
-    log.insert_str(HEAD.len(), &format!("2026-02-01 07:30,,,,,,,,,,,,,{}\n", "x".repeat(9_000)));
+    log.insert_str(
+        HEAD.len(),
+        &format!("2026-02-01 07:30,,,,,,,,,,,,,{}\n", "x".repeat(9_000)),
+    );
     for n in 0..8 {
-        log.insert_str(HEAD.len(), &format!("2026-01-0{} 07:30,,,,,,,,,,,,,{}\n", 8 - n, "x".repeat(9_000)));
+        log.insert_str(
+            HEAD.len(),
+            &format!(
+                "2026-01-0{} 07:30,,,,,,,,,,,,,{}\n",
+                8 - n,
+                "x".repeat(9_000)
+            ),
+        );
     }
     farm.write("log.csv", &log);
     let limited = |signal: &str| {
         let program = env!("CARGO_BIN_EXE_gillside");
-        let script = format!("{signal} ulimit -f 16; exec {program} record ph=6.4 --clock '2026-03-02 07:30'");
-        came(Command::new("sh").args(["-c", &script]).current_dir(farm.path(".")).output().unwrap())
+        let script = format!(
+            "{signal} ulimit -f 16; exec {program} record ph=6.4 --clock '2026-03-02 07:30'"
+        );
+        came(
+            Command::new("sh")
+                .args(["-c", &script])
+                .current_dir(farm.path("."))
+                .output()
+                .unwrap(),
+        )
     };
     let told = limited("trap '' XFSZ;");
     refused(&told, 1, "was left as it was");
@@ -305,8 +451,15 @@ fn a_full_disk_leaves_the_log_as_it_was() {
 #[test]
 fn an_answer_that_can_not_be_written_is_told() {
     let farm = farm();
-    let full = std::fs::OpenOptions::new().write(true).open("/dev/full").unwrap();
-    let output = farm.command(&["record", "ph=6.4"]).stdout(full).output().unwrap();
+    let full = std::fs::OpenOptions::new()
+        .write(true)
+        .open("/dev/full")
+        .unwrap();
+    let output = farm
+        .command(&["record", "ph=6.4"])
+        .stdout(full)
+        .output()
+        .unwrap();
     assert_eq!(output.status.code(), Some(1));
     assert!(farm.read("log.csv").contains("2026-03-02 07:30,,6.4"));
 }
@@ -316,7 +469,9 @@ fn an_answer_that_can_not_be_written_is_told() {
 fn where_nothing_may_be_written_it_is_said() {
     use std::os::unix::fs::PermissionsExt;
     let farm = farm();
-    let set = |name: &str, mode| std::fs::set_permissions(farm.path(name), std::fs::Permissions::from_mode(mode)).unwrap();
+    let set = |name: &str, mode| {
+        std::fs::set_permissions(farm.path(name), std::fs::Permissions::from_mode(mode)).unwrap()
+    };
     set("log.csv", 0o444);
     refused(&farm.run(&["record", "ph=6.4"]), 1, "write-protected");
     set("log.csv", 0o644);
@@ -330,8 +485,16 @@ fn where_nothing_may_be_written_it_is_said() {
     let came = farm.run(&["record", "ph=6.4", "--log", &log]);
     set(".", 0o755);
     refused(&came, 1, "was left as it was");
-    refused(&farm.run(&["record", "ph=6.4", "--log", "nowhere/log.csv"]), 1, "make the folder first");
-    refused(&farm.run(&["record", "ph=6.4", "--log", "."]), 3, "no ordinary file");
+    refused(
+        &farm.run(&["record", "ph=6.4", "--log", "nowhere/log.csv"]),
+        1,
+        "make the folder first",
+    );
+    refused(
+        &farm.run(&["record", "ph=6.4", "--log", "."]),
+        3,
+        "no ordinary file",
+    );
 }
 
 #[test]
@@ -346,6 +509,9 @@ fn a_log_that_can_not_be_read_is_not_added_to() {
         assert_eq!(farm.read("log.csv"), log);
     }
     let farm = farm();
-    std::fs::File::create(farm.path("log.csv")).unwrap().write_all(b"time,ph\n\xff\xfe\n").unwrap();
+    std::fs::File::create(farm.path("log.csv"))
+        .unwrap()
+        .write_all(b"time,ph\n\xff\xfe\n")
+        .unwrap();
     refused(&farm.run(&["record", "ph=6.4"]), 3, "not UTF-8");
 }

@@ -19,10 +19,19 @@ const PLAN: &str = r#"{"schema": 1, "kind": "temperature", "from": {"temperature
 
 /// Temperature of each shift from Monday's early one on.
 const TEMPERATURE: [f64; 21] = [
-    18.4, 18.2, 18.0, 17.9, 18.6, 19.8, 20.8, 22.0, 23.4, 23.8, 23.9, 23.8, 23.9, 24.1, 23.9, 23.8, 24.2, 23.9, 23.9, 24.1, 24.0,
+    18.4, 18.2, 18.0, 17.9, 18.6, 19.8, 20.8, 22.0, 23.4, 23.8, 23.9, 23.8, 23.9, 24.1, 23.9, 23.8,
+    24.2, 23.9, 23.9, 24.1, 24.0,
 ];
 /// Nitrite and total ammonia of each morning.
-const MORNING: [(f64, f64); 7] = [(0.6, 0.5), (0.9, 0.7), (1.3, 0.8), (1.1, 0.6), (0.7, 0.4), (0.35, 0.3), (0.12, 0.2)];
+const MORNING: [(f64, f64); 7] = [
+    (0.6, 0.5),
+    (0.9, 0.7),
+    (1.3, 0.8),
+    (1.1, 0.6),
+    (0.7, 0.4),
+    (0.35, 0.3),
+    (0.12, 0.2),
+];
 const NAMES: [&str; 3] = ["early", "late", "night"];
 const PEOPLE: [&str; 3] = ["Ines", "Rui", "Marta"];
 
@@ -35,7 +44,11 @@ struct Week {
 /// An hour of a shift's day: shift 0 is Monday's early one.
 fn clock(shift: usize, hour: usize, minute: usize) -> String {
     let hours = 6 + 8 * shift + hour;
-    format!("2026-03-{:02} {:02}:{minute:02}", 2 + hours / 24, hours % 24)
+    format!(
+        "2026-03-{:02} {:02}:{minute:02}",
+        2 + hours / 24,
+        hours % 24
+    )
 }
 
 /// Words on one line, so that where they are wrapped does not matter.
@@ -45,7 +58,11 @@ fn flat(text: &str) -> String {
 
 /// `2026-03-05T06:40:00Z` as pages show it: `Mar 5, 06:40`.
 fn shown(time: &str) -> String {
-    format!("Mar {}, {}", time[8..10].trim_start_matches('0'), &time[11..16])
+    format!(
+        "Mar {}, {}",
+        time[8..10].trim_start_matches('0'),
+        &time[11..16]
+    )
 }
 
 impl Week {
@@ -61,39 +78,74 @@ impl Week {
         let list = self.farm.json(&["shift"]);
         assert_eq!(list["shift"], NAMES[next % 3], "the next shift is meant");
         let end = list["end"].as_str().unwrap();
-        let items: Vec<&Value> = list["places"].as_array().unwrap().iter().flat_map(|p| p["items"].as_array().unwrap()).collect();
+        let items: Vec<&Value> = list["places"]
+            .as_array()
+            .unwrap()
+            .iter()
+            .flat_map(|p| p["items"].as_array().unwrap())
+            .collect();
         let on_list = |kind: &str, id: &str, due: &str| {
-            items.iter().any(|i| i["kind"] == kind && i["id"] == id && i["due"] == due)
+            items
+                .iter()
+                .any(|i| i["kind"] == kind && i["id"] == id && i["due"] == due)
         };
         for check in incident["checks"].as_array().unwrap() {
             let state = check["state"].as_str().unwrap();
-            let (id, due) = (check["id"].as_str().unwrap(), check["due"].as_str().unwrap());
+            let (id, due) = (
+                check["id"].as_str().unwrap(),
+                check["due"].as_str().unwrap(),
+            );
             if state == "met" {
-                assert!(!on_list("check", id, due), "{id} is met, and on the list of {}", NAMES[next % 3]);
+                assert!(
+                    !on_list("check", id, due),
+                    "{id} is met, and on the list of {}",
+                    NAMES[next % 3]
+                );
                 continue;
             }
-            assert!(note.contains(&format!("by {}", shown(due))), "the note does not say that {id} is due {due}:\n{note}");
+            assert!(
+                note.contains(&format!("by {}", shown(due))),
+                "the note does not say that {id} is due {due}:\n{note}"
+            );
             // A check that failed stays until somebody does something about it.
             let wanted = due < end || state == "missed";
-            assert_eq!(on_list("check", id, due), wanted, "{id}, {state}, due {due}, on the list to {end}");
+            assert_eq!(
+                on_list("check", id, due),
+                wanted,
+                "{id}, {state}, due {due}, on the list to {end}"
+            );
             self.checked += usize::from(wanted);
         }
         for (n, step) in (1..).zip(incident["plan"].as_array().unwrap()) {
             let (id, at) = (format!("plan-{n}"), step["at"].as_str().unwrap());
             if step["done"].is_null() {
-                assert!(note.contains(&id) && note.contains(&shown(at)), "the note does not name {id}:\n{note}");
+                assert!(
+                    note.contains(&id) && note.contains(&shown(at)),
+                    "the note does not name {id}:\n{note}"
+                );
             }
             let wanted = step["done"].is_null() && at < end;
-            assert_eq!(on_list("plan", &id, at), wanted, "{id} at {at}, on the list to {end}");
+            assert_eq!(
+                on_list("plan", &id, at),
+                wanted,
+                "{id} at {at}, on the list to {end}"
+            );
             if wanted {
                 let item = items.iter().find(|i| i["id"] == *id).unwrap();
                 let conditions = item["conditions"].to_string();
-                assert!(conditions.contains("go on only if") && conditions.contains("stop if: fish gasp"), "{item}");
+                assert!(
+                    conditions.contains("go on only if")
+                        && conditions.contains("stop if: fish gasp"),
+                    "{item}"
+                );
             }
         }
         for avoid in incident["avoid"].as_array().unwrap().iter().take(2) {
             let text = flat(avoid["text"].as_str().unwrap());
-            assert!(note.contains(&text), "the note does not say what to leave alone:\n{note}");
+            assert!(
+                note.contains(&text),
+                "the note does not say what to leave alone:\n{note}"
+            );
         }
         assert!(note.lines().count() <= 60);
         self.handovers += 1;
@@ -108,8 +160,12 @@ impl Week {
         if shift % 3 == 0 {
             let (nitrite, ammonia) = MORNING[shift / 3];
             words.extend([
-                format!("nitrite={nitrite}"), format!("total-ammonia={ammonia}"), "ph=6.8".to_owned(), "dissolved-oxygen=7.4".to_owned(),
-                "chloride=45".to_owned(), "sign=!fish-gasping".to_owned(),
+                format!("nitrite={nitrite}"),
+                format!("total-ammonia={ammonia}"),
+                "ph=6.8".to_owned(),
+                "dissolved-oxygen=7.4".to_owned(),
+                "chloride=45".to_owned(),
+                "sign=!fish-gasping".to_owned(),
             ]);
         }
         if shift == 0 {
@@ -138,8 +194,18 @@ fn a_cold_week() {
     // Sunday evening: the list of the early shift, nothing is open.
     week.farm.at("2026-03-02 05:45");
     let list = week.farm.json(&["shift"]);
-    assert_eq!((list["shift"].as_str(), list["incidents"].as_array().map(Vec::len)), (Some("early"), Some(0)));
-    assert!(week.farm.does(&["incident", "handover"]).contains("No incident is open"));
+    assert_eq!(
+        (
+            list["shift"].as_str(),
+            list["incidents"].as_array().map(Vec::len)
+        ),
+        (Some("early"), Some(0))
+    );
+    assert!(
+        week.farm
+            .does(&["incident", "handover"])
+            .contains("No incident is open")
+    );
 
     // Monday, early: found and opened; the heat is back on at eight, feed is off.
     week.measure(0);
@@ -148,10 +214,20 @@ fn a_cold_week() {
     assert!(said.starts_with("Opened 2026-03-02-"), "{said}");
     let opened = week.incident();
     assert_eq!(opened["by"], "Ines");
-    assert!(opened["ranking"].to_string().contains("water-chilled"), "{}", opened["ranking"]);
+    assert!(
+        opened["ranking"].to_string().contains("water-chilled"),
+        "{}",
+        opened["ranking"]
+    );
     week.done(&clock(0, 1, 0), "feed-off", "Ines");
     week.done(&clock(0, 2, 0), "restore-heat", "Ines");
-    week.farm.does(&["incident", "note", "breaker had tripped; reset once", "--by", "Ines"]);
+    week.farm.does(&[
+        "incident",
+        "note",
+        "breaker had tripped; reset once",
+        "--by",
+        "Ines",
+    ]);
 
     let mut failed = false;
     for shift in 1..21 {
@@ -163,11 +239,17 @@ fn a_cold_week() {
                 week.farm.at(&clock(3, 2, 0));
                 let followed = week.farm.json(&["incident", "follow", "--by", "Ines"]);
                 let checks = followed["checks"].as_array().unwrap();
-                failed = checks.iter().any(|c| c["id"] == "temperature" && c["state"] == "missed");
+                failed = checks
+                    .iter()
+                    .any(|c| c["id"] == "temperature" && c["state"] == "missed");
                 assert!(failed, "{followed:#}");
-                assert!(followed["again"]["next"]["text"].is_string(), "{followed:#}");
+                assert!(
+                    followed["again"]["next"]["text"].is_string(),
+                    "{followed:#}"
+                );
                 week.farm.write("plan.json", PLAN);
-                week.farm.does(&["incident", "plan", "plan.json", "--by", "Ines"]);
+                week.farm
+                    .does(&["incident", "plan", "plan.json", "--by", "Ines"]);
             }
             4 => {
                 week.done(&clock(4, 1, 0), "plan-1", "Rui");
@@ -178,29 +260,60 @@ fn a_cold_week() {
             10 => {
                 let followed = week.farm.json(&["incident", "follow", "--by", "Rui"]);
                 let checks = followed["checks"].as_array().unwrap();
-                assert!(checks.iter().any(|c| c["id"] == "temperature" && c["state"] == "met"), "{followed:#}");
+                assert!(
+                    checks
+                        .iter()
+                        .any(|c| c["id"] == "temperature" && c["state"] == "met"),
+                    "{followed:#}"
+                );
             }
             _ => {}
         }
     }
     assert!(failed);
     assert_eq!(week.handovers, 20);
-    assert!(week.checked >= 6, "only {} due checks were ever looked for", week.checked);
+    assert!(
+        week.checked >= 6,
+        "only {} due checks were ever looked for",
+        week.checked
+    );
 
     // Sunday: over.
     week.farm.at("2026-03-08 20:00");
-    week.farm.does(&["incident", "close", "--cause", "biofilter-cold-slowed", "--outcome", "nitrite took six days", "--by", "Marta"]);
+    week.farm.does(&[
+        "incident",
+        "close",
+        "--cause",
+        "biofilter-cold-slowed",
+        "--outcome",
+        "nitrite took six days",
+        "--by",
+        "Marta",
+    ]);
     let list = week.farm.json(&["shift"]);
     assert_eq!(list["incidents"].as_array().map(Vec::len), Some(0));
     let id = opened["id"].as_str().unwrap();
     let closed = week.farm.json(&["incident", "show", id]);
     assert_eq!(closed["closed"]["cause"], "biofilter-cold-slowed");
     assert_eq!(closed["follow_ups"].as_array().map(Vec::len), Some(2));
-    assert!(closed["follow_ups"][0]["made_by"]["knowledge"].as_str().is_some_and(|k| k.len() == 64));
+    assert!(
+        closed["follow_ups"][0]["made_by"]["knowledge"]
+            .as_str()
+            .is_some_and(|k| k.len() == 64)
+    );
     let rows = closed["log"]["rows"].as_array().unwrap();
-    assert!(rows.iter().all(|r| r["by"].is_string()), "who recorded what");
+    assert!(
+        rows.iter().all(|r| r["by"].is_string()),
+        "who recorded what"
+    );
     let stamped = [&closed["notes"], &closed["steps"], &closed["plan"]];
-    assert!(stamped[2].as_array().unwrap().iter().all(|p| p["by"] == "Rui"));
+    assert!(
+        stamped[2]
+            .as_array()
+            .unwrap()
+            .iter()
+            .all(|p| p["by"] == "Rui")
+    );
 }
 
 #[test]
@@ -221,11 +334,23 @@ fn what_is_due_follows_the_log_and_the_site() {
     ] {
         assert_eq!(flat(&list).contains(part), there, "{part} in\n{list}");
     }
-    let places: Vec<&str> = list.lines().filter(|l| ["RAFT BEDS", "TANK 1", "SUMP", "BENCH"].contains(l)).collect();
-    assert_eq!(places, ["RAFT BEDS", "TANK 1", "SUMP", "BENCH"], "in walking order");
+    let places: Vec<&str> = list
+        .lines()
+        .filter(|l| ["RAFT BEDS", "TANK 1", "SUMP", "BENCH"].contains(l))
+        .collect();
+    assert_eq!(
+        places,
+        ["RAFT BEDS", "TANK 1", "SUMP", "BENCH"],
+        "in walking order"
+    );
     // What was done in the morning is not due in the afternoon; an event says it as well as `done`.
     farm.at("2026-03-02 07:30");
-    farm.does(&["record", "feed=4.5", "event=probe-calibrated", "done=plant-look"]);
+    farm.does(&[
+        "record",
+        "feed=4.5",
+        "event=probe-calibrated",
+        "done=plant-look",
+    ]);
     farm.at("2026-03-02 13:45");
     let late = flat(&farm.does(&["shift"]));
     for part in ["Weigh the feed", "Calibrate the pH probe", "One new leaf"] {
@@ -236,11 +361,22 @@ fn what_is_due_follows_the_log_and_the_site() {
     farm.does(&["record", "event=cold-snap"]);
     assert!(flat(&farm.does(&["shift"])).contains("heaters fail on the night they are needed"));
     let on = farm.json(&["shift", "--shift", "night", "--on", "2026-03-05"]);
-    assert_eq!((on["start"].as_str(), on["end"].as_str()), (Some("2026-03-05T22:00:00Z"), Some("2026-03-06T06:00:00Z")));
+    assert_eq!(
+        (on["start"].as_str(), on["end"].as_str()),
+        (Some("2026-03-05T22:00:00Z"), Some("2026-03-06T06:00:00Z"))
+    );
     for (args, status, part) in [
-        (&["shift", "--shift", "noon"][..], 2, "no shift called `noon`"),
+        (
+            &["shift", "--shift", "noon"][..],
+            2,
+            "no shift called `noon`",
+        ),
         (&["shift", "--on", "tomorrow"], 2, "is not a date"),
-        (&["shift", "--form", "--format", "json"], 2, "can't be written as json"),
+        (
+            &["shift", "--form", "--format", "json"],
+            2,
+            "can't be written as json",
+        ),
         (&["shift", "--log", "nowhere.csv"], 3, "can't be opened"),
     ] {
         let came = farm.run(args);
@@ -252,7 +388,10 @@ fn what_is_due_follows_the_log_and_the_site() {
 fn a_new_farm_has_a_checklist_too() {
     let farm = Farm::with(&[("site.toml", "name = \"New\"\nlog = \"log.csv\"\n")]);
     let list = farm.does(&["shift"]);
-    assert!(list.contains("Before you make a noise") && list.contains("No numbers yet"), "{list}");
+    assert!(
+        list.contains("Before you make a noise") && list.contains("No numbers yet"),
+        "{list}"
+    );
     let bare = Farm::with(&[]);
     assert!(bare.does(&["shift"]).contains("A farm without a site file"));
     let card = bare.does(&["shift", "--emergency-card"]);
@@ -264,12 +403,22 @@ fn a_new_farm_has_a_checklist_too() {
 fn the_card_says_how_long_there_is_on_this_farm() {
     let mut farm = Farm::with(&[("site.toml", SITE), ("log.csv", &two_weeks())]);
     farm.at("2026-03-02 05:45");
-    let minutes = |farm: &Farm| farm.json(&["shift", "--emergency-card"])["stops"][0]["minutes"].as_u64().unwrap();
+    let minutes = |farm: &Farm| {
+        farm.json(&["shift", "--emergency-card"])["stops"][0]["minutes"]
+            .as_u64()
+            .unwrap()
+    };
     let here = minutes(&farm);
     assert!((5..40).contains(&here), "{here}");
-    farm.write("site.toml", &SITE.replace("biomass_kg = 320", "biomass_kg = 80"));
+    farm.write(
+        "site.toml",
+        &SITE.replace("biomass_kg = 320", "biomass_kg = 80"),
+    );
     let fewer = minutes(&farm);
-    assert!(fewer >= here * 3, "a quarter of the fish has longer: {here}, {fewer}");
+    assert!(
+        fewer >= here * 3,
+        "a quarter of the fish has longer: {here}, {fewer}"
+    );
     let card = farm.json(&["shift", "--emergency-card"]);
     for stop in card["stops"].as_array().unwrap() {
         assert_eq!(stop["steps"].as_array().map(Vec::len), Some(3), "{stop}");
@@ -279,7 +428,9 @@ fn the_card_says_how_long_there_is_on_this_farm() {
 /// Pages that a printed PDF has.
 fn pages(pdf: &[u8]) -> usize {
     let text = String::from_utf8_lossy(pdf);
-    text.matches("/Type /Page\n").count() + text.matches("/Type /Page/").count() + text.matches("/Type /Page ").count()
+    text.matches("/Type /Page\n").count()
+        + text.matches("/Type /Page/").count()
+        + text.matches("/Type /Page ").count()
 }
 
 /// Prints to A4 and Letter with a browser: `GILLSIDE_CHROMIUM=chromium cargo test --test shift -- --ignored`.
@@ -290,12 +441,30 @@ fn each_page_prints_on_one_sheet() {
     let mut farm = Farm::with(&[("site.toml", SITE), ("log.csv", &two_weeks())]);
     // The longest list there is: nothing was ever noted, an incident is open, there is a plan.
     farm.at("2026-03-02 06:40");
-    farm.does(&["record", "temperature=18.4", "nitrite=1.6", "total-ammonia=0.9", "event=cold-snap;heater-failed", "sign=fish-sluggish"]);
+    farm.does(&[
+        "record",
+        "temperature=18.4",
+        "nitrite=1.6",
+        "total-ammonia=0.9",
+        "event=cold-snap;heater-failed",
+        "sign=fish-sluggish",
+    ]);
     farm.does(&["incident", "open"]);
     farm.write("plan.json", PLAN);
     farm.does(&["incident", "plan", "plan.json"]);
     for (name, args) in [
-        ("list", &["shift", "--shift", "late", "--on", "2026-03-03", "--format", "html"][..]),
+        (
+            "list",
+            &[
+                "shift",
+                "--shift",
+                "late",
+                "--on",
+                "2026-03-03",
+                "--format",
+                "html",
+            ][..],
+        ),
         ("card", &["shift", "--emergency-card", "--format", "html"]),
     ] {
         let html = farm.does(args);
@@ -305,7 +474,12 @@ fn each_page_prints_on_one_sheet() {
             farm.write("page.html", &page);
             let pdf = farm.path(&format!("{name}-{paper}.pdf"));
             let status = std::process::Command::new(&browser)
-                .args(["--headless", "--no-sandbox", "--disable-gpu", "--no-pdf-header-footer"])
+                .args([
+                    "--headless",
+                    "--no-sandbox",
+                    "--disable-gpu",
+                    "--no-pdf-header-footer",
+                ])
                 .arg(format!("--print-to-pdf={}", pdf.display()))
                 .arg(farm.path("page.html"))
                 .stderr(std::process::Stdio::null())

@@ -14,8 +14,8 @@ use super::stop::Stop;
 use crate::diagnosis::Verdict;
 use crate::fault::{Fault, did_you_mean, plain_io, shown};
 use crate::incident::{
-    Book, Edit, Folder, Followed, Incident, Look, Mark, Opening, Similar, Stored, again, checks, opened,
-    plan_of, similar,
+    Book, Edit, Folder, Followed, Incident, Look, Mark, Opening, Similar, Stored, again, checks,
+    opened, plan_of, similar,
 };
 use crate::render::incident::{self as pages, Told};
 use crate::render::{self, Block};
@@ -169,7 +169,11 @@ pub(super) fn run(args: &IncidentArgs, common: &Common, out: &mut Output) -> Res
                 return Err(Stop::usage(Fault::whole(
                     "unknown-cause",
                     format!("no cause is called `{}`", shown(cause)),
-                    did_you_mean(cause, known, "`gillside knowledge list causes` has all; leave it out if nobody knows"),
+                    did_you_mean(
+                        cause,
+                        known,
+                        "`gillside knowledge list causes` has all; leave it out if nobody knows",
+                    ),
                 )));
             }
             let edit = Edit::Close(cause.clone(), outcome.clone());
@@ -266,13 +270,7 @@ impl<'a> Desk<'a> {
         })
     }
 
-    fn put(
-        &self,
-        id: Option<&str>,
-        edit: Edit,
-        done: &str,
-        out: &mut Output,
-    ) -> Result<(), Stop> {
+    fn put(&self, id: Option<&str>, edit: Edit, done: &str, out: &mut Output) -> Result<(), Stop> {
         let incident = self.meant(id)?;
         let after = self.folder.put(&incident.id, &[edit], self.mark)?;
         let text = format!("{done} {}.", after.id);

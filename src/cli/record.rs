@@ -13,8 +13,8 @@ use super::standing::{Standing, log_path};
 use super::stop::Stop;
 use crate::fault::{Fault, plain_io};
 use crate::record::{Given, Target, Telling, Written, changes, form, given, write};
-use crate::render::recorded::{self, Recorded};
 use crate::render;
+use crate::render::recorded::{self, Recorded};
 
 /// What `record` may be told.
 #[derive(Debug, Args)]
@@ -185,7 +185,11 @@ fn asked(context: &Context, args: &RecordArgs, telling: &Telling<'_>) -> Result<
             ask(&reading.id, &prompt, &mut made)?;
         }
     }
-    ask("sign", "Signs seen, ids between ; (!id for looked for and not there)", &mut made)?;
+    ask(
+        "sign",
+        "Signs seen, ids between ; (!id for looked for and not there)",
+        &mut made,
+    )?;
     ask("event", "What happened, ids between ;", &mut made)?;
     ask("note", "Anything else in your own words", &mut made)?;
     Ok(made)

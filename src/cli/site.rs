@@ -74,12 +74,11 @@ fn check(common: &Common, out: &mut Output) -> Result<(), Stop> {
         }
         _ => {
             let name = context.site.name.as_deref().unwrap_or_default();
-            let mut page = vec![Block::Para(format!(
-                "{} is good: {name}.",
-                file.display()
-            ))];
+            let mut page = vec![Block::Para(format!("{} is good: {name}.", file.display()))];
             if !lacks.is_empty() {
-                page.push(Block::Heading("Not known, and what it is good for".to_owned()));
+                page.push(Block::Heading(
+                    "Not known, and what it is good for".to_owned(),
+                ));
                 page.extend(
                     lacks
                         .iter()
@@ -94,7 +93,10 @@ fn check(common: &Common, out: &mut Output) -> Result<(), Stop> {
 
 fn new(common: &Common, out: &mut Output) -> Result<(), Stop> {
     only(common.format, "site new", &[Format::Text])?;
-    let path = common.site.clone().unwrap_or_else(|| PathBuf::from("site.toml"));
+    let path = common
+        .site
+        .clone()
+        .unwrap_or_else(|| PathBuf::from("site.toml"));
     if path.exists() {
         return Err(Stop::usage(Fault::whole(
             "site-file-exists",
@@ -184,7 +186,12 @@ impl Answers for AtTerminal<'_> {
 
     fn listed(&self, what: &str) -> Vec<String> {
         match what {
-            "species" => self.knowledge.species.iter().map(|s| s.id.clone()).collect(),
+            "species" => self
+                .knowledge
+                .species
+                .iter()
+                .map(|s| s.id.clone())
+                .collect(),
             "media" => self.knowledge.media.iter().map(|m| m.id.clone()).collect(),
             _ => Vec::new(),
         }

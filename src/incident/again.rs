@@ -53,11 +53,20 @@ pub fn again(
     }
     causes.sort_by(|a, b| b.3.total_cmp(&a.3));
     let tried = |s: &&StepReport| {
-        let done = incident.steps.iter().any(|t| t.id == s.id && t.done.is_some());
+        let done = incident
+            .steps
+            .iter()
+            .any(|t| t.id == s.id && t.done.is_some());
         !done && !failed.iter().any(|c| c.step == s.id)
     };
     let best = causes.first().map(|c| c.0.clone()).unwrap_or_default();
-    let open = || assessment.first_aid.iter().chain(&assessment.steps).filter(tried);
+    let open = || {
+        assessment
+            .first_aid
+            .iter()
+            .chain(&assessment.steps)
+            .filter(tried)
+    };
     let next = open()
         .find(|s| s.because.contains(&best))
         .or_else(|| open().next())

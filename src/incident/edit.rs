@@ -208,10 +208,7 @@ fn done(
 }
 
 fn plan(root: &mut Table, steps: &[PlanStep]) {
-    if let Some(old) = root
-        .get_mut("plan")
-        .and_then(Item::as_array_of_tables_mut)
-    {
+    if let Some(old) = root.get_mut("plan").and_then(Item::as_array_of_tables_mut) {
         old.retain(|t| t.contains_key("done"));
     }
     let tables = steps.iter().map(|step| {

@@ -57,7 +57,11 @@ fn texts(value: &Value) -> Vec<String> {
 
 /// What to do: the plan's own sentence, else its amounts.
 fn words(step: &Value) -> String {
-    let mut parts: Vec<String> = step["text"].as_str().map(str::to_owned).into_iter().collect();
+    let mut parts: Vec<String> = step["text"]
+        .as_str()
+        .map(str::to_owned)
+        .into_iter()
+        .collect();
     if parts.is_empty() {
         for amount in step["amounts"].as_array().into_iter().flatten() {
             if let (Some(substance), Some(grams)) =

@@ -95,7 +95,9 @@ pub fn form(name: &str, text: &str, telling: &Telling<'_>) -> Result<Vec<Given>,
                 rows.len() - 1
             }
         };
-        let Some(row) = rows.get_mut(at) else { continue };
+        let Some(row) = rows.get_mut(at) else {
+            continue;
+        };
         if let Some(wanted) = wanted {
             take(row, "place", wanted);
         }

@@ -278,7 +278,10 @@ fn amount(id: &str, value: &str, words: &Vocabulary) -> Result<Amount, Fault> {
     if below && number <= 0.0 {
         return Err(Fault::whole(
             "not-a-number",
-            format!("`{id}={}` can't be: nothing is less than none", shown(value)),
+            format!(
+                "`{id}={}` can't be: nothing is less than none",
+                shown(value)
+            ),
             "write the kit's limit of detection behind `<`, such as `<0.05`",
         ));
     }

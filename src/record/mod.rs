@@ -14,10 +14,10 @@ mod safe;
 mod sheet;
 mod write;
 
+pub use cell::usual_unit;
 pub use change::{Change, changes};
 pub use form::form;
 pub use given::{Amount, Given, Telling, given};
-pub use cell::usual_unit;
 pub use moment::clock_text;
 pub use safe::{NotWritten, edit};
 pub use write::{Target, Written, write};

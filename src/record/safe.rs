@@ -228,7 +228,10 @@ mod tests {
     }
 
     fn append(path: &Path, text: &str) -> io::Result<()> {
-        OpenOptions::new().append(true).open(path)?.write_all(text.as_bytes())
+        OpenOptions::new()
+            .append(true)
+            .open(path)?
+            .write_all(text.as_bytes())
     }
 
     #[test]

@@ -35,9 +35,12 @@ pub struct Recorded<'a> {
 pub fn page(recorded: &Recorded<'_>) -> Vec<Block> {
     let report = &recorded.report;
     let zone = &report.site.timezone;
-    let when = recorded.times.first().map_or_else(String::new, |(time, _)| {
-        format!(" for {}", when::long(*time, zone))
-    });
+    let when = recorded
+        .times
+        .first()
+        .map_or_else(String::new, |(time, _)| {
+            format!(" for {}", when::long(*time, zone))
+        });
     let log = shown(&recorded.path.display().to_string());
     let made = if recorded.made { "a new log, " } else { "" };
     let mut page = vec![Block::Para(format!("Recorded{when} in {made}{log}."))];

@@ -12,7 +12,12 @@ pub fn seen(report: &Report<'_>) -> Vec<String> {
     let a = report.assessment;
     let words = Words::of(report);
     let mut all = a.dangers.clone();
-    let pieces = a.causes.iter().take(CAUSES).flat_map(|c| &c.evidence_for).filter(|p| !p.absent);
+    let pieces = a
+        .causes
+        .iter()
+        .take(CAUSES)
+        .flat_map(|c| &c.evidence_for)
+        .filter(|p| !p.absent);
     let mut weighed: Vec<(f64, String)> = pieces.map(|p| (p.weight, words.piece(p))).collect();
     weighed.sort_by(|a, b| b.0.total_cmp(&a.0));
     for (_, clause) in weighed {

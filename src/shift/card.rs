@@ -41,7 +41,12 @@ const STOPS: [(&str, &[&str], bool, &str); 4] = [
     ("air", &["aeration-failure"], true, ""),
     ("pump", &["circulation-stopped"], false, ""),
     ("heat", &["water-chilled"], false, ""),
-    ("power", &["aeration-failure", "circulation-stopped"], true, "backup-oxygen"),
+    (
+        "power",
+        &["aeration-failure", "circulation-stopped"],
+        true,
+        "backup-oxygen",
+    ),
 ];
 /// The line for people, where no step is marked as such.
 const PEOPLE: &str = "people-first";
@@ -131,9 +136,8 @@ fn minutes(
         .filter(|s| site.species.contains(&s.id))
         .filter_map(|s| s.oxygen_use)
         .reduce(f64::max);
-    let each = stated.or_else(|| {
-        respiration::oxygen_use(warm, respiration::USUAL_FISH_G, true).ok()
-    })?;
+    let each =
+        stated.or_else(|| respiration::oxygen_use(warm, respiration::USUAL_FISH_G, true).ok())?;
     let fish_alone =
         respiration::minutes_until(THERE * full, short, site.biomass_kg?, site.volume_l?, each)
             .ok()?;
@@ -166,7 +170,9 @@ fn first_steps<'k>(
     let mut steps: Vec<(&Step, f64)> = knowledge
         .steps
         .iter()
-        .filter(|s| s.when == When::Now && !s.people_first && s.id != PEOPLE && !s.temptation && has(s))
+        .filter(|s| {
+            s.when == When::Now && !s.people_first && s.id != PEOPLE && !s.temptation && has(s)
+        })
         .map(|s| (s, good(s)))
         .filter(|(_, good)| *good > 0.0)
         .collect();

@@ -119,7 +119,12 @@ pub fn checklist(ground: &Ground<'_, '_>, window: Window) -> Checklist {
             found.push(of_trend(trend, ground, &window));
         }
     }
-    for missing in ground.assessment.map_or(&[][..], |a| &a.missing).iter().take(TELL) {
+    for missing in ground
+        .assessment
+        .map_or(&[][..], |a| &a.missing)
+        .iter()
+        .take(TELL)
+    {
         let words = &ground.advice.knowledge.vocabulary;
         let reading = words.reading(&missing.id);
         if reading.is_none_or(|id| !asked(&found, id) && !words[id].derived) {
@@ -144,7 +149,11 @@ pub fn checklist(ground: &Ground<'_, '_>, window: Window) -> Checklist {
                 Kind::Round(round.id.clone())
             },
             text: round.text.clone(),
-            why: if due.extra { round.why.clone() } else { String::new() },
+            why: if due.extra {
+                round.why.clone()
+            } else {
+                String::new()
+            },
             due: None,
             last: due.last,
             every: Some(round.every),
@@ -305,7 +314,10 @@ fn of_missing(id: &str, why: &str, ground: &Ground<'_, '_>) -> (String, Item) {
 fn walked(found: Vec<(String, Item)>, ground: &Ground<'_, '_>) -> Vec<Stretch> {
     let places = &ground.advice.site.place;
     let mut kinds: Vec<String> = Vec::new();
-    let listed = places.iter().filter_map(|p| p.kind).map(|k| k.word().to_owned());
+    let listed = places
+        .iter()
+        .filter_map(|p| p.kind)
+        .map(|k| k.word().to_owned());
     let usual = PlaceKind::WORDS.iter().map(|w| (*w).to_owned());
     for kind in listed.chain(usual).chain([BENCH.to_owned()]) {
         if !kinds.contains(&kind) {
@@ -314,9 +326,7 @@ fn walked(found: Vec<(String, Item)>, ground: &Ground<'_, '_>) -> Vec<Stretch> {
     }
     let mut stretches = Vec::new();
     for kind in &kinds {
-        let here = |place: &String| {
-            place == kind || (kind == BENCH && !kinds.contains(place))
-        };
+        let here = |place: &String| place == kind || (kind == BENCH && !kinds.contains(place));
         let mut items: Vec<Item> = found
             .iter()
             .filter(|(place, _)| here(place))

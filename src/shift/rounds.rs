@@ -51,7 +51,12 @@ fn asks_the_log(test: &Test) -> bool {
     test.visit(&mut |t| {
         found |= !matches!(
             t,
-            Test::Site { .. } | Test::Cause { .. } | Test::Not(_) | Test::All(_) | Test::Any(_) | Test::NOf(..)
+            Test::Site { .. }
+                | Test::Cause { .. }
+                | Test::Not(_)
+                | Test::All(_)
+                | Test::Any(_)
+                | Test::NOf(..)
         );
     });
     found
@@ -65,7 +70,5 @@ fn has_place(round: &Round, ground: &Ground<'_, '_>) -> bool {
     };
     let everywhere = matches!(kind, PlaceKind::Tank | PlaceKind::Sump | PlaceKind::Store);
     // A place whose kind the file does not say may be any.
-    everywhere
-        || places.is_empty()
-        || places.iter().any(|p| p.kind.is_none_or(|k| k == kind))
+    everywhere || places.is_empty() || places.iter().any(|p| p.kind.is_none_or(|k| k == kind))
 }

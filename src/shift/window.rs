@@ -125,7 +125,11 @@ mod tests {
             end: Time::constant(end, 0, 0, 0),
         };
         Site {
-            shift: vec![shift("early", 6, 14), shift("late", 14, 22), shift("night", 22, 6)],
+            shift: vec![
+                shift("early", 6, 14),
+                shift("late", 14, 22),
+                shift("night", 22, 6),
+            ],
             ..Site::default()
         }
     }
@@ -157,6 +161,9 @@ mod tests {
     #[test]
     fn without_shifts_it_is_the_day_ahead() {
         let w = window(&Site::default(), None, None, 1000).ok();
-        assert_eq!(w.map(|w| (w.name, w.start, w.end)), Some((None, 1000, 1000 + DAY)));
+        assert_eq!(
+            w.map(|w| (w.name, w.start, w.end)),
+            Some((None, 1000, 1000 + DAY))
+        );
     }
 }

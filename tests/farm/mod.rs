@@ -70,7 +70,12 @@ impl Farm {
     /// Runs it; it must be done without a complaint. Gives what it said.
     pub fn does(&self, args: &[&str]) -> String {
         let came = self.run(args);
-        assert_eq!((came.status, came.err.as_str()), (0, ""), "{args:?}\n{}", came.out);
+        assert_eq!(
+            (came.status, came.err.as_str()),
+            (0, ""),
+            "{args:?}\n{}",
+            came.out
+        );
         came.out
     }
 
@@ -175,7 +180,10 @@ pub fn two_weeks() -> String {
             6.8 - wobble,
             0.2 + wobble / 4.0,
         ));
-        log.push_str(&format!("{date} 17:00,{:.1},6.82,6.5,,,,,,,,,Rui,\n", 24.1 + wobble));
+        log.push_str(&format!(
+            "{date} 17:00,{:.1},6.82,6.5,,,,,,,,,Rui,\n",
+            24.1 + wobble
+        ));
     }
     log
 }

@@ -29,7 +29,8 @@ pub(super) trait Answers {
 /// Asks everything, and gives the text of the file.
 pub(super) fn ask_all(answers: &mut dyn Answers) -> Result<String, Stop> {
     let mut doc = DocumentMut::new();
-    doc.decor_mut().set_prefix("# A farm. `gillside site check` reads it through.\n");
+    doc.decor_mut()
+        .set_prefix("# A farm. `gillside site check` reads it through.\n");
     for question in &QUESTIONS {
         one(&mut doc, question, answers)?;
     }
@@ -41,11 +42,7 @@ pub(super) fn ask_all(answers: &mut dyn Answers) -> Result<String, Stop> {
 }
 
 /// Asks until the answer is good or there is none.
-fn one(
-    doc: &mut DocumentMut,
-    question: &Question,
-    answers: &mut dyn Answers,
-) -> Result<(), Stop> {
+fn one(doc: &mut DocumentMut, question: &Question, answers: &mut dyn Answers) -> Result<(), Stop> {
     answers.say(&format!("\n{}: {}.", question.key, question.why))?;
     let must = question.key == "name";
     loop {

@@ -96,7 +96,11 @@ pub fn html(card: &Card, site: &Site, words: &Vocabulary) -> String {
         }
         body.push_str("</ol>");
     }
-    let _ = write!(body, "<p style=\"margin-top:4mm\">{}</p><h2>Call</h2>", escaped(&how(card, site, words)));
+    let _ = write!(
+        body,
+        "<p style=\"margin-top:4mm\">{}</p><h2>Call</h2>",
+        escaped(&how(card, site, words))
+    );
     for phone in phones(site) {
         let _ = write!(
             body,

@@ -13,7 +13,14 @@ pub fn form(sheet: &Sheet<'_>) -> String {
         let _ = out.write_record(cells.map(plain));
     };
     row(["item", "place", "what", "unit", "compare", "value"]);
-    row(["time", "", "when it was measured, such as 2026-03-04 07:30 (empty: now)", "", "", ""]);
+    row([
+        "time",
+        "",
+        "when it was measured, such as 2026-03-04 07:30 (empty: now)",
+        "",
+        "",
+        "",
+    ]);
     row(["by", "", "your name", "", "", ""]);
     for stretch in &sheet.list.stretches {
         // One place of the kind is the place; of several the person says which.
@@ -32,7 +39,14 @@ pub fn form(sheet: &Sheet<'_>) -> String {
             }
             match &item.kind {
                 Kind::Round(id) | Kind::Extra(id) if item.blanks.is_empty() => {
-                    row([&format!("round:{id}"), &stretch.place, &what, "", "x when done", ""]);
+                    row([
+                        &format!("round:{id}"),
+                        &stretch.place,
+                        &what,
+                        "",
+                        "x when done",
+                        "",
+                    ]);
                 }
                 _ => {
                     if let Some(sign) = sign(item, sheet) {
@@ -44,7 +58,14 @@ pub fn form(sheet: &Sheet<'_>) -> String {
         }
     }
     row(["sign", "", "anything else seen (ids between ;)", "", "", ""]);
-    row(["event", "", "anything that happened (ids between ;)", "", "", ""]);
+    row([
+        "event",
+        "",
+        "anything that happened (ids between ;)",
+        "",
+        "",
+        "",
+    ]);
     row(["note", "", "in your own words", "", "", ""]);
     let bytes = out.into_inner().unwrap_or_default();
     String::from_utf8(bytes).unwrap_or_default()

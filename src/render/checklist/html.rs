@@ -101,7 +101,10 @@ fn one(item: &Item, words: &Words<'_>, sheet: &Sheet<'_>) -> String {
         Kind::Trend(_) | Kind::Tell(..) | Kind::Extra(_) => " class=\"extra\"",
         Kind::Round(_) => "",
     };
-    let mut out = format!("<li{class}><b class=\"box\"></b>{}", escaped(&words.item(item)));
+    let mut out = format!(
+        "<li{class}><b class=\"box\"></b>{}",
+        escaped(&words.item(item))
+    );
     for blank in &item.blanks {
         let reading = &sheet.knowledge.vocabulary[blank.reading];
         let _ = write!(
@@ -113,7 +116,11 @@ fn one(item: &Item, words: &Words<'_>, sheet: &Sheet<'_>) -> String {
         );
     }
     for line in words.conditions(item) {
-        let _ = write!(out, "<div class=\"blank\"><small>{}</small></div>", escaped(&line));
+        let _ = write!(
+            out,
+            "<div class=\"blank\"><small>{}</small></div>",
+            escaped(&line)
+        );
     }
     out.push_str("</li>");
     out

@@ -41,7 +41,11 @@ pub struct Sheet<'a> {
 impl Sheet<'_> {
     /// Name of the farm, shift and hours.
     fn title(&self) -> String {
-        let name = self.site.name.as_deref().unwrap_or("A farm without a site file");
+        let name = self
+            .site
+            .name
+            .as_deref()
+            .unwrap_or("A farm without a site file");
         format!("{name}: {}", self.hours())
     }
 

@@ -86,7 +86,12 @@ impl<'a> Words<'a> {
                 )
             }
             Kind::Step(incident, step) => {
-                format!("{} (step {}){}", item.text, step.id, self.of_incident(incident))
+                format!(
+                    "{} (step {}){}",
+                    item.text,
+                    step.id,
+                    self.of_incident(incident)
+                )
             }
             Kind::Plan(incident, number, step) => format!(
                 "{}: {} (step plan-{number}){}",
@@ -120,7 +125,10 @@ impl<'a> Words<'a> {
             }
             // Which causes it tells apart is on the page of the diagnosis; here there is no room for it.
             Kind::Tell(_, why) if why.starts_with("would tell") => {
-                format!("{} (it tells the likely causes apart)", sentence(&item.text))
+                format!(
+                    "{} (it tells the likely causes apart)",
+                    sentence(&item.text)
+                )
             }
             Kind::Tell(_, why) => format!("{} ({why})", sentence(&item.text)),
             Kind::Extra(_) => format!("{} ({})", item.text, item.why),

@@ -111,7 +111,11 @@ pub fn show(standing: &Standing<'_>, similar: &[Similar], told: &Told<'_>) -> Ve
         incident.steps.iter().map(|s| words.step(s)).collect(),
     );
     let plan = (1..).zip(&incident.plan);
-    section(&mut page, "Plan", plan.map(|(n, p)| words.planned(n, p)).collect());
+    section(
+        &mut page,
+        "Plan",
+        plan.map(|(n, p)| words.planned(n, p)).collect(),
+    );
     section(
         &mut page,
         "Checks",
@@ -122,12 +126,12 @@ pub fn show(standing: &Standing<'_>, similar: &[Similar], told: &Told<'_>) -> Ve
         "Leave alone",
         incident.avoid.iter().map(|a| a.text.clone()).collect(),
     );
+    section(&mut page, "Notes and follow-ups", words.history(incident));
     section(
         &mut page,
-        "Notes and follow-ups",
-        words.history(incident),
+        "What it was last time",
+        last_time(similar, &words),
     );
-    section(&mut page, "What it was last time", last_time(similar, &words));
     page
 }
 
@@ -172,7 +176,9 @@ pub fn follow(standing: &Standing<'_>, again: Option<&Again>, told: &Told<'_>) -
         standing.checks.iter().map(|c| words.check(c)).collect(),
     );
     if standing.checks.is_empty() {
-        page.push(Block::Para("Nothing of it can be checked by a reading.".to_owned()));
+        page.push(Block::Para(
+            "Nothing of it can be checked by a reading.".to_owned(),
+        ));
     }
     let Some(again) = again else {
         let met = standing.checks.iter().all(|c| !c.is_open());
@@ -218,11 +224,15 @@ pub fn next_shift(list: &Checklist, told: &Told<'_>) -> String {
         .items()
         .filter(|i| matches!(i.kind, Kind::Trend(_) | Kind::Tell(..) | Kind::Extra(_)))
         .count();
-    let rounds = list.items().filter(|i| matches!(i.kind, Kind::Round(_))).count();
-    let name = list.window.name.as_deref().map_or_else(
-        || "The day".to_owned(),
-        |name| format!("The {name} shift"),
-    );
+    let rounds = list
+        .items()
+        .filter(|i| matches!(i.kind, Kind::Round(_)))
+        .count();
+    let name = list
+        .window
+        .name
+        .as_deref()
+        .map_or_else(|| "The day".to_owned(), |name| format!("The {name} shift"));
     format!(
         "{name} from {}: {rounds} rounds and {extra} extra checks besides; `gillside shift` has the list.",
         words.at(list.window.start)

@@ -119,10 +119,13 @@ impl<'a> Words<'a> {
     /// A check and how it stands.
     pub fn check(&self, check: &Check) -> String {
         let id = &check.verify.id;
-        let seen = |time: i64, value: f64| {
-            format!("{} at {}", self.value(id, value), self.at(time))
+        let seen =
+            |time: i64, value: f64| format!("{} at {}", self.value(id, value), self.at(time));
+        let undone = if check.done {
+            ""
+        } else {
+            " (its step is not done yet)"
         };
-        let undone = if check.done { "" } else { " (its step is not done yet)" };
         let state = match &check.look {
             Look::Waiting(None, _) => "not due yet".to_owned(),
             Look::Waiting(Some((time, value)), so_far) => {
@@ -145,14 +148,20 @@ impl<'a> Words<'a> {
         let mut all: Vec<(i64, String)> = Vec::new();
         for note in &incident.notes {
             let by = self.by(note.by.as_deref());
-            all.push((note.time, format!("{}{by}: {}", self.at(note.time), note.text)));
+            all.push((
+                note.time,
+                format!("{}{by}: {}", self.at(note.time), note.text),
+            ));
         }
         for follow in &incident.follows {
             let by = self.by(follow.by.as_deref());
             let found = follow.found.join(" ");
             let at = self.at(follow.time);
             let verdict = follow.verdict.replace('-', " ");
-            all.push((follow.time, format!("{at}{by}, followed up ({verdict}): {found}")));
+            all.push((
+                follow.time,
+                format!("{at}{by}, followed up ({verdict}): {found}"),
+            ));
         }
         for again in &incident.reopened {
             let by = self.by(again.by.as_deref());
@@ -160,7 +169,10 @@ impl<'a> Words<'a> {
             let was = again.was_cause.as_deref().unwrap_or("cause not known");
             all.push((
                 again.time,
-                format!("{}{by}, opened again (was closed as {was}): {why}", self.at(again.time)),
+                format!(
+                    "{}{by}, opened again (was closed as {was}): {why}",
+                    self.at(again.time)
+                ),
             ));
         }
         all.sort_by_key(|(time, _)| *time);
