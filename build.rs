@@ -57,7 +57,9 @@ fn main() -> std::io::Result<()> {
             Vec::new()
         }
     };
-    let out = std::env::var_os("OUT_DIR").map(PathBuf::from).unwrap_or_default();
+    let out = std::env::var_os("OUT_DIR")
+        .map(PathBuf::from)
+        .unwrap_or_default();
     std::fs::write(out.join("knowledge.bin"), bytes)
 }
 
@@ -69,7 +71,10 @@ fn collect(dir: &Path, sources: &mut Vec<Source>) -> std::io::Result<()> {
             collect(&path, sources)?;
         } else if path.extension().is_some_and(|e| e == "toml") {
             let text = std::fs::read_to_string(&path)?;
-            sources.push(Source::new(path.display().to_string().replace('\\', "/"), text));
+            sources.push(Source::new(
+                path.display().to_string().replace('\\', "/"),
+                text,
+            ));
         }
     }
     Ok(())

@@ -37,7 +37,9 @@ impl Source {
     fn line(&self, number: usize) -> &str {
         let starts = self.line_starts();
         let start = number.checked_sub(1).and_then(|i| starts.get(i));
-        let rest = start.and_then(|start| self.text.get(*start..)).unwrap_or("");
+        let rest = start
+            .and_then(|start| self.text.get(*start..))
+            .unwrap_or("");
         rest.lines().next().unwrap_or("")
     }
 
@@ -49,7 +51,11 @@ impl Source {
         }
         let starts = self.line_starts();
         let line = starts.partition_point(|start| *start <= end);
-        let start = line.checked_sub(1).and_then(|i| starts.get(i)).copied().unwrap_or(0);
+        let start = line
+            .checked_sub(1)
+            .and_then(|i| starts.get(i))
+            .copied()
+            .unwrap_or(0);
         (line, self.text[start..end].chars().count() + 1)
     }
 }

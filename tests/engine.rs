@@ -31,7 +31,8 @@ fn only_what_changed_is_enough() {
     for folder in folders {
         let (site, _) = site::load(&folder.join("site.toml"), &known);
         let input = Input::named(folder.join("log.csv").to_str().unwrap());
-        let log = gillside::history::log::read(vec![input], &knowledge.vocabulary, &site, None).unwrap();
+        let log =
+            gillside::history::log::read(vec![input], &knowledge.vocabulary, &site, None).unwrap();
         let limits = Limits::new(&knowledge, &site);
         let mut engine = Engine::new(&knowledge, &site);
         engine.tell(gillside::history::memory::Memory::keeps_events);

@@ -7,10 +7,10 @@ mod proven;
 mod routine;
 mod values;
 
+pub use crate::course::{Projection, span};
 pub use assess::{Assessor, Review};
 pub use proven::{CauseProof, ProvenPiece};
-pub use routine::span;
 pub use values::{
-    Assessment, Avoid, CauseReport, Derived, LeadingFamily, Missing, Override, Projection,
-    StepReport, Tell, VerifyReport,
+    Assessment, Avoid, CauseReport, Derived, LeadingFamily, Missing, Override, StepReport, Tell,
+    VerifyReport,
 };

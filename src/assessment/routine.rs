@@ -1,7 +1,7 @@
 //! Which routine readings are overdue: "steady" may only be said when none of those it rests on is.
 
 use super::Missing;
-use crate::course::Ground;
+use crate::course::{Ground, span};
 use crate::vocabulary::ReadingId;
 
 /// The readings that "steady" rests on (data contract, section 8).
@@ -62,15 +62,4 @@ pub(super) fn missing(ground: &Ground<'_, '_>, overdue: &[Overdue]) -> Vec<Missi
             },
         })
         .collect()
-}
-
-/// A span of time in a word or two, rounded.
-pub fn span(seconds: i64) -> String {
-    let (amount, unit) = match seconds {
-        s if s < 90 * 60 => ((s + 30) / 60, "minute"),
-        s if s < 48 * 3600 => ((s + 1800) / 3600, "hour"),
-        s if s < 21 * 86_400 => ((s + 43_200) / 86_400, "day"),
-        s => ((s + 302_400) / 604_800, "week"),
-    };
-    format!("{amount} {unit}{}", if amount == 1 { "" } else { "s" })
 }

@@ -1,5 +1,6 @@
 //! The outcome of a diagnosis, as plain values: everything a page or a script needs, and nothing of how it is shown.
 
+use crate::course::Projection;
 use crate::diagnosis::{Piece, Verdict};
 use crate::knowledge::{CauseId, StepId, Urgency, When};
 use crate::vocabulary::ReadingId;
@@ -126,17 +127,6 @@ pub struct Derived {
     pub id: String,
     /// Its value.
     pub value: f64,
-}
-
-/// When a limit will be passed if nothing is done.
-#[derive(Debug, Clone, PartialEq)]
-pub struct Projection {
-    /// Which limit, in words.
-    pub limit: String,
-    /// Unix seconds, at the earliest.
-    pub earliest: i64,
-    /// Unix seconds, at the latest; `None`: not within the time looked at.
-    pub latest: Option<i64>,
 }
 
 /// A number of the shipped rule base that this farm has changed.

@@ -4,8 +4,9 @@ use std::path::PathBuf;
 
 use clap::{Args, Parser, Subcommand, ValueEnum};
 
-use super::knowledge::KnowledgeArgs;
 use super::incident::IncidentArgs;
+use super::knowledge::KnowledgeArgs;
+use super::pace::PaceArgs;
 use super::record::RecordArgs;
 use super::review::ReviewArgs;
 use super::shift::ShiftArgs;
@@ -122,6 +123,8 @@ pub(super) enum Command {
     Knowledge(KnowledgeArgs),
     /// Asks at the tank what is to be seen and measured, and diagnoses
     Walk(WalkArgs),
+    /// Plans one correction in safe steps
+    Pace(PaceArgs),
     /// Makes one calculation about water; alone it lists the calculations there are
     Water(WaterArgs),
 }

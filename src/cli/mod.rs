@@ -9,6 +9,7 @@ mod exit;
 mod incident;
 mod knowledge;
 mod output;
+pub mod pace;
 mod record;
 mod replay;
 mod review;
@@ -29,6 +30,7 @@ use args::{Command, Common, Format, Options};
 use context::{Context, only};
 pub use exit::Exit;
 use output::Output;
+use pace::{PaceArgs, PaceFormat, PaceWorld};
 use stop::Stop;
 use water::{WaterArgs, WaterFormat};
 
@@ -48,6 +50,7 @@ pub fn run(args: impl IntoIterator<Item = OsString>) -> Exit {
         Command::Shift(args) => shift::run(args, &options.common, &mut output),
         Command::Incident(args) => incident::run(args, &options.common, &mut output),
         Command::Site(args) => site::run(args, &options.common, &mut output),
+        Command::Pace(args) => plan(args, &options.common, &mut output),
         Command::Water(args) => calculate(args, &options.common, &mut output),
     };
     let ended = ended.and_then(|exit| output.finish().map(|()| exit));
@@ -72,6 +75,37 @@ fn calculate(args: &WaterArgs, common: &Common, output: &mut Output) -> Result<E
     let mut text = Vec::new();
     water::run(args, format, &context.site_values(), &mut text)
         .map_err(|error| Stop::Water(Box::new(error)))?;
+    output.write(&String::from_utf8_lossy(&text))?;
+    Ok(Exit::Done)
+}
+
+/// `gillside pace`, from the site and its log.
+fn plan(args: &PaceArgs, common: &Common, output: &mut Output) -> Result<Exit, Stop> {
+    only(
+        common.format,
+        "pace",
+        &[Format::Text, Format::Json, Format::Markdown],
+    )?;
+    let format = match common.format {
+        Format::Json => PaceFormat::Json,
+        Format::Markdown => PaceFormat::Markdown,
+        _ => PaceFormat::Text,
+    };
+    let context = Context::load(common)?;
+    let world = PaceWorld {
+        knowledge: &context.knowledge,
+        site: &context.site,
+        site_log: context
+            .site
+            .log
+            .as_deref()
+            .map(|log| context.beside_site(log)),
+        now: context.now,
+        format,
+        width: output.look().width,
+    };
+    let mut text = Vec::new();
+    pace::run(args, &world, &mut text).map_err(|error| Stop::Pace(Box::new(error)))?;
     output.write(&String::from_utf8_lossy(&text))?;
     Ok(Exit::Done)
 }

@@ -3,6 +3,7 @@
 use std::io;
 
 use super::Exit;
+use super::pace::PaceError;
 use super::water::WaterError;
 use crate::fault::Fault;
 
@@ -17,6 +18,8 @@ pub(super) enum Stop {
     Rules(Vec<Fault>),
     /// A calculation gives no number; the message holds its cure.
     Water(Box<WaterError>),
+    /// No plan can be made; the message holds its cure.
+    Pace(Box<PaceError>),
     /// A file can't be changed, which is not the user's doing.
     Failed(Box<Fault>),
     /// The answer can't be written.
@@ -42,6 +45,11 @@ impl Stop {
                 2 => Exit::Usage,
                 _ => Exit::BadInput,
             },
+            Self::Pace(error) => match error.exit_status() {
+                1 => Exit::Failed,
+                2 => Exit::Usage,
+                _ => Exit::BadInput,
+            },
             Self::Failed(_) | Self::Write(_) => Exit::Failed,
             Self::ClosedPipe => Exit::Done,
         }
@@ -51,6 +59,7 @@ impl Stop {
     pub fn message(&self) -> Option<String> {
         match self {
             Self::Water(error) => Some(error.to_string()),
+            Self::Pace(error) => Some(error.to_string()),
             _ => None,
         }
     }
@@ -65,7 +74,7 @@ impl Stop {
                 format!("the answer can't be written: {error}"),
                 "check that there is room where it goes",
             )],
-            Self::Water(_) | Self::ClosedPipe => Vec::new(),
+            Self::Water(_) | Self::Pace(_) | Self::ClosedPipe => Vec::new(),
         }
     }
 }

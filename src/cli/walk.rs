@@ -44,7 +44,11 @@ pub(super) struct WalkArgs {
 
 /// Runs it.
 pub(super) fn run(args: &WalkArgs, common: &Common, out: &mut Output) -> Result<Exit, Stop> {
-    only(common.format, "walk", &[Format::Text, Format::Json, Format::Markdown])?;
+    only(
+        common.format,
+        "walk",
+        &[Format::Text, Format::Json, Format::Markdown],
+    )?;
     if args.answers.is_none() && !io::stdin().is_terminal() {
         return Err(Stop::usage(Fault::whole(
             "no-terminal",
@@ -84,7 +88,10 @@ fn from_file(
     let answers = read(path, context)?;
     let time = answers.time.unwrap_or(context.now);
     let mut walk = start(context, log, time);
-    let attendant = Attendant { answers: &answers, time };
+    let attendant = Attendant {
+        answers: &answers,
+        time,
+    };
     let stop = attendant.walk(&mut walk);
     let asked = walk.given();
     attendant.tell_the_rest(&mut walk);
@@ -106,8 +113,16 @@ fn read(path: &PathBuf, context: &Context) -> Result<Answers, Stop> {
         )])
     })?;
     let source = Source::new(name, text);
-    let (answers, faults) = answers::read(&source, &context.knowledge.vocabulary, &context.site.timezone);
-    if faults.is_empty() { Ok(answers) } else { Err(Stop::Input(faults)) }
+    let (answers, faults) = answers::read(
+        &source,
+        &context.knowledge.vocabulary,
+        &context.site.timezone,
+    );
+    if faults.is_empty() {
+        Ok(answers)
+    } else {
+        Err(Stop::Input(faults))
+    }
 }
 
 fn at_the_tank(
@@ -134,7 +149,15 @@ fn at_the_tank(
     let mut walk = start(context, log, context.now);
     let mut keeper = Keeper::new(context, context.now);
     offer(context, &mut keeper, &mut walk, front).map_err(|e| kept_fault(&keeper, &e))?;
-    let mut dialog = Dialog { context, walk: &mut walk, front, keeper: &keeper, now: context.now, aided: false };
+    let mut dialog = Dialog {
+        context,
+        walk: &mut walk,
+        front,
+        keeper: &keeper,
+        now: context.now,
+        aided: false,
+        pending: Vec::new(),
+    };
     let ended = match dialog.talk() {
         Ok(ended) => ended,
         Err(error) if error.kind() == io::ErrorKind::Interrupted => return Ok(Exit::Interrupted),
@@ -146,13 +169,25 @@ fn at_the_tank(
         Ended::Gone => return Ok(Exit::Interrupted),
     };
     let asked = walk.given();
-    let exit = show(&walk, context, log, (&asked, &reason, context.now), format, out)?;
+    let exit = show(
+        &walk,
+        context,
+        log,
+        (&asked, &reason, context.now),
+        format,
+        out,
+    )?;
     keeper.forget().map_err(|e| kept_fault(&keeper, &e))?;
     Ok(exit)
 }
 
 /// Offers to go on with a walk that was interrupted.
-fn offer(context: &Context, keeper: &mut Keeper, walk: &mut Walk<'_>, front: &mut dyn Front) -> io::Result<()> {
+fn offer(
+    context: &Context,
+    keeper: &mut Keeper,
+    walk: &mut Walk<'_>,
+    front: &mut dyn Front,
+) -> io::Result<()> {
     match keeper.find(context)? {
         Found::Nothing => {}
         Found::Damaged(reason, aside) => front.say(&format!(
@@ -179,7 +214,10 @@ fn offer(context: &Context, keeper: &mut Keeper, walk: &mut Walk<'_>, front: &mu
 }
 
 fn kept_fault(keeper: &Keeper, error: &io::Error) -> Stop {
-    Stop::from(io::Error::new(error.kind(), format!("{}: {error}", keeper.path().display())))
+    Stop::from(io::Error::new(
+        error.kind(),
+        format!("{}: {error}", keeper.path().display()),
+    ))
 }
 
 /// The same page as `review`, with why asking stopped and what was asked.
@@ -191,7 +229,11 @@ fn show(
     format: Format,
     out: &mut Output,
 ) -> Result<Exit, Stop> {
-    let last_row = log.rows.last().map(|row| row.time).or((!walk.given().is_empty()).then_some(now));
+    let last_row = log
+        .rows
+        .last()
+        .map(|row| row.time)
+        .or((!walk.given().is_empty()).then_some(now));
     let assessment = walk.assess(&log.places, last_row);
     let report = Report {
         knowledge: &context.knowledge,
@@ -211,10 +253,17 @@ fn show(
             }
             format!("{value:#}\n")
         }
-        Format::Markdown => format!("{}\n{reason}\n\n{said}\n", render::markdown(&render::diagnosis(&report))),
+        Format::Markdown => format!(
+            "{}\n{reason}\n\n{said}\n",
+            render::markdown(&render::diagnosis(&report))
+        ),
         Format::Text | Format::Html => {
             let page = render::text(&render::diagnosis(&report), out.look());
-            format!("{page}\n{}\n{}\n", textwrap::fill(reason, out.look().width), fill(&said, out.look().width))
+            format!(
+                "{page}\n{}\n{}\n",
+                textwrap::fill(reason, out.look().width),
+                fill(&said, out.look().width)
+            )
         }
     };
     out.write(&text)?;
@@ -223,5 +272,8 @@ fn show(
 
 fn fill(text: &str, width: usize) -> String {
     let options = textwrap::Options::new(width).subsequent_indent("   ");
-    text.lines().map(|l| textwrap::fill(l, &options)).collect::<Vec<_>>().join("\n")
+    text.lines()
+        .map(|l| textwrap::fill(l, &options))
+        .collect::<Vec<_>>()
+        .join("\n")
 }

@@ -455,7 +455,11 @@ fn places(
         });
     }
     // A value that nothing bears out yet is read again before it is believed.
-    let doubt = if memory.is_doubtful(reading) { DOUBTED } else { 0.0 };
+    let doubt = if memory.is_doubtful(reading) {
+        DOUBTED
+    } else {
+        0.0
+    };
     match chosen {
         Some(judged) => Judged {
             until,

@@ -32,7 +32,10 @@ fn balance(knowledge: &Knowledge, site: &Site) -> Balance {
 fn inputs(vocabulary: &Vocabulary) -> Vec<(ReadingId, Vec<ReadingId>)> {
     let of = |id: &str| {
         let inputs = crate::history::balance::inputs(id);
-        inputs.iter().filter_map(|i| vocabulary.reading(i)).collect()
+        inputs
+            .iter()
+            .filter_map(|i| vocabulary.reading(i))
+            .collect()
     };
     vocabulary
         .readings

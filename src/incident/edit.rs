@@ -261,7 +261,7 @@ fn step(step: &Taken) -> Table {
         let mut inner = toml_edit::InlineTable::new();
         inner.insert("id", verify.id.as_str().into());
         inner.insert("direction", verify.direction.as_str().into());
-        if let Some(due) = time(verify.due).into_value().ok() {
+        if let Ok(due) = time(verify.due).into_value() {
             inner.insert("due", due);
         }
         if let Some(from) = verify.from {

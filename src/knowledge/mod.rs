@@ -18,9 +18,7 @@ pub use check::{Finding as CheckFinding, check};
 pub use ids::{CauseId, FindingId, StepId};
 pub use load::load;
 pub use origin::{embedded, embedded_text, folder, shipped};
-pub use pace::{
-    Dosable, InstrumentDoubt, Kinetic, Kinetics, PaceLimit, PaceLimits, Pacing, Use,
-};
+pub use pace::{Dosable, InstrumentDoubt, Kinetic, Kinetics, PaceLimit, PaceLimits, Pacing, Use};
 pub use pace_words::PaceWords;
 pub use schema::*;
 pub use sourced::{Coverage, SourceUse, Sourced, coverage, sourced};

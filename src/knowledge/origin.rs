@@ -100,6 +100,9 @@ mod tests {
         let loaded = load(&embedded(), &[]);
         let built = shipped();
         assert!(!BUILT.is_empty());
-        assert_eq!(format!("{:?}", built.map(|k| k.causes)), format!("{:?}", loaded.map(|k| k.causes)));
+        assert_eq!(
+            format!("{:?}", built.map(|k| k.causes)),
+            format!("{:?}", loaded.map(|k| k.causes))
+        );
     }
 }

@@ -37,7 +37,7 @@ named! {
         acid_rebound = "acid-rebound",
         acid_cause = "acid-cause",
         lime_slow = "lime-slow",
-        base_takes_over = "base-takes-over",
+        base_besides = "base-besides",
         unpublished = "unpublished",
         contested = "contested",
         anyway = "anyway",

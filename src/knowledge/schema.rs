@@ -1,7 +1,7 @@
 //! What the rule base is made of. Field by field this is `knowledge/README.md`.
 
-use std::collections::BTreeMap;
 use serde::{Deserialize, Serialize};
+use std::collections::BTreeMap;
 
 use super::{CauseId, FindingId, LimitLevel, Side, StepId, Test};
 use crate::fault::Place;

@@ -1,8 +1,8 @@
 //! The rule language: what a test may ask of the history of a farm. See `knowledge/README.md` for its TOML form.
 
 use super::{CauseId, FindingId};
-use serde::{Deserialize, Serialize};
 use crate::vocabulary::{EventId, ReadingId, SignId};
+use serde::{Deserialize, Serialize};
 
 /// Which of a species' limits.
 #[derive(Debug, Clone, Copy, PartialEq, Eq, Hash, Serialize, Deserialize)]

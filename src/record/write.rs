@@ -113,11 +113,11 @@ fn added(
     let log = read(&made, target, telling)?;
     // What was there must read as before, and every new row must read.
     if log.rows_used != old.rows_used + rows.len() || log.rows_refused != old.rows_refused {
-        let refused = log
+        let mut refused = log
             .problems
             .iter()
             .filter(|p| p.effect == Effect::RowRefused);
-        let why = refused.last().map_or_else(
+        let why = refused.next_back().map_or_else(
             || "the log would read otherwise than before".to_owned(),
             |p| p.reason.clone(),
         );

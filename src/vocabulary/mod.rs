@@ -1,8 +1,8 @@
 //! The words: readings, signs and events. Which words there are is knowledge (`knowledge/readings.toml`, `signs.toml`,
 //! `events.toml`); this room gives them numbers and looks them up.
 
-use std::collections::HashMap;
 use serde::{Deserialize, Serialize};
+use std::collections::HashMap;
 
 /// Index of a reading in [`Vocabulary::readings`].
 #[derive(Debug, Clone, Copy, PartialEq, Eq, Hash, PartialOrd, Ord, Serialize, Deserialize)]

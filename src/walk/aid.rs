@@ -38,12 +38,24 @@ impl Walk<'_> {
         let Some(prospect) = self.prospects().into_iter().find(|p| p.ask == ask) else {
             return Vec::new();
         };
-        let after: Vec<_> = prospect.outcomes.iter().map(|shares| given(ranking, shares).1).collect();
+        let after: Vec<_> = prospect
+            .outcomes
+            .iter()
+            .map(|shares| given(ranking, shares).1)
+            .collect();
         let mut moved: Vec<(CauseId, f64)> = ranking
             .order()
             .into_iter()
             .take(20)
-            .map(|c| (c, after.iter().map(|r| (r.of(c) - ranking.of(c)).abs()).fold(0.0, f64::max)))
+            .map(|c| {
+                (
+                    c,
+                    after
+                        .iter()
+                        .map(|r| (r.of(c) - ranking.of(c)).abs())
+                        .fold(0.0, f64::max),
+                )
+            })
             .filter(|(_, by)| *by >= MOVES)
             .collect();
         moved.sort_by(|a, b| b.1.total_cmp(&a.1));
@@ -55,8 +67,12 @@ impl Walk<'_> {
     /// Everything of a group that a person may tell and has not said yet.
     pub fn group(&self, group: &crate::knowledge::WalkGroup) -> Vec<Ask> {
         let words = &self.knowledge().vocabulary;
-        let signs = (0..words.signs.len()).filter_map(|i| u16::try_from(i).ok()).map(|i| Ask::Sign(crate::vocabulary::SignId(i)));
-        let events = (0..words.events.len()).filter_map(|i| u16::try_from(i).ok()).map(|i| Ask::Event(crate::vocabulary::EventId(i)));
+        let signs = (0..words.signs.len())
+            .filter_map(|i| u16::try_from(i).ok())
+            .map(|i| Ask::Sign(crate::vocabulary::SignId(i)));
+        let events = (0..words.events.len())
+            .filter_map(|i| u16::try_from(i).ok())
+            .map(|i| Ask::Event(crate::vocabulary::EventId(i)));
         let of = |a: &Ask| {
             let screen = &a.question(words).screen;
             match a {
@@ -65,6 +81,10 @@ impl Walk<'_> {
                 Ask::Reading(_) => false,
             }
         };
-        signs.chain(events).filter(of).filter(|a| self.answered(*a).is_none()).collect()
+        signs
+            .chain(events)
+            .filter(of)
+            .filter(|a| self.answered(*a).is_none())
+            .collect()
     }
 }

@@ -1,7 +1,7 @@
 //! Answers from a file in the place of a person: somebody who picks the vital signs that are so, tells the most striking
 //! of what is known, and then answers what is asked, with "don't know" for what the file does not hold.
 
-use super::{Answer, Ask, Given, Next, Stage, Stop, Turn, Walk};
+use super::{Answer, Ask, Given, Next, Screen, Stage, Stop, Turn, Walk};
 use crate::history::answers::{Answers, Happened};
 use crate::knowledge::{Bound, Knowledge, Limit, Side};
 use crate::vocabulary::ReadingId;
@@ -19,31 +19,64 @@ impl Attendant<'_> {
     /// Goes through a walk to where asking stops.
     pub fn walk(&self, walk: &mut Walk<'_>) -> Stop {
         loop {
-            let turn = match walk.next() {
-                Next::Stop(stop) => return stop,
-                Next::Vital(screen) => Turn {
-                    stage: Stage::Vital,
-                    given: screen.asks.iter().map(|ask| self.says(*ask)).filter(|g| g.answer == Answer::Seen(true)).collect(),
-                },
-                Next::Tell => Turn { stage: Stage::Told, given: self.tells(walk) },
-                Next::Ask(screen) => Turn {
-                    stage: Stage::Asked,
-                    given: screen.asks.iter().map(|ask| self.says(*ask)).collect(),
-                },
-            };
-            walk.take(turn);
+            match self.turn(walk, &walk.next()) {
+                Ok(turn) => walk.take(turn),
+                Err(stop) => return stop,
+            }
         }
+    }
+
+    /// What is answered to what comes next.
+    ///
+    /// # Errors
+    /// Why asking stops, when it does.
+    pub fn turn(&self, walk: &Walk<'_>, next: &Next) -> Result<Turn, Stop> {
+        let says = |screen: &Screen| {
+            screen
+                .asks
+                .iter()
+                .map(|ask| self.says(*ask))
+                .collect::<Vec<_>>()
+        };
+        Ok(match next {
+            Next::Stop(stop) => return Err(*stop),
+            Next::Vital(screen) => Turn {
+                stage: Stage::Vital,
+                given: says(screen)
+                    .into_iter()
+                    .filter(|g| g.answer == Answer::Seen(true))
+                    .collect(),
+            },
+            Next::Tell => Turn {
+                stage: Stage::Told,
+                given: self.tells(walk),
+            },
+            Next::Ask(screen) => Turn {
+                stage: Stage::Asked,
+                given: says(screen),
+            },
+        })
     }
 
     /// Tells everything the file holds that has not been said: the outcome then rests on the whole file.
     pub fn tell_the_rest(&self, walk: &mut Walk<'_>) {
-        let given = self.all().filter(|g| walk.answered(g.ask).is_none()).collect();
-        walk.take(Turn { stage: Stage::Told, given });
+        let given = self
+            .all()
+            .filter(|g| walk.answered(g.ask).is_none())
+            .collect();
+        walk.take(Turn {
+            stage: Stage::Told,
+            given,
+        });
     }
 
     /// What is answered to a question.
     pub fn says(&self, ask: Ask) -> Given {
-        self.all().find(|g| g.ask == ask).unwrap_or(Given { ask, answer: Answer::Unknown, time: self.time })
+        self.all().find(|g| g.ask == ask).unwrap_or(Given {
+            ask,
+            answer: Answer::Unknown,
+            time: self.time,
+        })
     }
 
     /// What is told without being asked: the most striking things, as many as a person would.
@@ -82,20 +115,43 @@ impl Attendant<'_> {
 
     fn all(&self) -> impl Iterator<Item = Given> + '_ {
         let time = self.time;
-        let readings = self.answers.readings.iter().map(|r| (Ask::Reading(r.0), Answer::Number(r.1)));
-        let signs = self.answers.signs.iter().map(|s| (Ask::Sign(s.0), Answer::Seen(s.1)));
-        let events = self.answers.events.iter().map(|e| (Ask::Event(e.0), Answer::Happened(e.1)));
-        readings.chain(signs).chain(events).map(move |(ask, answer)| Given { ask, answer, time })
+        let readings = self
+            .answers
+            .readings
+            .iter()
+            .map(|r| (Ask::Reading(r.0), Answer::Number(r.1)));
+        let signs = self
+            .answers
+            .signs
+            .iter()
+            .map(|s| (Ask::Sign(s.0), Answer::Seen(s.1)));
+        let events = self
+            .answers
+            .events
+            .iter()
+            .map(|e| (Ask::Event(e.0), Answer::Happened(e.1)));
+        readings
+            .chain(signs)
+            .chain(events)
+            .map(move |(ask, answer)| Given { ask, answer, time })
     }
 }
 
 /// Outside the band that the site or its fish have for it.
 fn is_off(walk: &Walk<'_>, reading: ReadingId, value: f64) -> bool {
-    let bound = |side: Side| walk.assessor().limits().resolve(Bound::Named(Limit::Target(reading, side)));
-    bound(Side::Low).is_some_and(|low| value < low) || bound(Side::High).is_some_and(|high| value > high)
+    let bound = |side: Side| {
+        walk.assessor()
+            .limits()
+            .resolve(Bound::Named(Limit::Target(reading, side)))
+    };
+    bound(Side::Low).is_some_and(|low| value < low)
+        || bound(Side::High).is_some_and(|high| value > high)
 }
 
 /// The ids of answers, in their order.
 pub fn ids(knowledge: &Knowledge, given: &[Given]) -> Vec<String> {
-    given.iter().map(|g| g.ask.id(&knowledge.vocabulary).to_owned()).collect()
+    given
+        .iter()
+        .map(|g| g.ask.id(&knowledge.vocabulary).to_owned())
+        .collect()
 }

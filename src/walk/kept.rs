@@ -93,7 +93,9 @@ fn answer(words: &Vocabulary, given: &Given) -> KeptAnswer {
         Answer::Number(number) => kept.number = Some(number),
         Answer::Seen(seen) => kept.seen = Some(seen),
         Answer::Happened(Happened::At(time)) => kept.happened = Some(stamp(time)),
-        Answer::Happened(Happened::Ago(age)) => kept.happened = Some(stamp(given.time.saturating_sub(age))),
+        Answer::Happened(Happened::Ago(age)) => {
+            kept.happened = Some(stamp(given.time.saturating_sub(age)))
+        }
         Answer::Happened(Happened::Never) => kept.happened_at_all = Some(false),
         Answer::CannotMeasure => kept.can_be_measured = Some(false),
         Answer::Unknown => {}
@@ -107,7 +109,8 @@ fn answer(words: &Vocabulary, given: &Given) -> KeptAnswer {
 /// Why it can't be used.
 pub fn read(words: &Vocabulary, text: &str) -> Result<(i64, Vec<Turn>), String> {
     let kept: Kept = toml::from_str(text).map_err(|e| e.message().to_owned())?;
-    let started = unstamp(&kept.started).ok_or_else(|| format!("`started` is no time: `{}`", kept.started))?;
+    let started = unstamp(&kept.started)
+        .ok_or_else(|| format!("`started` is no time: `{}`", kept.started))?;
     let mut turns = Vec::new();
     for turn in kept.turn {
         let mut given = Vec::new();
@@ -125,20 +128,62 @@ pub fn read(words: &Vocabulary, text: &str) -> Result<(i64, Vec<Turn>), String> 
 }
 
 fn said(words: &Vocabulary, kept: &KeptAnswer) -> Result<Given, String> {
-    let wrong = || format!("the answer to `{}` can't be read", crate::fault::shown(&kept.id));
+    let wrong = || {
+        format!(
+            "the answer to `{}` can't be read",
+            crate::fault::shown(&kept.id)
+        )
+    };
     let ask = Ask::find(words, &kept.id).ok_or_else(wrong)?;
     let time = unstamp(&kept.time).ok_or_else(wrong)?;
     let answer = match (ask, kept) {
-        (_, KeptAnswer { can_be_measured: Some(false), .. }) => Answer::CannotMeasure,
-        (Ask::Reading(id), KeptAnswer { number: Some(number), .. }) => {
+        (
+            _,
+            KeptAnswer {
+                can_be_measured: Some(false),
+                ..
+            },
+        ) => Answer::CannotMeasure,
+        (
+            Ask::Reading(id),
+            KeptAnswer {
+                number: Some(number),
+                ..
+            },
+        ) => {
             let (low, high) = words[id].plausible;
             let sound = (low..=high).contains(number);
             Answer::Number(Some(*number).filter(|_| sound).ok_or_else(wrong)?)
         }
-        (Ask::Sign(_), KeptAnswer { seen: Some(seen), .. }) => Answer::Seen(*seen),
-        (Ask::Event(_), KeptAnswer { happened: Some(at), .. }) => Answer::Happened(Happened::At(unstamp(at).ok_or_else(wrong)?)),
-        (Ask::Event(_), KeptAnswer { happened_at_all: Some(false), .. }) => Answer::Happened(Happened::Never),
-        (_, KeptAnswer { number: None, seen: None, happened: None, happened_at_all: None, .. }) => Answer::Unknown,
+        (
+            Ask::Sign(_),
+            KeptAnswer {
+                seen: Some(seen), ..
+            },
+        ) => Answer::Seen(*seen),
+        (
+            Ask::Event(_),
+            KeptAnswer {
+                happened: Some(at), ..
+            },
+        ) => Answer::Happened(Happened::At(unstamp(at).ok_or_else(wrong)?)),
+        (
+            Ask::Event(_),
+            KeptAnswer {
+                happened_at_all: Some(false),
+                ..
+            },
+        ) => Answer::Happened(Happened::Never),
+        (
+            _,
+            KeptAnswer {
+                number: None,
+                seen: None,
+                happened: None,
+                happened_at_all: None,
+                ..
+            },
+        ) => Answer::Unknown,
         _ => return Err(wrong()),
     };
     Ok(Given { ask, answer, time })

@@ -51,7 +51,10 @@ impl Walk<'_> {
         let had = |stage: Stage| self.turns().iter().any(|t| t.stage == stage);
         if !had(Stage::Vital) {
             let vital = self.knowledge().walk.vital.iter().map(|s| Ask::Sign(*s));
-            return Next::Vital(Screen { title: "first of all".to_owned(), asks: vital.collect() });
+            return Next::Vital(Screen {
+                title: "first of all".to_owned(),
+                asks: vital.collect(),
+            });
         }
         if !had(Stage::Told) {
             return Next::Tell;
@@ -73,7 +76,8 @@ impl Walk<'_> {
             .into_iter()
             .filter(|p| self.open(&given, p.ask))
             .map(|p| {
-                let worth = p.bits / (p.ask.question(&self.knowledge().vocabulary).effort + rules.asking);
+                let worth =
+                    p.bits / (p.ask.question(&self.knowledge().vocabulary).effort + rules.asking);
                 (p, worth)
             })
             .collect();
@@ -84,8 +88,15 @@ impl Walk<'_> {
         if *worth < rules.least_bits {
             return Next::Stop(Stop::NothingWorthAsking);
         }
-        let looked_at = open.iter().take(LOOKED_AHEAD).filter(|(_, w)| *w >= rules.least_bits);
-        if self.leads() && looked_at.clone().all(|(p, _)| self.steps_stay(p) >= rules.same_steps) {
+        let looked_at = open
+            .iter()
+            .take(LOOKED_AHEAD)
+            .filter(|(_, w)| *w >= rules.least_bits);
+        if self.leads()
+            && looked_at
+                .clone()
+                .all(|(p, _)| self.steps_stay(p) >= rules.same_steps)
+        {
             return Next::Stop(Stop::SameSteps);
         }
         let words = &self.knowledge().vocabulary;
@@ -96,13 +107,19 @@ impl Walk<'_> {
             .map(|(p, _)| p.ask)
             .take(rules.lines.min(rules.most.saturating_sub(asked)))
             .collect();
-        Next::Ask(Screen { title: title.clone(), asks })
+        Next::Ask(Screen {
+            title: title.clone(),
+            asks,
+        })
     }
 
     /// Whether there is a leading cause, so that steps for it are advised at all.
     fn leads(&self) -> bool {
         let ranking = &self.review().ranking;
-        ranking.order().first().is_some_and(|c| ranking.of(*c) >= 0.5)
+        ranking
+            .order()
+            .first()
+            .is_some_and(|c| ranking.of(*c) >= 0.5)
     }
 
     /// Not asked yet, and not on a screen of which something can't be measured now.
@@ -113,7 +130,8 @@ impl Walk<'_> {
             return false;
         }
         given.iter().all(|g| {
-            g.ask != ask && !(g.answer == Answer::CannotMeasure && g.ask.question(words).screen == *screen)
+            g.ask != ask
+                && !(g.answer == Answer::CannotMeasure && g.ask.question(words).screen == *screen)
         })
     }
 
@@ -126,13 +144,20 @@ impl Walk<'_> {
             .iter()
             .map(|shares| {
                 let (probability, after) = given(ranking, shares);
-                if self.first_steps(&after) == now { probability } else { 0.0 }
+                if self.first_steps(&after) == now {
+                    probability
+                } else {
+                    0.0
+                }
             })
             .sum()
     }
 
     fn first_steps(&self, ranking: &Ranking) -> Vec<StepId> {
-        let decision = self.assessor().doctor().decide(self.engine(), ranking, false);
+        let decision = self
+            .assessor()
+            .doctor()
+            .decide(self.engine(), ranking, false);
         let advice = advise(&Ground {
             knowledge: self.knowledge(),
             engine: self.engine(),
@@ -141,7 +166,10 @@ impl Walk<'_> {
             ranking,
             decision: &decision,
         });
-        let soon = advice.steps.iter().filter(|s| self.knowledge()[s.step].when <= When::Hours);
+        let soon = advice
+            .steps
+            .iter()
+            .filter(|s| self.knowledge()[s.step].when <= When::Hours);
         let mut first: Vec<StepId> = soon.map(|s| s.step).take(FIRST_STEPS).collect();
         first.sort_unstable_by_key(|s| s.index());
         first
@@ -151,13 +179,22 @@ impl Walk<'_> {
 /// The ranking after an outcome that shows with this probability under each set, and how likely that outcome is.
 pub(super) fn given(ranking: &Ranking, shares: &[f64]) -> (f64, Ranking) {
     let sets = ranking.sets.iter().zip(shares);
-    let total: f64 = ranking.sets.iter().take(shares.len()).map(|s| s.probability).sum();
+    let total: f64 = ranking
+        .sets
+        .iter()
+        .take(shares.len())
+        .map(|s| s.probability)
+        .sum();
     let mean: f64 = sets.clone().map(|(s, q)| s.probability * q).sum();
     let mut causes = vec![0.0; ranking.causes.len()];
     let mut nothing = 0.0;
     let mut after = Vec::with_capacity(shares.len());
     for (set, share) in sets {
-        let probability = if mean > 0.0 { set.probability * share / mean } else { 0.0 };
+        let probability = if mean > 0.0 {
+            set.probability * share / mean
+        } else {
+            0.0
+        };
         for cause in &set.causes {
             if let Some(sum) = causes.get_mut(cause.index()) {
                 *sum += probability;
@@ -166,8 +203,16 @@ pub(super) fn given(ranking: &Ranking, shares: &[f64]) -> (f64, Ranking) {
         if set.causes.is_empty() {
             nothing = probability;
         }
-        after.push(Scored { causes: set.causes.clone(), probability });
+        after.push(Scored {
+            causes: set.causes.clone(),
+            probability,
+        });
     }
-    let ranking = Ranking { causes, nothing, sets: after, weights: ranking.weights.clone() };
+    let ranking = Ranking {
+        causes,
+        nothing,
+        sets: after,
+        weights: ranking.weights.clone(),
+    };
     (if total > 0.0 { mean / total } else { 0.0 }, ranking)
 }

@@ -35,16 +35,29 @@ impl Reach<'_, '_> {
             Test::Level { reading, .. } => Some(self.level(*reading)),
             // A change is between two readings: without an earlier one the present one says nothing of it.
             Test::Changed { reading, .. } | Test::Unusual { reading, .. } => {
-                let before = self.engine.memory().reading(*reading).and_then(|t| t.newest()).is_some();
+                let before = self
+                    .engine
+                    .memory()
+                    .reading(*reading)
+                    .and_then(|t| t.newest())
+                    .is_some();
                 before.then(|| self.level(*reading))
             }
             Test::Sign { sign, .. } => {
                 let known = !self.engine.evidence(Evidence::Sign(*sign)).is_unknown();
-                Some(if known { Vec::new() } else { vec![Ask::Sign(*sign)] })
+                Some(if known {
+                    Vec::new()
+                } else {
+                    vec![Ask::Sign(*sign)]
+                })
             }
             Test::Event { event, .. } => {
                 let known = self.settled(test);
-                Some(if known { Vec::new() } else { vec![Ask::Event(*event)] })
+                Some(if known {
+                    Vec::new()
+                } else {
+                    vec![Ask::Event(*event)]
+                })
             }
             Test::Finding(id) => {
                 let degree = self.engine.finding(*id);
@@ -64,17 +77,25 @@ impl Reach<'_, '_> {
                 Some(asks)
             }
             Test::Any(parts) | Test::NOf(_, parts) => {
-                let open: Vec<Ask> = parts.iter().filter_map(|p| self.test(p, depth)).flatten().collect();
+                let open: Vec<Ask> = parts
+                    .iter()
+                    .filter_map(|p| self.test(p, depth))
+                    .flatten()
+                    .collect();
                 (!open.is_empty()).then_some(open)
             }
             Test::Not(part) => self.test(part, depth),
             Test::Site { .. } => self.settled(test).then(Vec::new),
-            Test::Odd { .. } | Test::Stuck { .. } | Test::Disagree { .. } | Test::Cause { .. } => None,
+            Test::Odd { .. } | Test::Stuck { .. } | Test::Disagree { .. } | Test::Cause { .. } => {
+                None
+            }
         }
     }
 
     fn settled(&self, test: &Test) -> bool {
-        let degree = self.engine.judge_test(test, self.site, self.limits, &|_| 0.0);
+        let degree = self
+            .engine
+            .judge_test(test, self.site, self.limits, &|_| 0.0);
         degree.hi - degree.lo < 0.5
     }
 

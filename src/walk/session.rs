@@ -187,11 +187,20 @@ fn rows(given: &[Given]) -> Vec<Row> {
     times.sort_unstable();
     times.dedup();
     let row = |time: i64| {
-        let mut row = Row { time, ..Row::default() };
+        let mut row = Row {
+            time,
+            ..Row::default()
+        };
         for g in given.iter().filter(|g| g.time == time) {
             match (g.ask, g.answer) {
                 (Ask::Reading(id), Answer::Number(amount)) => {
-                    row.values.push((id, Value { amount, below: false }));
+                    row.values.push((
+                        id,
+                        Value {
+                            amount,
+                            below: false,
+                        },
+                    ));
                 }
                 (Ask::Sign(id), Answer::Seen(seen)) => row.signs.push((id, seen)),
                 _ => {}

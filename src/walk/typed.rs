@@ -60,7 +60,9 @@ fn find(reading: &Reading, unit: &str) -> Result<&'static Unit, String> {
         .iter()
         .filter(|u| {
             let name = plain(u.name);
-            name == wanted.replacen("mg/l", "mg/las", 1) || name == format!("mg/las{wanted}") || name.split('s').next() == Some(&wanted)
+            name == wanted.replacen("mg/l", "mg/las", 1)
+                || name == format!("mg/las{wanted}")
+                || name.split('s').next() == Some(&wanted)
         })
         .collect();
     match ends[..] {
@@ -82,9 +84,17 @@ fn kept(unit: &Unit, value: f64) -> Result<Typed, String> {
 /// A number without a unit is in the kept one, unless kits give it as the element and as the ion.
 fn bare(reading: &Reading, value: f64) -> Typed {
     let all = units::units_of(&reading.id);
-    let meant: Vec<&'static str> = all.iter().map(|u| u.name).filter(|n| n.starts_with("mg/L as ")).collect();
+    let meant: Vec<&'static str> = all
+        .iter()
+        .map(|u| u.name)
+        .filter(|n| n.starts_with("mg/L as "))
+        .collect();
     let asks = all.iter().any(|u| u.assumes.is_some()) && meant.len() > 1;
-    if asks && value > 0.0 { Typed::Which(value, meant) } else { Typed::Kept(value) }
+    if asks && value > 0.0 {
+        Typed::Which(value, meant)
+    } else {
+        Typed::Kept(value)
+    }
 }
 
 /// A number in one of the units that [`Typed::Which`] offered.
@@ -122,11 +132,18 @@ pub fn happened(text: &str, zone: &TimeZone, now: i64) -> Result<Happened, Strin
         "yesterday" => return Ok(Happened::Ago(24 * HOUR)),
         _ => {}
     }
-    let spelled = if text.bytes().all(|b| b.is_ascii_digit()) { format!("{text} d") } else { text.to_owned() };
+    let spelled = if text.bytes().all(|b| b.is_ascii_digit()) {
+        format!("{text} d")
+    } else {
+        text.to_owned()
+    };
     let age = spelled
         .parse::<Span>()
         .ok()
-        .and_then(|s| s.total((Of::Second, SpanRelativeTo::days_are_24_hours())).ok())
+        .and_then(|s| {
+            s.total((Of::Second, SpanRelativeTo::days_are_24_hours()))
+                .ok()
+        })
         .filter(|s| (0.0..1e10).contains(s));
     if let Some(seconds) = age {
         #[allow(clippy::cast_possible_truncation)] // held within bounds just above
@@ -135,7 +152,10 @@ pub fn happened(text: &str, zone: &TimeZone, now: i64) -> Result<Happened, Strin
     match answers::parse(text, zone) {
         Some(time) if time > now => Err("That is still to come. Type when it happened.".to_owned()),
         Some(time) => Ok(Happened::At(time)),
-        None => Err("Type how long ago, such as `5 h`, `2 d` or `yesterday`, or n if it did not happen.".to_owned()),
+        None => Err(
+            "Type how long ago, such as `5 h`, `2 d` or `yesterday`, or n if it did not happen."
+                .to_owned(),
+        ),
     }
 }
 
@@ -145,10 +165,18 @@ pub fn happened(text: &str, zone: &TimeZone, now: i64) -> Result<Happened, Strin
 /// What to type instead.
 pub fn picks(text: &str, lines: usize) -> Result<Vec<usize>, String> {
     let mut picked = Vec::new();
-    for word in text.split(|c: char| c.is_whitespace() || matches!(c, ',' | ';' | '.')).filter(|w| !w.is_empty()) {
+    for word in text
+        .split(|c: char| c.is_whitespace() || matches!(c, ',' | ';' | '.'))
+        .filter(|w| !w.is_empty())
+    {
         match word.parse::<usize>() {
             Ok(n) if (1..=lines).contains(&n) => picked.push(n - 1),
-            _ => return Err(format!("`{}` is no line here. Type numbers from 1 to {lines}.", shown(word))),
+            _ => {
+                return Err(format!(
+                    "`{}` is no line here. Type numbers from 1 to {lines}.",
+                    shown(word)
+                ));
+            }
         }
     }
     picked.dedup();
@@ -159,17 +187,33 @@ pub fn picks(text: &str, lines: usize) -> Result<Vec<usize>, String> {
 ///
 /// # Errors
 /// What it may be instead.
-pub fn reading<'r>(all: impl Iterator<Item = &'r Reading> + Clone, word: &str) -> Result<&'r Reading, String> {
+pub fn reading<'r>(
+    all: impl Iterator<Item = &'r Reading> + Clone,
+    word: &str,
+) -> Result<&'r Reading, String> {
     let wanted = word.trim().to_lowercase();
     let spelled = |r: &Reading| [r.id.clone(), r.id.replace('-', " "), r.name.to_lowercase()];
     if let Some(found) = all.clone().find(|r| spelled(r).contains(&wanted)) {
         return Ok(found);
     }
-    let near: Vec<&Reading> = all.clone().filter(|r| spelled(r).iter().any(|s| s.contains(&wanted))).collect();
+    let near: Vec<&Reading> = all
+        .clone()
+        .filter(|r| spelled(r).iter().any(|s| s.contains(&wanted)))
+        .collect();
     match near[..] {
         [one] => Ok(one),
-        [] => Err(crate::fault::did_you_mean(&wanted, all.map(|r| r.id.as_str()), "Start with what was measured, such as `ph 6.9`.")),
-        _ => Err(format!("Which one: {}?", near.iter().map(|r| r.name.as_str()).collect::<Vec<_>>().join(", "))),
+        [] => Err(crate::fault::did_you_mean(
+            &wanted,
+            all.map(|r| r.id.as_str()),
+            "Start with what was measured, such as `ph 6.9`.",
+        )),
+        _ => Err(format!(
+            "Which one: {}?",
+            near.iter()
+                .map(|r| r.name.as_str())
+                .collect::<Vec<_>>()
+                .join(", ")
+        )),
     }
 }
 
@@ -211,7 +255,10 @@ mod tests {
         assert_eq!(kept("nitrite", "3.2845 mg/L NO2"), Some(1.0));
         assert_eq!(kept("nitrite", "3.2845 NO2"), Some(1.0));
         assert_eq!(kept("nitrite", "1 mg/L as N"), Some(1.0));
-        assert!(matches!(number(&of("dissolved-oxygen"), "85 %"), Ok(Typed::Saturation(_))));
+        assert!(matches!(
+            number(&of("dissolved-oxygen"), "85 %"),
+            Ok(Typed::Saturation(_))
+        ));
         assert!(number(&of("nitrite"), "3 stones").is_err_and(|e| e.contains("it takes")));
         assert!(number(&of("ph"), "6,9").is_err());
         assert!(number(&of("ph"), "NaN").is_err());
@@ -219,8 +266,13 @@ mod tests {
 
     #[test]
     fn a_bare_number_asks_where_it_matters() {
-        assert!(matches!(number(&of("nitrite"), "2"), Ok(Typed::Which(_, units)) if units.len() > 1));
-        assert!(matches!(number(&of("nitrite"), "2 ppm"), Ok(Typed::Which(..))));
+        assert!(
+            matches!(number(&of("nitrite"), "2"), Ok(Typed::Which(_, units)) if units.len() > 1)
+        );
+        assert!(matches!(
+            number(&of("nitrite"), "2 ppm"),
+            Ok(Typed::Which(..))
+        ));
         assert_eq!(number(&of("nitrite"), "0"), Ok(Typed::Kept(0.0)));
     }
 

@@ -78,17 +78,30 @@ impl View<'_, '_> {
     /// Everything that can be asked and tells something, in no particular order.
     pub fn prospects(&self) -> Vec<Prospect> {
         let sets = self.ranking.sets.len().min(SETS);
-        let total: f64 = self.ranking.sets.iter().take(sets).map(|s| s.probability).sum();
-        let weights: Vec<(f64, f64)> = self
+        let total: f64 = self
             .ranking
             .sets
             .iter()
             .take(sets)
-            .map(|s| {
-                let urgent = s.causes.iter().map(|c| self.knowledge.scales.urgency[self.knowledge[*c].urgency as usize]);
-                (s.probability / total, urgent.reduce(f64::max).unwrap_or(self.knowledge.scales.urgency[0]))
-            })
-            .collect();
+            .map(|s| s.probability)
+            .sum();
+        let weights: Vec<(f64, f64)> =
+            self.ranking
+                .sets
+                .iter()
+                .take(sets)
+                .map(|s| {
+                    let urgent = s.causes.iter().map(|c| {
+                        self.knowledge.scales.urgency[self.knowledge[*c].urgency as usize]
+                    });
+                    (
+                        s.probability / total,
+                        urgent
+                            .reduce(f64::max)
+                            .unwrap_or(self.knowledge.scales.urgency[0]),
+                    )
+                })
+                .collect();
         let mut faces: BTreeMap<Ask, Vec<Face>> = BTreeMap::new();
         self.effects(sets, &mut faces);
         self.triggers(sets, &mut faces);
@@ -99,9 +112,10 @@ impl View<'_, '_> {
                 let outcomes = if matches!(ask, Ask::Reading(_)) && !alone.is_empty() {
                     partition(&alone, sets)
                 } else {
-                    let best = alone
-                        .iter()
-                        .max_by(|a, b| information(&yes_no(a), &weights).total_cmp(&information(&yes_no(b), &weights)))?;
+                    let best = alone.iter().max_by(|a, b| {
+                        information(&yes_no(a), &weights)
+                            .total_cmp(&information(&yes_no(b), &weights))
+                    })?;
                     yes_no(best)
                 };
                 let whole = information(&outcomes, &weights);
@@ -114,28 +128,50 @@ impl View<'_, '_> {
                         information(&yes_no(f), &weights) / share
                     })
                     .fold(0.0, f64::max);
-                Some(Prospect { ask, bits: whole.max(part), outcomes })
+                Some(Prospect {
+                    ask,
+                    bits: whole.max(part),
+                    outcomes,
+                })
             })
             .collect()
     }
 
     fn effects(&self, sets: usize, faces: &mut BTreeMap<Ask, Vec<Face>>) {
-        let reach = Reach { engine: self.engine, site: self.site, limits: self.limits };
+        let reach = Reach {
+            engine: self.engine,
+            site: self.site,
+            limits: self.limits,
+        };
         let items = &self.doctor.table().items;
-        for (row, (item, degree)) in items.iter().zip(self.doctor.degrees(self.engine)).enumerate() {
+        for (row, (item, degree)) in items
+            .iter()
+            .zip(self.doctor.degrees(self.engine))
+            .enumerate()
+        {
             if degree.hi - degree.lo < 0.5 {
                 continue;
             }
-            let Some(asks) = reach.evidence(item.evidence).filter(|a| !a.is_empty()) else { continue };
+            let Some(asks) = reach.evidence(item.evidence).filter(|a| !a.is_empty()) else {
+                continue;
+            };
             let shares: Vec<f64> = self
                 .ranking
                 .sets
                 .iter()
                 .take(sets)
-                .map(|set| shows(item.background, set.causes.iter().filter_map(|c| self.lens.of(row, *c))))
+                .map(|set| {
+                    shows(
+                        item.background,
+                        set.causes.iter().filter_map(|c| self.lens.of(row, *c)),
+                    )
+                })
                 .collect();
             for ask in &asks {
-                faces.entry(*ask).or_default().push(Face { shares: shares.clone(), with: asks.len() });
+                faces.entry(*ask).or_default().push(Face {
+                    shares: shares.clone(),
+                    with: asks.len(),
+                });
             }
         }
     }
@@ -144,10 +180,18 @@ impl View<'_, '_> {
     fn triggers(&self, sets: usize, faces: &mut BTreeMap<Ask, Vec<Face>>) {
         /// When a trigger says nothing of its absence, an answer "no" is taken to weigh so much.
         const USUAL_IF_NOT: f64 = 0.7;
-        let reach = Reach { engine: self.engine, site: self.site, limits: self.limits };
-        let mut rates: BTreeMap<(Ask, usize), Vec<(CauseId, f64, f64)>> = BTreeMap::new();
+        let reach = Reach {
+            engine: self.engine,
+            site: self.site,
+            limits: self.limits,
+        };
+        /// What is asked and how it may be answered; under each cause, how often so and how often not.
+        type Rates = BTreeMap<(Ask, usize), Vec<(CauseId, f64, f64)>>;
+        let mut rates = Rates::new();
         for (number, cause) in self.knowledge.causes.iter().enumerate() {
-            let Ok(id) = u16::try_from(number).map(CauseId) else { continue };
+            let Ok(id) = u16::try_from(number).map(CauseId) else {
+                continue;
+            };
             if self.ranking.of(id) < 0.002 {
                 continue;
             }
@@ -156,30 +200,47 @@ impl View<'_, '_> {
                 if degree.hi - degree.lo < 0.5 || trigger.odds_times <= 1.0 {
                     continue;
                 }
-                let Some(mut asks) = reach.test(&trigger.when, 0) else { continue };
+                let Some(mut asks) = reach.test(&trigger.when, 0) else {
+                    continue;
+                };
                 asks.sort();
                 asks.dedup();
                 let any = matches!(trigger.when, Test::Any(_));
-                let if_not = if trigger.odds_times_if_not < 1.0 { trigger.odds_times_if_not } else { USUAL_IF_NOT };
+                let if_not = if trigger.odds_times_if_not < 1.0 {
+                    trigger.odds_times_if_not
+                } else {
+                    USUAL_IF_NOT
+                };
                 let without = (1.0 - if_not) / (trigger.odds_times - if_not);
                 let with = (trigger.odds_times * without).min(0.95);
                 for ask in &asks {
                     let count = if any { 1 } else { asks.len() };
                     #[allow(clippy::cast_precision_loss)] // a handful
                     let share = if any { asks.len() as f64 } else { 1.0 };
-                    rates.entry((*ask, count)).or_default().push((id, with / share, without / share));
+                    rates.entry((*ask, count)).or_default().push((
+                        id,
+                        with / share,
+                        without / share,
+                    ));
                 }
             }
         }
         for ((ask, with), rates) in rates {
-            let base = rates.iter().map(|r| r.2).fold(f64::INFINITY, f64::min).min(0.5);
+            let base = rates
+                .iter()
+                .map(|r| r.2)
+                .fold(f64::INFINITY, f64::min)
+                .min(0.5);
             let shares = self
                 .ranking
                 .sets
                 .iter()
                 .take(sets)
                 .map(|set| {
-                    let seen = rates.iter().filter(|r| set.causes.contains(&r.0)).map(|r| r.1);
+                    let seen = rates
+                        .iter()
+                        .filter(|r| set.causes.contains(&r.0))
+                        .map(|r| r.1);
                     shows(base, seen.filter(|s| *s >= base))
                 })
                 .collect();
@@ -189,7 +250,10 @@ impl View<'_, '_> {
 }
 
 fn yes_no(face: &Face) -> Vec<Vec<f64>> {
-    vec![face.shares.clone(), face.shares.iter().map(|s| 1.0 - s).collect()]
+    vec![
+        face.shares.clone(),
+        face.shares.iter().map(|s| 1.0 - s).collect(),
+    ]
 }
 
 /// A number falls into one of several bands at most: findings about it are taken as bands, with what is left as one more.

@@ -1,30 +1,35 @@
 //! Holds a plan to its limits by simulating its steps at a finer grain than the planner did, and measuring in its own way.
 
 use gillside::course::plan::{Ground, Plan, replay};
-use gillside::course::projection::{FINE, Part, Point, Gas};
-use gillside::course::plan::Way;
+use gillside::course::projection::{Extreme, FINE, Gas, Part, Point};
 
 /// What reckoning more finely may add to a value: half a percent of the limit.
 const SLACK: f64 = 0.005;
 
-fn courses(ground: &Ground<'_>, plan: &Plan, actions: bool, days: f64) -> Vec<Vec<Point>> {
-    let farm = replay::farm(ground, plan.kind);
-    let actions = if actions { replay::actions(ground, &plan.steps) } else { Vec::new() };
+fn simulated(ground: &Ground<'_>, plan: &Plan, actions: bool, days: f64) -> Vec<Vec<Point>> {
+    let actions = if actions {
+        replay::actions(ground, &plan.steps)
+    } else {
+        Vec::new()
+    };
     let state = ground.begin.state;
-    let (few, many) = ground.begin.capacity.map_or((state, state), |c| {
-        (
-            ground.begin.with_bacteria(c.ammonia.low, c.nitrite.low),
-            ground.begin.with_bacteria(c.ammonia.high, c.nitrite.high),
-        )
-    });
+    let begin = &ground.begin;
+    let few = begin.extreme(Extreme::Few, Extreme::Few);
+    let many = begin.extreme(Extreme::Many, Extreme::Many);
+    let uneven = begin.extreme(Extreme::Many, Extreme::Few);
     [
-        Way { gas: Gas::Usual, state },
-        Way { gas: Gas::Open, state: few },
-        Way { gas: Gas::Slow, state: few },
-        Way { gas: Gas::Slow, state: many },
+        (Gas::Usual, state),
+        (Gas::Open, few),
+        (Gas::Slow, few),
+        (Gas::Slow, many),
+        (Gas::Usual, uneven),
     ]
     .iter()
-    .map(|w| ground.course(&farm, w, &actions, days, FINE).expect("a plan can be simulated"))
+    .map(|(gas, state)| {
+        ground
+            .course(&ground.way(plan.kind, *gas, state), &actions, days, FINE)
+            .expect("a plan can be simulated")
+    })
     .collect()
 }
 
@@ -32,7 +37,11 @@ fn courses(ground: &Ground<'_>, plan: &Plan, actions: bool, days: f64) -> Vec<Ve
 fn change(points: &[Point], of: impl Fn(&Point) -> f64, days: f64, up: bool) -> f64 {
     let mut worst = 0.0_f64;
     for (i, b) in points.iter().enumerate() {
-        for a in points[..i].iter().rev().take_while(|a| b.t - a.t <= days + 1e-9) {
+        for a in points[..i]
+            .iter()
+            .rev()
+            .take_while(|a| b.t - a.t <= days + 1e-9)
+        {
             let rise = of(b) - of(a);
             worst = worst.max(if up { rise } else { -rise });
         }
@@ -41,13 +50,19 @@ fn change(points: &[Point], of: impl Fn(&Point) -> f64, days: f64, up: bool) -> 
 }
 
 fn most(points: &[Point], of: impl Fn(&Point) -> f64, from: f64) -> f64 {
-    points.iter().filter(|p| p.t >= from - 1e-9).map(of).fold(f64::NEG_INFINITY, f64::max)
+    points
+        .iter()
+        .filter(|p| p.t >= from - 1e-9)
+        .map(of)
+        .fold(f64::NEG_INFINITY, f64::max)
 }
 
 fn level(points: &[Point], part: Part, t: f64) -> f64 {
     let i = points.partition_point(|p| p.t <= t + 1e-9).max(1);
     let a = &points[i - 1];
-    let Some(b) = points.get(i) else { return part.of(&a.y) };
+    let Some(b) = points.get(i) else {
+        return part.of(&a.y);
+    };
     let share = ((t - a.t) / (b.t - a.t).max(1e-12)).clamp(0.0, 1.0);
     part.of(&a.y) + share * (part.of(&b.y) - part.of(&a.y))
 }
@@ -75,59 +90,91 @@ fn measured(id: &str, points: &[Point], from: f64) -> Option<f64> {
         "feed-nitrite" => most(points, |p| Part::Nitrite.of(&p.y), from),
         "alkalinity-rise-per-day" => points
             .iter()
-            .map(|p| Part::Alkalinity.of(&p.y) - level(points, Part::Alkalinity, (p.t - 1.0).max(0.0)))
+            .map(|p| {
+                Part::Alkalinity.of(&p.y) - level(points, Part::Alkalinity, (p.t - 1.0).max(0.0))
+            })
             .fold(0.0, f64::max),
-        "alkalinity-left-by-acid" => {
-            points.iter().map(|p| Part::Alkalinity.of(&p.y)).fold(f64::INFINITY, f64::min)
-        }
+        "alkalinity-left-by-acid" => points
+            .iter()
+            .map(|p| Part::Alkalinity.of(&p.y))
+            .fold(f64::INFINITY, f64::min),
         _ => return None,
     })
 }
 
 /// Everything that is wrong with a plan; empty for one that keeps its word.
 pub fn faults(ground: &Ground<'_>, plan: &Plan) -> Vec<String> {
+    let days = |at: i64| (at - ground.now()) as f64 / 86_400.0;
+    let rise = plan.steps.get(1).map_or(0.0, |s| days(s.at));
+    let mut faults = chained(ground, plan, rise);
+    if !plan.steps.is_empty() {
+        shape(ground, plan, &mut faults);
+    }
+    faults
+}
+
+/// What is wrong with the course of the water; feed is raised from day `rise` on.
+pub fn chained(ground: &Ground<'_>, plan: &Plan, from: f64) -> Vec<String> {
     let mut faults = Vec::new();
     if plan.steps.is_empty() {
         return faults;
     }
     let days = |at: i64| (at - ground.now()) as f64 / 86_400.0;
     let end = days(plan.steps.last().unwrap().at) + 1.0;
-    let watched = plan.limits.iter().any(|l| measured(&l.id, &[], 0.0).is_some());
+    let watched = plan
+        .limits
+        .iter()
+        .any(|l| measured(&l.id, &[], 0.0).is_some());
     if watched {
-        let courses = courses(ground, plan, true, end);
-        let idle = if plan.limits.iter().any(|l| l.without.is_some()) {
-            courses_idle(ground, plan, end)
+        let courses = simulated(ground, plan, true, end);
+        let idle = if plan.kind == gillside::course::plan::Kind::Exchange
+            || plan.limits.iter().any(|l| l.without.is_some())
+        {
+            simulated(ground, plan, false, end)
         } else {
             Vec::new()
         };
-        let from = plan.steps.get(1).map_or(0.0, |s| days(s.at));
         for kept in &plan.limits {
             for (way, points) in courses.iter().enumerate() {
-                let Some(value) = measured(&kept.id, points, from) else { continue };
-                let anyway = idle.get(way).and_then(|p| measured(&kept.id, p, from)).unwrap_or(0.0);
+                let Some(value) = measured(&kept.id, points, from) else {
+                    continue;
+                };
+                let anyway = idle
+                    .get(way)
+                    .and_then(|p| measured(&kept.id, p, from))
+                    .unwrap_or(0.0);
                 let broken = if kept.is_floor {
                     value < kept.limit * (1.0 - SLACK)
                 } else {
                     value > (kept.limit * (1.0 + SLACK)).max(anyway * 1.02)
                 };
                 if broken {
-                    faults.push(format!("{} is {value}, limit {}, way {way}, shown {}", kept.id, kept.limit, kept.reached));
+                    faults.push(format!(
+                        "{} is {value}, limit {}, way {way}, shown {}",
+                        kept.id, kept.limit, kept.reached
+                    ));
                 }
             }
         }
     }
-    for kept in plan.limits.iter().filter(|k| measured(&k.id, &[], 0.0).is_none()) {
-        let broken = if kept.is_floor { kept.reached < kept.limit - 1e-9 } else { kept.reached > kept.limit * 1.0001 };
+    for kept in plan
+        .limits
+        .iter()
+        .filter(|k| measured(&k.id, &[], 0.0).is_none())
+    {
+        let broken = if kept.is_floor {
+            kept.reached < kept.limit - 1e-9
+        } else {
+            kept.reached > kept.limit * 1.0001
+        };
         if broken {
-            faults.push(format!("{} is {}, limit {}", kept.id, kept.reached, kept.limit));
+            faults.push(format!(
+                "{} is {}, limit {}",
+                kept.id, kept.reached, kept.limit
+            ));
         }
     }
-    shape(ground, plan, &mut faults);
     faults
-}
-
-fn courses_idle(ground: &Ground<'_>, plan: &Plan, days: f64) -> Vec<Vec<Point>> {
-    courses(ground, plan, false, days)
 }
 
 /// Steps in order, in shifts, weighable, and strong substances only where they were asked for.
@@ -143,7 +190,13 @@ fn shape(ground: &Ground<'_>, plan: &Plan, faults: &mut Vec<String>) {
         if step.text.is_empty() || step.text.contains('{') {
             faults.push(format!("words: `{}`", step.text));
         }
-        for line in step.go_on_if.iter().chain(&step.stop_if).chain(&plan.cautions).chain(&plan.notes) {
+        for line in step
+            .go_on_if
+            .iter()
+            .chain(&step.stop_if)
+            .chain(&plan.cautions)
+            .chain(&plan.notes)
+        {
             if line.contains('{') {
                 faults.push(format!("words: `{line}`"));
             }
@@ -161,7 +214,10 @@ fn shape(ground: &Ground<'_>, plan: &Plan, faults: &mut Vec<String>) {
         }
         let emergency = matches!(plan.kind, Kind::Oxygen | Kind::Dechlorinate);
         if !emergency && !ground.site.shift.is_empty() {
-            let time = jiff::Timestamp::from_second(step.at).unwrap().to_zoned_datetime(ground.site.timezone.clone()).time();
+            let time = jiff::Timestamp::from_second(step.at)
+                .unwrap()
+                .to_zoned_datetime(ground.site.timezone.clone())
+                .time();
             if !ground.site.shift.iter().any(|s| s.covers(time)) && step.warmth.is_none() {
                 faults.push(format!("{time} is in no shift"));
             }
@@ -180,6 +236,10 @@ fn shape(ground: &Ground<'_>, plan: &Plan, faults: &mut Vec<String>) {
         .map(|s| s.amounts.iter().map(|a| a.pure).sum::<f64>() + s.liters.unwrap_or(0.0))
         .collect();
     if day.len() > 1 && day[0] > 0.0 && !quarter(day[0] / day.iter().sum::<f64>()) {
-        faults.push(format!("the first dose is {} of {}", day[0], day.iter().sum::<f64>()));
+        faults.push(format!(
+            "the first dose is {} of {}",
+            day[0],
+            day.iter().sum::<f64>()
+        ));
     }
 }

@@ -1,5 +1,7 @@
 //! Farms and waters for the tests of plans.
 
+#![allow(dead_code)] // each test file uses its part
+
 use gillside::course::plan::{Ground, Plan, Trouble, Wish, plan};
 use gillside::course::projection::Readings;
 use gillside::engine::Limits;
@@ -11,7 +13,13 @@ pub const NOW: i64 = 1_772_611_200;
 
 pub fn rule_base() -> Knowledge {
     knowledge::load(&knowledge::embedded(), &[]).unwrap_or_else(|f| {
-        panic!("{}", f.iter().map(ToString::to_string).collect::<Vec<_>>().join("\n"))
+        panic!(
+            "{}",
+            f.iter()
+                .map(ToString::to_string)
+                .collect::<Vec<_>>()
+                .join("\n")
+        )
     })
 }
 
@@ -83,5 +91,7 @@ pub fn on<T>(
 }
 
 pub fn made(k: &Knowledge, site: &Site, water: &[(&str, f64)], wish: &Wish) -> Plan {
-    on(k, site, water, wish, |_, p| p.unwrap_or_else(|t| panic!("{t}")))
+    on(k, site, water, wish, |_, p| {
+        p.unwrap_or_else(|t| panic!("{t}"))
+    })
 }

@@ -33,6 +33,9 @@ proptest! {
 
     #[test]
     fn a_dose_to_a_target_comes_to_the_target(w in water(), up in 0.05..0.8f64) {
+        // Acid water of high alkalinity would hold more carbon dioxide than any water in air does; there no dose of this
+        // size gets that far, and the function says so.
+        prop_assume!(w.carbon_dioxide().unwrap() < 500.0);
         let base = substance::substance("KOH").unwrap();
         let target = w.ph + up;
         let grams = dose::to_target_closed(&w, base, target).unwrap();

@@ -289,7 +289,7 @@ mod tests {
             assert!(made.contains(part), "{part} is not in\n{made}");
         }
         let said = script.said.join("\n");
-        for part in ["Europe/Lisbn", "lots", "yes or no"] {
+        for part in ["Europe/Lisbn", "is a text, not a number", "yes or no"] {
             assert!(said.contains(part), "{part}: {said}");
         }
         assert!(script.answers.is_empty(), "{:?}", script.answers);

@@ -19,9 +19,13 @@ fn wrapped(text: &str, width: usize) -> String {
         let body = l.trim_start();
         let indent = " ".repeat(l.len() - body.len());
         // What follows a number or a letter at the start of a line stays clear of it.
-        let lead = body.find("  ").map_or(0, |at| if at <= 3 { at + 2 } else { 0 });
+        let lead = body
+            .find("  ")
+            .map_or(0, |at| if at <= 3 { at + 2 } else { 0 });
         let under = format!("{indent}{}", " ".repeat(lead));
-        let options = Options::new(width).initial_indent(&indent).subsequent_indent(&under);
+        let options = Options::new(width)
+            .initial_indent(&indent)
+            .subsequent_indent(&under);
         textwrap::fill(body, options)
     };
     text.lines().map(line).collect::<Vec<_>>().join("\n")
@@ -35,7 +39,10 @@ pub(super) struct Terminal {
 
 impl Terminal {
     pub fn new(width: usize) -> Self {
-        Self { term: Term::stdout(), width }
+        Self {
+            term: Term::stdout(),
+            width,
+        }
     }
 }
 
@@ -45,10 +52,16 @@ impl Front for Terminal {
     }
 
     fn hear(&mut self) -> io::Result<Option<String>> {
-        let heard = Input::<String>::new().with_prompt("Answer").allow_empty(true).report(true).interact_text_on(&self.term);
+        let heard = Input::<String>::new()
+            .with_prompt("Answer")
+            .allow_empty(true)
+            .report(true)
+            .interact_text_on(&self.term);
         match heard {
             Ok(line) => Ok(Some(line)),
-            Err(dialoguer::Error::IO(error)) if error.kind() == io::ErrorKind::UnexpectedEof => Ok(None),
+            Err(dialoguer::Error::IO(error)) if error.kind() == io::ErrorKind::UnexpectedEof => {
+                Ok(None)
+            }
             Err(dialoguer::Error::IO(error)) => Err(error),
         }
     }

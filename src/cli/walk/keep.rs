@@ -35,7 +35,10 @@ impl Keeper {
             .map(|p| context.beside_site(p))
             .filter(|p| p.is_dir())
             .unwrap_or_else(|| context.beside_site(Path::new("")));
-        Self { path: folder.join(NAME), started }
+        Self {
+            path: folder.join(NAME),
+            started,
+        }
     }
 
     pub fn path(&self) -> &Path {
@@ -67,8 +70,13 @@ impl Keeper {
 
     /// Writes the walk down: a reader sees all of it or the one before, never a part.
     pub fn save(&self, context: &Context, turns: &[Turn]) -> io::Result<()> {
-        let text = kept::write(&context.knowledge.vocabulary, self.started, turns).map_err(io::Error::other)?;
-        let folder = self.path.parent().filter(|p| !p.as_os_str().is_empty()).unwrap_or(Path::new("."));
+        let text = kept::write(&context.knowledge.vocabulary, self.started, turns)
+            .map_err(io::Error::other)?;
+        let folder = self
+            .path
+            .parent()
+            .filter(|p| !p.as_os_str().is_empty())
+            .unwrap_or(Path::new("."));
         let mut file = tempfile::NamedTempFile::new_in(folder)?;
         file.write_all(text.as_bytes())?;
         file.as_file().sync_all()?;

@@ -12,10 +12,20 @@ pub(super) const KEYS: &str = "At any question: Enter  don't know, c  can't meas
 /// Why asking stops.
 pub(super) fn stopped(knowledge: &Knowledge, stop: Stop) -> String {
     match stop {
-        Stop::StandsOut(cause) => format!("I stop asking: one cause stands out. {}.", knowledge[cause].name),
-        Stop::NothingWorthAsking => "I stop asking: no question left is worth its effort.".to_owned(),
-        Stop::SameSteps => "I stop asking: the first steps would be the same whatever you answer.".to_owned(),
-        Stop::EnoughAsked => "I stop asking: enough was asked for now. What would still tell most is on the page.".to_owned(),
+        Stop::StandsOut(cause) => format!(
+            "I stop asking: one cause stands out. {}.",
+            knowledge[cause].name
+        ),
+        Stop::NothingWorthAsking => {
+            "I stop asking: no question left is worth its effort.".to_owned()
+        }
+        Stop::SameSteps => {
+            "I stop asking: the first steps would be the same whatever you answer.".to_owned()
+        }
+        Stop::EnoughAsked => {
+            "I stop asking: enough was asked for now. What would still tell most is on the page."
+                .to_owned()
+        }
     }
 }
 
@@ -34,7 +44,10 @@ pub(super) fn first_aid(walk: &Walk<'_>) -> Option<String> {
         Some(minutes) => format!("There are {minutes} minutes at the least."),
         None => match lacking(walk) {
             lacks if lacks.is_empty() => String::new(),
-            lacks => format!("How many minutes there are can't be told without: {}.", lacks.join(", ")),
+            lacks => format!(
+                "How many minutes there are can't be told without: {}.",
+                lacks.join(", ")
+            ),
         },
     });
     text.push_str("\nDo this first. Then go on answering.");
@@ -47,7 +60,12 @@ fn lacking(walk: &Walk<'_>) -> Vec<String> {
     let words = &walk.knowledge().vocabulary;
     let read = |id: &str| {
         let reading = words.reading(id)?;
-        let unread = walk.engine().memory().reading(reading).and_then(|t| t.newest()).is_none();
+        let unread = walk
+            .engine()
+            .memory()
+            .reading(reading)
+            .and_then(|t| t.newest())
+            .is_none();
         unread.then(|| words[reading].name.clone())
     };
     let key = |missing: bool, key: &str| missing.then(|| format!("`{key}` in the site file"));
@@ -87,8 +105,12 @@ pub(super) fn answered(knowledge: &Knowledge, site: &Site, given: &[Given]) -> S
             (_, Answer::Seen(true)) => "yes".to_owned(),
             (_, Answer::Seen(false)) => "no".to_owned(),
             (_, Answer::Happened(Happened::Never)) => "did not happen".to_owned(),
-            (_, Answer::Happened(Happened::Ago(age))) => format!("{} ago", crate::assessment::span(age)),
-            (_, Answer::Happened(Happened::At(time))) => format!("{} ago", crate::assessment::span((g.time - time).max(0))),
+            (_, Answer::Happened(Happened::Ago(age))) => {
+                format!("{} ago", crate::assessment::span(age))
+            }
+            (_, Answer::Happened(Happened::At(time))) => {
+                format!("{} ago", crate::assessment::span((g.time - time).max(0)))
+            }
             (_, Answer::CannotMeasure) => "can't be measured now".to_owned(),
             _ => "don't know".to_owned(),
         };

@@ -1,9 +1,9 @@
 //! Alkalinity up, pH up and down: doses of a base or an acid that follow a path, each reckoned from where the water then is.
 
 use super::check::{Measure, Rule, Track};
-use super::ground::{Ground, Way};
+use super::ground::Ground;
 use super::made::{
-    amount, amount_words, broken, days_from, limit_cautions, mark_the_pace, refusal, trial,
+    Outcome, amount, amount_words, broken, days_from, limit_cautions, mark_the_pace, refusal, trial,
 };
 use super::value::{Amount, Kind, Plan, Refused, Step, Trouble, Wish};
 use super::words::{fill, short};
@@ -12,8 +12,8 @@ use crate::course::projection::{Gas, Part};
 use crate::knowledge::{Dosable, Side, Use};
 use crate::water::carbonate::state::{self, CACO3_PER_EQ};
 
-/// Doses a day: enough that the first is a quarter of its day.
-const DOSES_A_DAY: usize = 5;
+/// Doses a day that are tried: enough that the first is a quarter of its day; more where much has to be made up for.
+const DOSES_A_DAY: [usize; 2] = [5, 10];
 /// Lengths of plan that are tried, in days.
 const LENGTHS: [usize; 8] = [1, 2, 3, 4, 6, 8, 11, 14];
 /// Nearer than this to the aim there is nothing to do: pH, and mg/L as CaCO3.
@@ -22,9 +22,21 @@ const NEAR: (f64, f64) = (0.03, 1.5);
 /// What the doses lead along.
 #[derive(Debug, Clone, Copy, PartialEq)]
 enum Path {
-    Alkalinity { from: f64, to: f64 },
+    Alkalinity {
+        from: f64,
+        to: f64,
+    },
+    /// In equal factors: small doses first, where the water has little.
+    Factors {
+        from: f64,
+        to: f64,
+    },
     /// pH at the present carbon dioxide (mmol/L): where it settles once gas has.
-    Ph { from: f64, to: f64, carbon_dioxide: f64 },
+    Ph {
+        from: f64,
+        to: f64,
+        carbon_dioxide: f64,
+    },
 }
 
 /// Plans alkalinity or pH.
@@ -67,9 +79,18 @@ pub fn plan(ground: &Ground<'_>, wish: &Wish) -> Result<Plan, Trouble> {
             to,
             carbon_dioxide: chem.carbon_dioxide(ph, Part::Carbon.of(&ground.begin.state)),
         },
-        _ => Path::Alkalinity { from: alkalinity, to },
+        _ => Path::Alkalinity {
+            from: alkalinity,
+            to,
+        },
     };
-    Ok(paced(ground, wish, plan, &path, substance, up))
+    let mut paths = vec![path];
+    if let Path::Alkalinity { from, to } = path
+        && from >= 1.0
+    {
+        paths.push(Path::Factors { from, to });
+    }
+    Ok(paced(ground, wish, plan, &paths, substance, up))
 }
 
 /// The value to go to: what is wished, else the near edge of the comfort band.
@@ -86,14 +107,25 @@ fn aim(ground: &Ground<'_>, wish: &Wish, ph: f64) -> Result<f64, Trouble> {
         }
         _ => ground.target(id, Side::Low),
     };
-    let to = wish.to.or(own).ok_or_else(|| Trouble::Lacks(vec!["--to".to_owned()]))?;
-    let range = if wish.kind == Kind::Ph { 4.5..=9.5 } else { 0.0..=500.0 };
+    let to = wish
+        .to
+        .or(own)
+        .ok_or_else(|| Trouble::Lacks(vec!["--to".to_owned()]))?;
+    let range = if wish.kind == Kind::Ph {
+        4.5..=9.5
+    } else {
+        0.0..=500.0
+    };
     if range.contains(&to) {
         Ok(to)
     } else {
         Err(Trouble::Usage(fill(
             &ground.words().aim_out_of_range,
-            &[("value", short(to)), ("low", short(*range.start())), ("high", short(*range.end()))],
+            &[
+                ("value", short(to)),
+                ("low", short(*range.start())),
+                ("high", short(*range.end())),
+            ],
         )))
     }
 }
@@ -170,10 +202,19 @@ fn rules<'k>(ground: &Ground<'k>, substance: &Dosable, up: bool, kind: Kind) -> 
         rules.push(plain(&pace.ph_rise_per_dose, Track::Ph, Measure::Jump));
         rules.push(plain(&pace.ph_rise_per_day, Track::Ph, Measure::Rise(24.0)));
         let limit = ground.un_ionized_limit();
-        rules.push(rule(&pace.un_ionized_ammonia, limit, Track::UnIonized, Measure::Most(0.0)));
+        rules.push(rule(
+            &pace.un_ionized_ammonia,
+            limit,
+            Track::UnIonized,
+            Measure::Most(0.0),
+        ));
         if kind == Kind::Alkalinity {
             let track = Track::Part(Part::Alkalinity);
-            rules.push(plain(&pace.alkalinity_rise_per_day, track, Measure::NetRise));
+            rules.push(plain(
+                &pace.alkalinity_rise_per_day,
+                track,
+                Measure::NetRise,
+            ));
         }
         if substance.gives("sodium") > 0.0 && ground.has_plants() {
             let track = Track::Part(Part::Sodium);
@@ -204,22 +245,50 @@ fn paced(
     ground: &Ground<'_>,
     wish: &Wish,
     mut plan: Plan,
-    path: &Path,
+    paths: &[Path],
     substance: &Dosable,
     up: bool,
 ) -> Plan {
     let rules = rules(ground, substance, up, wish.kind);
     let wait = wait_seconds(ground);
-    let mut last = None;
-    for days in LENGTHS {
-        let slots = clock::slots(ground.site, ground.now(), days, DOSES_A_DAY, wait);
-        let Some(mut steps) = along(ground, wish, path, substance, &slots) else { continue };
-        let end = steps.last().map_or(1.0, |s| days_from(ground, s.at)) + 1.0;
-        let Some(tried) = trial(ground, wish.kind, &steps, &rules, end) else { continue };
-        if let Some((rule, fared)) = tried.broken(&rules) {
-            last = Some(refusal(ground, rule, fared));
-            continue;
+    let (mut last, mut level_met) = (None, false);
+    let tries = LENGTHS.iter().flat_map(|days| {
+        let doses = DOSES_A_DAY.iter().map(move |doses| (*days, *doses));
+        doses.flat_map(|(days, doses)| paths.iter().map(move |path| (days, doses, path)))
+    });
+    // Longer is gentler up to a point; where lengths bring nothing any more, no other does either.
+    let (mut length, mut best, mut best_before, mut in_vain) = (0, f64::INFINITY, f64::INFINITY, 0);
+    for (days, doses, path) in tries {
+        if days != length {
+            in_vain = if best < 0.97 * best_before {
+                0
+            } else {
+                in_vain + 1
+            };
+            if in_vain >= 4 {
+                break;
+            }
+            (length, best_before) = (days, best.min(best_before));
         }
+        let slots = clock::slots(ground.site, ground.now(), days, doses, wait);
+        let Some(mut steps) = along(ground, wish, path, substance, &slots) else {
+            continue;
+        };
+        let end = steps.last().map_or(1.0, |s| days_from(ground, s.at)) + 1.0;
+        let tried = match trial(ground, wish.kind, &steps, &rules, end) {
+            Some(Outcome::Keeps(tried)) => tried,
+            Some(Outcome::Breaks(rule, fared)) => {
+                best = best.min(rule.used(fared.reached));
+                // A level that is passed at any pace says more than a pace that is too fast.
+                let level = matches!(rule.measure, Measure::Most(_) | Measure::Least);
+                if level || !level_met {
+                    last = Some(refusal(ground, rule, fared));
+                }
+                level_met |= level;
+                continue;
+            }
+            None => continue,
+        };
         plan.limits = tried.kept(&rules);
         plan.limits.push(first_dose(ground, &steps));
         if let Some(refused) = levels(ground, &mut plan, substance, &steps) {
@@ -277,18 +346,20 @@ fn along(
     substance: &Dosable,
     slots: &[Vec<i64>],
 ) -> Option<Vec<Step>> {
-    let farm = replay::farm(ground, wish.kind);
-    let volume = farm.volume_l;
+    let volume = ground.begin.farm.volume_l;
     #[allow(clippy::cast_precision_loss)] // a fortnight
     let days = slots.len() as f64;
     let gives = 1000.0 * substance.gives("alkalinity");
-    let mut way = Way { gas: Gas::Usual, state: ground.begin.state };
+    let mut way = ground.way(wish.kind, Gas::Usual, &ground.begin.state);
     let (mut now, mut share) = (0.0, 0.0);
     let mut pure: Vec<(i64, f64)> = Vec::new();
     for (times, parts) in slots.iter().zip(shares(ground, slots)) {
         for (at, part) in times.iter().zip(parts) {
             let t = days_from(ground, *at);
-            way.state = ground.course(&farm, &way, &[], t - now, super::made::PLANNING)?.last()?.y;
+            way.state = ground
+                .course(&way, &[], t - now, super::made::PLANNING)?
+                .last()?
+                .y;
             now = t;
             share += part / days;
             let wanted = wanted(ground, path, share)?;
@@ -308,7 +379,11 @@ fn along(
         .iter()
         .zip(amounts)
         .filter(|(_, a)| a.grams > 0.0)
-        .map(|((at, _), amount)| Step { at: *at, amounts: vec![amount], ..Step::default() })
+        .map(|((at, _), amount)| Step {
+            at: *at,
+            amounts: vec![amount],
+            ..Step::default()
+        })
         .collect();
     Some(steps)
 }
@@ -321,11 +396,18 @@ pub(super) fn weighed(
     first_day: usize,
     most: f64,
 ) -> Vec<Amount> {
-    let mut amounts: Vec<Amount> = pure.iter().map(|(_, g)| amount(substance, *g, purity)).collect();
+    let mut amounts: Vec<Amount> = pure
+        .iter()
+        .map(|(_, g)| amount(substance, *g, purity))
+        .collect();
     let rest: f64 = amounts.iter().take(first_day).skip(1).map(|a| a.pure).sum();
     if let Some(first) = amounts.first_mut() {
         // A lone dose is a quarter of what its day could have had.
-        let top = if first_day > 1 { rest * most / (1.0 - most) } else { first.pure * most };
+        let top = if first_day > 1 {
+            rest * most / (1.0 - most)
+        } else {
+            first.pure * most
+        };
         if first.pure > top {
             *first = amount(substance, top, purity);
         }
@@ -337,7 +419,12 @@ pub(super) fn weighed(
 fn wanted(ground: &Ground<'_>, path: &Path, share: f64) -> Option<f64> {
     match *path {
         Path::Alkalinity { from, to } => Some(from + (to - from) * share),
-        Path::Ph { from, to, carbon_dioxide } => {
+        Path::Factors { from, to } => Some(from * (to / from).powf(share)),
+        Path::Ph {
+            from,
+            to,
+            carbon_dioxide,
+        } => {
             let chem = ground.chemistry()?;
             let ph = from + (to - from) * share;
             let [free, ..] = state::carbon_shares(&chem.carbonate, ph);
@@ -354,7 +441,11 @@ pub(super) fn first_dose(ground: &Ground<'_>, steps: &[Step]) -> super::value::K
     let first = steps.first();
     let begin = first.map_or(0, |s| s.at);
     let grams = |s: &Step| s.amounts.iter().map(|a| a.pure).sum::<f64>() + s.liters.unwrap_or(0.0);
-    let day: f64 = steps.iter().filter(|s| s.at < begin + 86_400).map(grams).sum();
+    let day: f64 = steps
+        .iter()
+        .filter(|s| s.at < begin + 86_400)
+        .map(grams)
+        .sum();
     let alone = steps.iter().filter(|s| s.at < begin + 86_400).count() == 1;
     let share = first.map_or(0.0, grams) / day.max(1e-12);
     super::check::kept(limit, limit.value, if alone { limit.value } else { share })
@@ -382,10 +473,12 @@ pub(super) fn levels(
         if reached > limit.value {
             return Some(broken(ground, limit, limit.value, reached, None));
         }
-        plan.limits.push(super::check::kept(limit, limit.value, reached));
+        plan.limits
+            .push(super::check::kept(limit, limit.value, reached));
         if ground.readings.value(id).is_none() {
             let words = &ground.words().unmeasured;
-            plan.notes.push(fill(words, &[("reading", ground.name(id))]));
+            plan.notes
+                .push(fill(words, &[("reading", ground.name(id))]));
         }
     }
     None
@@ -396,7 +489,9 @@ fn tell(ground: &Ground<'_>, steps: &mut [Step], tried: &super::made::Tried, up:
     let words = ground.words();
     let wait = wait_seconds(ground);
     for step in steps.iter_mut() {
-        let Some(amount) = step.amounts.first().cloned() else { continue };
+        let Some(amount) = step.amounts.first().cloned() else {
+            continue;
+        };
         let substance = ground.knowledge.pacing.substance(&amount.substance);
         let strong = substance.is_some_and(|s| s.strong);
         let text = match (up, strong, amount.substance.as_str()) {
@@ -427,10 +522,19 @@ fn tell(ground: &Ground<'_>, steps: &mut [Step], tried: &super::made::Tried, up:
         }
         let (jump, pace) = (
             ground.pace().ph_rise_per_dose.value,
-            if up { ground.pace().ph_rise_per_day.value } else { ground.pace().ph_fall_per_day.value },
+            if up {
+                ground.pace().ph_rise_per_day.value
+            } else {
+                ground.pace().ph_fall_per_day.value
+            },
         );
-        let text = if up { &words.stop_ph_up } else { &words.stop_ph_down };
-        step.stop_if.push(fill(text, &[("jump", short(jump)), ("pace", short(pace))]));
+        let text = if up {
+            &words.stop_ph_up
+        } else {
+            &words.stop_ph_down
+        };
+        step.stop_if
+            .push(fill(text, &[("jump", short(jump)), ("pace", short(pace))]));
         step.stop_if.push(words.stop_fish.clone());
     }
 }
@@ -438,7 +542,11 @@ fn tell(ground: &Ground<'_>, steps: &mut [Step], tried: &super::made::Tried, up:
 fn cautions(ground: &Ground<'_>, plan: &mut Plan, substance: &Dosable, up: bool) {
     let words = ground.words();
     if substance.strong {
-        let text = if up { &words.strong_base_people } else { &words.acid_people };
+        let text = if up {
+            &words.strong_base_people
+        } else {
+            &words.acid_people
+        };
         plan.cautions.push(text.clone());
     }
     if !up {
@@ -447,6 +555,10 @@ fn cautions(ground: &Ground<'_>, plan: &mut Plan, substance: &Dosable, up: bool)
     if substance.id == "CaCO3" {
         plan.cautions.push(words.lime_slow.clone());
     }
-    plan.cautions.push(if up { words.base_takes_over.clone() } else { words.acid_cause.clone() });
+    plan.cautions.push(if up {
+        words.base_besides.clone()
+    } else {
+        words.acid_cause.clone()
+    });
     limit_cautions(ground, plan);
 }

@@ -70,7 +70,10 @@ fn value(track: Track, p: &Point) -> f64 {
 /// The lowest (or, with `sign` -1, highest) value within a window before each point, against the point: the largest rise.
 fn largest_change(track: Track, points: &[Point], window: f64, sign: f64) -> Fared {
     let mut queue: std::collections::VecDeque<(f64, f64)> = std::collections::VecDeque::new();
-    let mut worst = Fared { reached: 0.0, at: 0.0 };
+    let mut worst = Fared {
+        reached: 0.0,
+        at: 0.0,
+    };
     for p in points {
         let v = sign * value(track, p);
         while queue.back().is_some_and(|(_, kept)| *kept >= v) {
@@ -83,7 +86,10 @@ fn largest_change(track: Track, points: &[Point], window: f64, sign: f64) -> Far
         if let Some((_, least)) = queue.front()
             && v - least > worst.reached
         {
-            worst = Fared { reached: v - least, at: p.t };
+            worst = Fared {
+                reached: v - least,
+                at: p.t,
+            };
         }
     }
     worst
@@ -93,15 +99,24 @@ fn largest_change(track: Track, points: &[Point], window: f64, sign: f64) -> Far
 pub fn at(track: Track, points: &[Point], t: f64) -> Option<f64> {
     let after = points.partition_point(|p| p.t <= t + 1e-9);
     let a = points.get(after.checked_sub(1)?)?;
-    let Some(b) = points.get(after) else { return Some(value(track, a)) };
-    let share = if b.t > a.t { (t - a.t) / (b.t - a.t) } else { 0.0 };
+    let Some(b) = points.get(after) else {
+        return Some(value(track, a));
+    };
+    let share = if b.t > a.t {
+        (t - a.t) / (b.t - a.t)
+    } else {
+        0.0
+    };
     Some(value(track, a) + share.clamp(0.0, 1.0) * (value(track, b) - value(track, a)))
 }
 
 impl Rule<'_> {
     /// How one course uses the limit.
     pub fn of(&self, points: &[Point]) -> Fared {
-        let none = Fared { reached: 0.0, at: 0.0 };
+        let none = Fared {
+            reached: 0.0,
+            at: 0.0,
+        };
         match self.measure {
             Measure::Jump => points
                 .windows(2)
@@ -120,46 +135,90 @@ impl Rule<'_> {
                 let first = points.first().map(|f| value(self.track, f));
                 let base = if p.t <= 1.0 { first } else { before };
                 let rise = base.map_or(0.0, |b| value(self.track, p) - b);
-                if rise > worst.reached { Fared { reached: rise, at: p.t } } else { worst }
+                if rise > worst.reached {
+                    Fared {
+                        reached: rise,
+                        at: p.t,
+                    }
+                } else {
+                    worst
+                }
             }),
             Measure::Most(from) => points
                 .iter()
                 .filter(|p| p.t >= from - 1e-9)
-                .map(|p| Fared { reached: value(self.track, p), at: p.t })
-                .fold(Fared { reached: f64::NEG_INFINITY, at: from }, |w, f| {
-                    if f.reached > w.reached { f } else { w }
-                }),
+                .map(|p| Fared {
+                    reached: value(self.track, p),
+                    at: p.t,
+                })
+                .fold(
+                    Fared {
+                        reached: f64::NEG_INFINITY,
+                        at: from,
+                    },
+                    |w, f| {
+                        if f.reached > w.reached { f } else { w }
+                    },
+                ),
             Measure::Least => points
                 .iter()
-                .map(|p| Fared { reached: value(self.track, p), at: p.t })
-                .fold(Fared { reached: f64::INFINITY, at: 0.0 }, |w, f| {
-                    if f.reached < w.reached { f } else { w }
-                }),
+                .map(|p| Fared {
+                    reached: value(self.track, p),
+                    at: p.t,
+                })
+                .fold(
+                    Fared {
+                        reached: f64::INFINITY,
+                        at: 0.0,
+                    },
+                    |w, f| {
+                        if f.reached < w.reached { f } else { w }
+                    },
+                ),
         }
     }
 
-    /// The worst over several courses.
-    pub fn worst(&self, courses: &[Vec<Point>]) -> Fared {
-        let all = courses.iter().map(|c| self.of(c));
-        let worse = |a: Fared, b: Fared| match self.measure {
-            Measure::Least if b.reached < a.reached => b,
-            Measure::Least => a,
-            _ if b.reached > a.reached => b,
-            _ => a,
+    /// Whether one value is worse than another.
+    pub fn is_worse(&self, value: f64, than: f64) -> bool {
+        if self.measure == Measure::Least {
+            value < than
+        } else {
+            value > than
+        }
+    }
+
+    /// How much of the limit a value uses: 1 is all of it.
+    pub fn used(&self, reached: f64) -> f64 {
+        let (over, under) = if self.measure == Measure::Least {
+            (self.bound, reached)
+        } else {
+            (reached, self.bound)
         };
-        all.reduce(worse).unwrap_or(Fared { reached: 0.0, at: 0.0 })
+        if under > 1e-12 {
+            over / under
+        } else {
+            f64::INFINITY
+        }
     }
 
     /// Whether a value passes the limit by more than a share (below zero: comes so near).
     pub fn is_passed(&self, reached: f64, without: f64, slack: f64) -> bool {
         match self.measure {
             Measure::Least => {
-                let bound = if self.unless_anyway { self.bound.min(without) } else { self.bound };
+                let bound = if self.unless_anyway {
+                    self.bound.min(without)
+                } else {
+                    self.bound
+                };
                 reached < bound * (1.0 - slack)
             }
             _ => {
                 let anyway = self.unless_anyway && without > self.bound;
-                let bound = if anyway { without * 1.001 } else { self.bound * (1.0 + slack) };
+                let bound = if anyway {
+                    without * 1.001
+                } else {
+                    self.bound * (1.0 + slack)
+                };
                 reached > bound
             }
         }

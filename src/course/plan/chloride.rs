@@ -2,11 +2,13 @@
 
 use super::base::{first_dose, levels, named, shares, wait_seconds, weighed};
 use super::check::{self, Measure, Rule, Track};
+use super::clock;
 use super::ground::Ground;
-use super::made::{amount_words, broken, days_from, limit_cautions, mark_the_pace, refusal, trial};
+use super::made::{
+    Outcome, amount_words, broken, days_from, limit_cautions, mark_the_pace, refusal, trial,
+};
 use super::value::{Kind, Plan, Refused, Step, Trouble, Wish};
 use super::words::fill;
-use super::clock;
 use crate::course::projection::Part;
 use crate::knowledge::{Dosable, LimitLevel, Side, Use};
 
@@ -21,7 +23,11 @@ const LENGTHS: [usize; 5] = [1, 2, 3, 5, 8];
 /// [`Trouble`].
 pub fn plan(ground: &Ground<'_>, wish: &Wish) -> Result<Plan, Trouble> {
     let mut plan = Plan::new(Kind::Chloride);
-    let needed: &[&str] = if wish.to.is_some() { &["chloride"] } else { &["nitrite", "chloride"] };
+    let needed: &[&str] = if wish.to.is_some() {
+        &["chloride"]
+    } else {
+        &["nitrite", "chloride"]
+    };
     let refused = ground.trust(needed)?;
     let nitrite = ground.readings.value("nitrite");
     let have = ground.readings.value("chloride").unwrap_or(0.0);
@@ -31,7 +37,11 @@ pub fn plan(ground: &Ground<'_>, wish: &Wish) -> Result<Plan, Trouble> {
     if !(0.0..=2000.0).contains(&want) {
         return Err(Trouble::Usage(fill(
             &ground.words().aim_out_of_range,
-            &[("value", want.to_string()), ("low", "0".into()), ("high", "2000".into())],
+            &[
+                ("value", want.to_string()),
+                ("low", "0".into()),
+                ("high", "2000".into()),
+            ],
         )));
     }
     plan.to = vec![("chloride".to_owned(), want)];
@@ -41,7 +51,10 @@ pub fn plan(ground: &Ground<'_>, wish: &Wish) -> Result<Plan, Trouble> {
     if want <= have {
         plan.notes.push(fill(
             &ground.words().chloride_enough,
-            &[("have", ground.shown("chloride", have)), ("want", ground.shown("chloride", want))],
+            &[
+                ("have", ground.shown("chloride", have)),
+                ("want", ground.shown("chloride", want)),
+            ],
         ));
         return Ok(plan);
     }
@@ -68,7 +81,8 @@ fn ratio(ground: &Ground<'_>) -> f64 {
         .or_else(|| {
             let reading = ground.knowledge.vocabulary.reading(id)?;
             let all = ground.knowledge.species.iter();
-            all.filter_map(|s| s.limit(reading, LimitLevel::Stress, Side::Low)).reduce(f64::max)
+            all.filter_map(|s| s.limit(reading, LimitLevel::Stress, Side::Low))
+                .reduce(f64::max)
         })
         .unwrap_or(66.0)
 }
@@ -81,7 +95,10 @@ fn choices<'g>(ground: &'g Ground<'_>, wish: &Wish) -> Result<Vec<&'g Dosable>, 
             let words = ground.words();
             return Err(Trouble::Usage(fill(
                 &words.wrong_substance,
-                &[("substance", found.name.clone()), ("wanted", words.a_salt.clone())],
+                &[
+                    ("substance", found.name.clone()),
+                    ("wanted", words.a_salt.clone()),
+                ],
             )));
         }
         return Ok(vec![found]);
@@ -98,7 +115,13 @@ fn choices<'g>(ground: &'g Ground<'_>, wish: &Wish) -> Result<Vec<&'g Dosable>, 
     let plants = ground.has_plants();
     // Calcium first where plants grow, plain salt where none do; what is on the shelf before what must be bought.
     let order = |s: &Dosable| match (s.gives("sodium") > 0.0, s.gives("calcium") > 0.0) {
-        (true, _) => if plants { 3 } else { 0 },
+        (true, _) => {
+            if plants {
+                3
+            } else {
+                0
+            }
+        }
         (_, true) => 1,
         _ => 2,
     };
@@ -118,22 +141,43 @@ fn paced(
     let rules = rules(ground, substance);
     let mut last = None;
     for days in LENGTHS {
-        let slots = clock::slots(ground.site, ground.now(), days, DOSES_A_DAY, wait_seconds(ground));
+        let slots = clock::slots(
+            ground.site,
+            ground.now(),
+            days,
+            DOSES_A_DAY,
+            wait_seconds(ground),
+        );
         #[allow(clippy::cast_precision_loss)] // a few days
         let per_day = pure / days as f64;
         let doses: Vec<(i64, f64)> = slots
             .iter()
             .flatten()
             .copied()
-            .zip(shares(ground, &slots).into_iter().flatten().map(|s| s * per_day))
+            .zip(
+                shares(ground, &slots)
+                    .into_iter()
+                    .flatten()
+                    .map(|s| s * per_day),
+            )
             .collect();
         let most = ground.pace().first_dose.value;
-        let amounts = weighed(substance, wish.purity, &doses, slots.first().map_or(0, Vec::len), most);
+        let amounts = weighed(
+            substance,
+            wish.purity,
+            &doses,
+            slots.first().map_or(0, Vec::len),
+            most,
+        );
         let mut steps: Vec<Step> = doses
             .iter()
             .zip(amounts)
             .filter(|(_, a)| a.grams > 0.0)
-            .map(|((at, _), amount)| Step { at: *at, amounts: vec![amount], ..Step::default() })
+            .map(|((at, _), amount)| Step {
+                at: *at,
+                amounts: vec![amount],
+                ..Step::default()
+            })
             .collect();
         let salinity = salinity_rise(&steps, volume);
         let limit = &ground.pace().salinity_rise_per_day;
@@ -141,11 +185,14 @@ fn paced(
             last = Some(broken(ground, limit, limit.value, salinity, None));
             continue;
         }
-        let end = steps.last().map_or(1.0, |s| days_from(ground, s.at)) + 0.5;
-        let Some(tried) = trial(ground, Kind::Chloride, &steps, &rules, end) else { continue };
-        if let Some((rule, fared)) = tried.broken(&rules) {
-            return Err(refusal(ground, rule, fared));
-        }
+        let end = steps.last().map_or(1.0, |s| days_from(ground, s.at)) + 1.0;
+        let tried = match trial(ground, Kind::Chloride, &steps, &rules, end) {
+            Some(Outcome::Keeps(tried)) => tried,
+            Some(Outcome::Breaks(rule, fared)) => {
+                return Err(refusal(ground, rule, fared));
+            }
+            None => continue,
+        };
         plan.limits = tried.kept(&rules);
         plan.limits.push(check::kept(limit, limit.value, salinity));
         plan.limits.push(first_dose(ground, &steps));
@@ -191,7 +238,9 @@ pub(super) fn salinity_rise(steps: &[Step], volume_l: f64) -> f64 {
     steps
         .iter()
         .map(|first| {
-            let day = steps.iter().filter(|s| s.at >= first.at && s.at <= first.at + 86_400);
+            let day = steps
+                .iter()
+                .filter(|s| s.at >= first.at && s.at <= first.at + 86_400);
             day.map(grams).sum::<f64>() / volume_l
         })
         .fold(0.0, f64::max)
@@ -201,17 +250,26 @@ fn tell(ground: &Ground<'_>, steps: &mut [Step], tried: &super::made::Tried, pla
     let words = ground.words();
     let want = plan.to.first().map_or(0.0, |t| t.1);
     for step in steps.iter_mut() {
-        let Some(amount) = step.amounts.first() else { continue };
+        let Some(amount) = step.amounts.first() else {
+            continue;
+        };
         step.text = fill(&words.do_salt, &[("amount", amount_words(ground, amount))]);
         let t = days_from(ground, step.at) + 1.0 / 24.0;
-        step.expect.extend(tried.expect("chloride", Track::Part(Part::Chloride), t));
+        step.expect
+            .extend(tried.expect("chloride", Track::Part(Part::Chloride), t));
         if let Some(e) = step.expect.first() {
             step.go_on_if.push(fill(
                 &words.go_on_chloride,
-                &[("low", ground.shown(&e.id, e.low)), ("high", ground.shown(&e.id, e.high))],
+                &[
+                    ("low", ground.shown(&e.id, e.low)),
+                    ("high", ground.shown(&e.id, e.high)),
+                ],
             ));
         }
-        step.stop_if.push(fill(&words.stop_chloride, &[("want", ground.shown("chloride", want))]));
+        step.stop_if.push(fill(
+            &words.stop_chloride,
+            &[("want", ground.shown("chloride", want))],
+        ));
     }
 }
 
@@ -227,7 +285,8 @@ fn cautions(ground: &Ground<'_>, plan: &mut Plan) {
     }
     if ground.has_plants() && ground.readings.value("sodium").is_none() {
         let name = ground.name("sodium");
-        plan.notes.push(fill(&words.unmeasured, &[("reading", name)]));
+        plan.notes
+            .push(fill(&words.unmeasured, &[("reading", name)]));
     }
     limit_cautions(ground, plan);
 }

@@ -44,10 +44,18 @@ pub fn plan(ground: &Ground<'_>, wish: &Wish) -> Result<Plan, Trouble> {
     let quarter = &ground.pace().first_dose;
     let rest = amount(substance, grams * (1.0 - quarter.value), wish.purity);
     let share = quarter.value / (1.0 - quarter.value);
-    let first = amount(substance, (grams * quarter.value).min(rest.pure * share), wish.purity);
+    let first = amount(
+        substance,
+        (grams * quarter.value).min(rest.pure * share),
+        wish.purity,
+    );
     let at = clock::next(ground.site, ground.now());
     let left = residual * (1.0 - first.pure / (volume * per / 1000.0) / residual).max(0.0);
-    let expect = |low: f64, high: f64| Expect { id: "residual-chlorine".to_owned(), low, high };
+    let expect = |low: f64, high: f64| Expect {
+        id: "residual-chlorine".to_owned(),
+        low,
+        high,
+    };
     let near = expect(0.9 * left, 1.15 * left);
     let place = liters(ground.site.units, volume);
     plan.steps = vec![
@@ -68,7 +76,10 @@ pub fn plan(ground: &Ground<'_>, wish: &Wish) -> Result<Plan, Trouble> {
         },
         Step {
             at: at + 60 * MINUTES,
-            text: fill(&words.do_dechlorinate_rest, &[("amount", amount_words(ground, &rest))]),
+            text: fill(
+                &words.do_dechlorinate_rest,
+                &[("amount", amount_words(ground, &rest))],
+            ),
             amounts: vec![rest.clone()],
             expect: vec![expect(0.0, 0.0)],
             go_on_if: vec![words.go_on_dechlorinated.clone()],
@@ -78,7 +89,11 @@ pub fn plan(ground: &Ground<'_>, wish: &Wish) -> Result<Plan, Trouble> {
     ];
     let given = (first.pure + rest.pure) / (volume * per * residual / 1000.0);
     plan.limits.push(check::kept(margin, margin.value, given));
-    plan.limits.push(check::kept(quarter, quarter.value, first.pure / (first.pure + rest.pure)));
+    plan.limits.push(check::kept(
+        quarter,
+        quarter.value,
+        first.pure / (first.pure + rest.pure),
+    ));
     plan.add_up();
     cautions(ground, &mut plan, substance, residual);
     Ok(plan)
@@ -86,7 +101,14 @@ pub fn plan(ground: &Ground<'_>, wish: &Wish) -> Result<Plan, Trouble> {
 
 fn choose<'g>(ground: &'g Ground<'_>, wish: &Wish) -> Result<&'g Dosable, Trouble> {
     let words = ground.words();
-    let all = || ground.knowledge.pacing.substances.iter().filter(|s| s.used_as == Use::Reducer);
+    let all = || {
+        ground
+            .knowledge
+            .pacing
+            .substances
+            .iter()
+            .filter(|s| s.used_as == Use::Reducer)
+    };
     if let Some(name) = &wish.substance {
         let found = named(ground, name)?;
         return if found.used_as == Use::Reducer {
@@ -94,7 +116,10 @@ fn choose<'g>(ground: &'g Ground<'_>, wish: &Wish) -> Result<&'g Dosable, Troubl
         } else {
             Err(Trouble::Usage(fill(
                 &words.wrong_substance,
-                &[("substance", found.name.clone()), ("wanted", words.a_dechlorinator.clone())],
+                &[
+                    ("substance", found.name.clone()),
+                    ("wanted", words.a_dechlorinator.clone()),
+                ],
             )))
         };
     }
@@ -114,14 +139,20 @@ fn cautions(ground: &Ground<'_>, plan: &mut Plan, substance: &Dosable, residual:
     if kind != Some(Chlorination::Chlorine)
         && let Ok(ammonia) = chlorine::ammonia_left(residual)
     {
-        let free = ground.chemistry().map_or(0.0, |c| c.un_ionized(ground.begin.ph, ammonia));
+        let free = ground
+            .chemistry()
+            .map_or(0.0, |c| c.un_ionized(ground.begin.ph, ammonia));
         plan.cautions.push(fill(
             &words.dechlorinate_ammonia,
             &[("ammonia", short(ammonia)), ("free", short(free))],
         ));
     }
     let acid = substance.gives("alkalinity") < 0.0;
-    plan.cautions.push(if acid { words.dechlorinate_acid.clone() } else { words.dechlorinate_oxygen.clone() });
+    plan.cautions.push(if acid {
+        words.dechlorinate_acid.clone()
+    } else {
+        words.dechlorinate_oxygen.clone()
+    });
     plan.cautions.push(words.dechlorinate_fish.clone());
     limit_cautions(ground, plan);
 }

@@ -2,11 +2,11 @@
 
 use super::base::{first_dose, wait_seconds};
 use super::check::{self, Measure, Rule, Track};
-use super::ground::{Ground, Way};
-use super::made::{days_from, limit_cautions, mark_the_pace, refusal, trial};
+use super::clock;
+use super::ground::Ground;
+use super::made::{Outcome, days_from, limit_cautions, mark_the_pace, refusal, trial};
 use super::value::{Kind, Plan, Refused, Step, Trouble, Wish};
 use super::words::{degrees, fill, liters, short, warmer};
-use super::{clock, replay};
 use crate::course::projection::{Action, Deed, Gas, NewWater, Part};
 use crate::knowledge::Side;
 
@@ -34,11 +34,23 @@ const CARRIED: [(&str, Part); 7] = [
 /// [`Trouble`].
 pub fn plan(ground: &Ground<'_>, wish: &Wish) -> Result<Plan, Trouble> {
     let words = ground.words();
-    let id = wish.reading.clone().ok_or_else(|| Trouble::Lacks(vec!["--reading".to_owned()]))?;
-    let carried = CARRIED.iter().find(|(name, _)| *name == id).map(|(_, part)| *part);
+    let id = wish
+        .reading
+        .clone()
+        .ok_or_else(|| Trouble::Lacks(vec!["--reading".to_owned()]))?;
+    let carried = CARRIED
+        .iter()
+        .find(|(name, _)| *name == id)
+        .map(|(_, part)| *part);
     let known = ground.knowledge.vocabulary.reading(&id);
-    if known.is_none_or(|r| ground.knowledge.vocabulary[r].derived) || matches!(id.as_str(), "ph" | "feed" | "deaths") {
-        let carried = CARRIED.iter().map(|(n, _)| *n).collect::<Vec<_>>().join(", ");
+    if known.is_none_or(|r| ground.knowledge.vocabulary[r].derived)
+        || matches!(id.as_str(), "ph" | "feed" | "deaths")
+    {
+        let carried = CARRIED
+            .iter()
+            .map(|(n, _)| *n)
+            .collect::<Vec<_>>()
+            .join(", ");
         return Err(Trouble::Usage(format!(
             "`{}` is not something that water exchange is planned for; use {carried}, or another concentration",
             crate::fault::shown(&id)
@@ -52,7 +64,10 @@ pub fn plan(ground: &Ground<'_>, wish: &Wish) -> Result<Plan, Trouble> {
         .target(&id, Side::High)
         .filter(|high| now > *high)
         .or_else(|| ground.target(&id, Side::Low).filter(|low| now < *low));
-    let want = wish.to.or(own).ok_or_else(|| Trouble::Lacks(vec!["--to".to_owned()]))?;
+    let want = wish
+        .to
+        .or(own)
+        .ok_or_else(|| Trouble::Lacks(vec!["--to".to_owned()]))?;
     plan.from = vec![(id.clone(), now)];
     plan.to = vec![(id.clone(), want)];
     if let Some(refused) = refused {
@@ -89,7 +104,17 @@ pub fn plan(ground: &Ground<'_>, wish: &Wish) -> Result<Plan, Trouble> {
             instead: words.exchange_wrong_way_instead.clone(),
         }));
     }
-    Ok(paced(ground, plan, &Aim { id, part: carried, now, want, new }))
+    Ok(paced(
+        ground,
+        plan,
+        &Aim {
+            id,
+            part: carried,
+            now,
+            want,
+            new,
+        },
+    ))
 }
 
 struct Aim {
@@ -139,16 +164,36 @@ fn rules<'k>(ground: &Ground<'k>) -> Vec<Rule<'k>> {
         unless_anyway: true,
     };
     let mut rules = vec![
-        rule(&pace.temperature_rise_per_hour, temperature, Measure::Rise(1.0)),
-        rule(&pace.temperature_rise_per_day, temperature, Measure::Rise(24.0)),
-        rule(&pace.temperature_fall_per_hour, temperature, Measure::Fall(1.0)),
-        rule(&pace.temperature_fall_per_day, temperature, Measure::Fall(24.0)),
+        rule(
+            &pace.temperature_rise_per_hour,
+            temperature,
+            Measure::Rise(1.0),
+        ),
+        rule(
+            &pace.temperature_rise_per_day,
+            temperature,
+            Measure::Rise(24.0),
+        ),
+        rule(
+            &pace.temperature_fall_per_hour,
+            temperature,
+            Measure::Fall(1.0),
+        ),
+        rule(
+            &pace.temperature_fall_per_day,
+            temperature,
+            Measure::Fall(24.0),
+        ),
         rule(&pace.ph_rise_per_day, Track::Ph, Measure::Rise(24.0)),
         rule(&pace.ph_fall_per_day, Track::Ph, Measure::Fall(24.0)),
     ];
     rules.push(Rule {
         bound: ground.un_ionized_limit(),
-        ..rule(&pace.un_ionized_ammonia, Track::UnIonized, Measure::Most(0.0))
+        ..rule(
+            &pace.un_ionized_ammonia,
+            Track::UnIonized,
+            Measure::Most(0.0),
+        )
     });
     rules
 }
@@ -156,7 +201,11 @@ fn rules<'k>(ground: &Ground<'k>) -> Vec<Rule<'k>> {
 fn paced(ground: &Ground<'_>, mut plan: Plan, aim: &Aim) -> Plan {
     let pace = ground.pace();
     let unlike = unlike(ground);
-    let batch = if unlike.is_empty() { &pace.exchange_per_batch } else { &pace.exchange_per_batch_unlike };
+    let batch = if unlike.is_empty() {
+        &pace.exchange_per_batch
+    } else {
+        &pace.exchange_per_batch_unlike
+    };
     let rules = rules(ground);
     let mut last = None;
     for share in TRIED {
@@ -165,18 +214,22 @@ fn paced(ground: &Ground<'_>, mut plan: Plan, aim: &Aim) -> Plan {
             last = Some(never(ground, aim, a_day));
             continue;
         };
-        let end = steps.last().map_or(1.0, |s| days_from(ground, s.at)) + 0.5;
-        let Some(tried) = trial(ground, Kind::Exchange, &steps, &rules, end) else { continue };
-        if let Some((rule, fared)) = tried.broken(&rules) {
-            last = Some(refusal(ground, rule, fared));
-            continue;
-        }
+        let end = steps.last().map_or(1.0, |s| days_from(ground, s.at)) + 1.0;
+        let tried = match trial(ground, Kind::Exchange, &steps, &rules, end) {
+            Some(Outcome::Keeps(tried)) => tried,
+            Some(Outcome::Breaks(rule, fared)) => {
+                last = Some(refusal(ground, rule, fared));
+                continue;
+            }
+            None => continue,
+        };
         plan.limits = tried.kept(&rules);
         let volume = ground.begin.farm.volume_l;
         let largest = steps.iter().filter_map(|s| s.liters).fold(0.0, f64::max) / volume;
         plan.limits.push(check::kept(batch, batch.value, largest));
         let day = &pace.exchange_per_day;
-        plan.limits.push(check::kept(day, day.value, within_a_day(&steps) / volume));
+        plan.limits
+            .push(check::kept(day, day.value, within_a_day(&steps) / volume));
         plan.limits.push(first_dose(ground, &steps));
         mark_the_pace(&mut plan.limits);
         tell(ground, &mut steps, &tried, aim);
@@ -197,7 +250,10 @@ fn never(ground: &Ground<'_>, aim: &Aim, a_day: f64) -> Refused {
             &[
                 ("share", short(100.0 * a_day)),
                 ("reading", ground.name(&aim.id)),
-                ("value", format!("more than {}", ground.shown(&aim.id, aim.want))),
+                (
+                    "value",
+                    format!("more than {}", ground.shown(&aim.id, aim.want)),
+                ),
             ],
         ),
         instead: words.exchange_never_instead.clone(),
@@ -209,7 +265,9 @@ fn within_a_day(steps: &[Step]) -> f64 {
     steps
         .iter()
         .map(|first| {
-            let day = steps.iter().filter(|s| s.at >= first.at && s.at < first.at + 86_400);
+            let day = steps
+                .iter()
+                .filter(|s| s.at >= first.at && s.at < first.at + 86_400);
             day.filter_map(|s| s.liters).sum::<f64>()
         })
         .fold(0.0, f64::max)
@@ -217,11 +275,16 @@ fn within_a_day(steps: &[Step]) -> f64 {
 
 /// Batches until the reading is there in the likeliest course; `None` when it is not within the longest plan.
 fn batches(ground: &Ground<'_>, aim: &Aim, a_day: f64, most: f64) -> Option<Vec<Step>> {
-    let farm = replay::farm(ground, Kind::Exchange);
     let makeup = ground.makeup().ok()?;
-    let volume = farm.volume_l;
-    let slots = clock::slots(ground.site, ground.now(), LONGEST, BATCHES_A_DAY, wait_seconds(ground));
-    let mut way = Way { gas: Gas::Usual, state: ground.begin.state };
+    let volume = ground.begin.farm.volume_l;
+    let slots = clock::slots(
+        ground.site,
+        ground.now(),
+        LONGEST,
+        BATCHES_A_DAY,
+        wait_seconds(ground),
+    );
+    let mut way = ground.way(Kind::Exchange, Gas::Usual, &ground.begin.state);
     let mut now = 0.0;
     let mut other = aim.now;
     let down = aim.want < aim.now;
@@ -231,17 +294,35 @@ fn batches(ground: &Ground<'_>, aim: &Aim, a_day: f64, most: f64) -> Option<Vec<
         let each = (a_day / times.len() as f64).min(most);
         for (i, at) in times.iter().enumerate() {
             let quarter = ground.pace().first_dose.value * a_day;
-            let share = if day == 0 && i == 0 { each.min(quarter) } else { each };
+            let share = if day == 0 && i == 0 {
+                each.min(quarter)
+            } else {
+                each
+            };
             // Whole ten liters, rounded down.
             let liters = (share * volume / 10.0).floor() * 10.0;
-            let liters = if liters < 10.0 { share * volume } else { liters };
+            let liters = if liters < 10.0 {
+                share * volume
+            } else {
+                liters
+            };
             let share = liters / volume;
             let t = days_from(ground, *at);
-            let actions = [Action { at: t - now, deed: Deed::Exchange(share, makeup) }];
-            way.state = ground.course(&farm, &way, &actions, t - now, super::made::PLANNING)?.last()?.y;
+            let actions = [Action {
+                at: t - now,
+                deed: Deed::Exchange(share, makeup),
+            }];
+            way.state = ground
+                .course(&way, &actions, t - now, super::made::PLANNING)?
+                .last()?
+                .y;
             now = t;
             other += share * (aim.new - other);
-            steps.push(Step { at: *at, liters: Some(liters), ..Step::default() });
+            steps.push(Step {
+                at: *at,
+                liters: Some(liters),
+                ..Step::default()
+            });
             let level = aim.part.map_or(other, |p| p.of(&way.state));
             if (level <= aim.want) == down {
                 return Some(hold_first(ground, steps));
@@ -256,17 +337,30 @@ fn hold_first(ground: &Ground<'_>, mut steps: Vec<Step>) -> Vec<Step> {
     let most = ground.pace().first_dose.value;
     let begin = steps.first().map_or(0, |s| s.at);
     let day = |s: &&Step| s.at < begin + 86_400;
-    let rest: f64 = steps.iter().filter(day).skip(1).filter_map(|s| s.liters).sum();
+    let rest: f64 = steps
+        .iter()
+        .filter(day)
+        .skip(1)
+        .filter_map(|s| s.liters)
+        .sum();
     let alone = steps.iter().filter(day).count() == 1;
     if let Some(first) = steps.first_mut()
         && let Some(liters) = first.liters
     {
-        let top = if alone { liters * most } else { rest * most / (1.0 - most) };
+        let top = if alone {
+            liters * most
+        } else {
+            rest * most / (1.0 - most)
+        };
         first.liters = Some(liters.min(top));
         if alone && steps.len() == 1 {
             let left = liters - liters.min(top);
             let later = clock::next(ground.site, begin + wait_seconds(ground));
-            steps.push(Step { at: later, liters: Some(left), ..Step::default() });
+            steps.push(Step {
+                at: later,
+                liters: Some(left),
+                ..Step::default()
+            });
         }
     }
     steps
@@ -280,11 +374,16 @@ fn tell(ground: &Ground<'_>, steps: &mut [Step], tried: &super::made::Tried, aim
         let amount = liters(units, step.liters.unwrap_or(0.0));
         step.text = fill(
             &words.do_exchange,
-            &[("out", amount.clone()), ("new", amount), ("temperature", degrees(units, warmth))],
+            &[
+                ("out", amount.clone()),
+                ("new", amount),
+                ("temperature", degrees(units, warmth)),
+            ],
         );
         let t = days_from(ground, step.at) + 1.0 / 24.0;
         if let Some(part) = aim.part {
-            step.expect.extend(tried.expect(&aim.id, Track::Part(part), t));
+            step.expect
+                .extend(tried.expect(&aim.id, Track::Part(part), t));
         }
         if let Some(e) = step.expect.first() {
             let hour = ground.pace().temperature_fall_per_hour.value;
@@ -316,11 +415,13 @@ fn cautions(ground: &Ground<'_>, plan: &mut Plan, aim: &Aim, unlike: &[String]) 
     plan.cautions.push(words.exchange_chlorine_each.clone());
     if !unlike.is_empty() {
         let what = unlike.join(", ");
-        plan.cautions.push(fill(&words.exchange_unlike, &[("what", what)]));
+        plan.cautions
+            .push(fill(&words.exchange_unlike, &[("what", what)]));
     }
     if aim.new == 0.0 {
         let name = ground.name(&aim.id);
-        plan.notes.push(fill(&words.exchange_assumed, &[("reading", name)]));
+        plan.notes
+            .push(fill(&words.exchange_assumed, &[("reading", name)]));
     }
     limit_cautions(ground, plan);
 }

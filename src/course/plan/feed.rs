@@ -2,12 +2,12 @@
 
 use super::check::{self, Measure, Rule, Track};
 use super::clock;
-use super::ground::{Ground, Way};
-use super::made::{PLANNING, days_from, limit_cautions, mark_the_pace, trial};
+use super::ground::Ground;
+use super::made::{Outcome, days_from, limit_cautions, mark_the_pace, trial};
 use super::replay;
 use super::value::{Kind, Plan, Refused, Step, Trouble, Wish};
 use super::words::{fill, kilograms, short};
-use crate::course::projection::{Gas, Part, Point};
+use crate::course::projection::{ORDINARY, Part, Point};
 
 /// The longest plan, in days.
 const LONGEST: usize = 14;
@@ -32,12 +32,19 @@ pub fn plan(ground: &Ground<'_>, wish: &Wish) -> Result<Plan, Trouble> {
     if !(to >= 0.0 && to <= 10.0 * usual) {
         return Err(Trouble::Usage(fill(
             &words.aim_out_of_range,
-            &[("value", short(to)), ("low", "0".into()), ("high", short(10.0 * usual))],
+            &[
+                ("value", short(to)),
+                ("low", "0".into()),
+                ("high", short(10.0 * usual)),
+            ],
         )));
     }
     plan.from = vec![
         ("feed".to_owned(), ground.begin.feed * usual),
-        ("total-ammonia".to_owned(), Part::Ammonia.of(&ground.begin.state)),
+        (
+            "total-ammonia".to_owned(),
+            Part::Ammonia.of(&ground.begin.state),
+        ),
         ("nitrite".to_owned(), Part::Nitrite.of(&ground.begin.state)),
     ];
     plan.to = vec![("feed".to_owned(), to)];
@@ -50,31 +57,24 @@ pub fn plan(ground: &Ground<'_>, wish: &Wish) -> Result<Plan, Trouble> {
     Ok(paced(ground, plan, usual, to / usual))
 }
 
-/// The cautious way: as few bacteria as the log allows.
-fn cautious(ground: &Ground<'_>) -> Way {
-    let state = ground.begin.capacity.map_or(ground.begin.state, |c| {
-        ground.begin.with_bacteria(c.ammonia.low, c.nitrite.low)
-    });
-    Way { gas: Gas::Usual, state }
-}
-
-fn course(ground: &Ground<'_>, steps: &[Step], days: f64) -> Option<Vec<Point>> {
-    let farm = replay::farm(ground, Kind::Feed);
-    let actions = replay::actions(ground, steps);
-    ground.course(&farm, &cautious(ground), &actions, days, PLANNING)
-}
-
-/// Whether the water stays within the limits of raised feed from one day to another.
-fn carries(ground: &Ground<'_>, points: &[Point], from: f64, to: f64) -> bool {
+/// Whether the water stays within the limits of raised feed from one day to another, every way that things may go.
+fn carries(ground: &Ground<'_>, steps: &[Step], from: f64, to: f64) -> bool {
     let pace = ground.pace();
-    points.iter().filter(|p| p.t >= from - 1e-9 && p.t <= to + 1e-9).all(|p| {
-        Part::Ammonia.of(&p.y) <= AWAY * pace.feed_ammonia.value
-            && Part::Nitrite.of(&p.y) <= AWAY * pace.feed_nitrite.value
+    let actions = replay::actions(ground, steps);
+    let within = |p: &Point| {
+        p.t < from - 1e-9
+            || (Part::Ammonia.of(&p.y) <= AWAY * pace.feed_ammonia.value
+                && Part::Nitrite.of(&p.y) <= AWAY * pace.feed_nitrite.value)
+    };
+    ground.ways(Kind::Feed).iter().all(|way| {
+        ground
+            .course(way, &actions, to, ORDINARY)
+            .is_some_and(|points| points.iter().all(within))
     })
 }
 
 /// Decides on each day that a rise may fall on: one level up, if the cautious course then stays within the limits.
-fn levels(ground: &Ground<'_>, usual: f64, to: f64) -> Option<Vec<(Step, f64)>> {
+fn levels(ground: &Ground<'_>, usual: f64, to: f64) -> Vec<(Step, f64)> {
     let pace = ground.pace();
     #[allow(clippy::cast_possible_truncation)] // a few days
     let apart = (pace.feed_step_days.value * 86_400.0) as i64;
@@ -94,8 +94,7 @@ fn levels(ground: &Ground<'_>, usual: f64, to: f64) -> Option<Vec<(Step, f64)>> 
         if share > present + 1e-9 || share > to + 1e-9 {
             continue;
         }
-        let points = course(ground, &[feed(first, share)], WATCHED + 1.0)?;
-        if carries(ground, &points, 0.0, WATCHED + 1.0) {
+        if carries(ground, &[feed(first, share)], 0.0, WATCHED + 1.0) {
             level = share;
             break;
         }
@@ -108,8 +107,7 @@ fn levels(ground: &Ground<'_>, usual: f64, to: f64) -> Option<Vec<(Step, f64)>> 
         let mut tried = steps.clone();
         tried.push((feed(slot, next), next));
         let t = days_from(ground, slot);
-        let points = course(ground, &plain(&tried), t + WATCHED)?;
-        if carries(ground, &points, t, t + WATCHED) {
+        if carries(ground, &plain(&tried), t, t + WATCHED) {
             steps = tried;
             level = next;
             at = slot + apart;
@@ -117,7 +115,7 @@ fn levels(ground: &Ground<'_>, usual: f64, to: f64) -> Option<Vec<(Step, f64)>> 
             at = slot + 86_400;
         }
     }
-    Some(steps)
+    steps
 }
 
 fn paced(ground: &Ground<'_>, mut plan: Plan, usual: f64, to: f64) -> Plan {
@@ -128,7 +126,11 @@ fn paced(ground: &Ground<'_>, mut plan: Plan, usual: f64, to: f64) -> Plan {
         reason: words.feed_none_possible.clone(),
         instead: words.feed_none_possible_instead.clone(),
     };
-    let Some(levels) = levels(ground, usual, to) else { return plan.refuse(refused) };
+    let mut levels = levels(ground, usual, to);
+    // A rise that the days after the next one would not bear is taken back.
+    while levels.len() > 1 && !holds(ground, &levels) {
+        levels.pop();
+    }
     let reached = levels.last().map_or(0.0, |l| l.1);
     if levels.len() == 1 && reached <= 0.0 && to > 0.0 && carried_now(ground) {
         return plan.refuse(refused);
@@ -152,13 +154,16 @@ fn paced(ground: &Ground<'_>, mut plan: Plan, usual: f64, to: f64) -> Plan {
         rules.clear();
     }
     let end = steps.last().map_or(1.0, |s| days_from(ground, s.at)) + WATCHED;
-    let Some(tried) = trial(ground, Kind::Feed, &steps, &rules, end) else {
+    let Some(Outcome::Keeps(tried)) = trial(ground, Kind::Feed, &steps, &rules, end) else {
         return plan.refuse(refused);
     };
     plan.limits = tried.kept(&rules);
-    let largest = levels.windows(2).map(|w| w.last().map_or(0.0, |b| b.1) - w.first().map_or(0.0, |a| a.1));
+    let largest = levels
+        .windows(2)
+        .map(|w| w.last().map_or(0.0, |b| b.1) - w.first().map_or(0.0, |a| a.1));
     let largest = largest.fold(0.0, f64::max);
-    plan.limits.push(check::kept(&pace.feed_step, pace.feed_step.value, largest));
+    plan.limits
+        .push(check::kept(&pace.feed_step, pace.feed_step.value, largest));
     let apart = steps.windows(2).map(|w| match w {
         [a, b] => days_from(ground, b.at) - days_from(ground, a.at),
         _ => f64::INFINITY,
@@ -169,20 +174,33 @@ fn paced(ground: &Ground<'_>, mut plan: Plan, usual: f64, to: f64) -> Plan {
         plan.limits.push(kept);
     }
     mark_the_pace(&mut plan.limits);
-    let fasting = levels.get(1).map(|l| days_from(ground, l.0.at)).unwrap_or(end);
+    let fasting = levels
+        .get(1)
+        .map(|l| days_from(ground, l.0.at))
+        .unwrap_or(end);
     plan.steps = steps;
     tell(ground, &mut plan, usual, &tried);
     plan.cautions.push(words.feed_alkalinity.clone());
     if levels.first().is_some_and(|l| l.1 <= 0.0) && fasting > pace.days_without_feed.value {
         let days = short(pace.days_without_feed.value);
-        plan.cautions.push(fill(&words.feed_fast, &[("days", days)]));
+        plan.cautions
+            .push(fill(&words.feed_fast, &[("days", days)]));
     }
     if reached < to - 1e-9 {
         let share = short(100.0 * reached);
-        plan.notes.push(fill(&words.feed_not_full, &[("share", share)]));
+        plan.notes
+            .push(fill(&words.feed_not_full, &[("share", share)]));
     }
     limit_cautions(ground, &mut plan);
     plan
+}
+
+/// Whether the whole stays within the limits, from its first rise to some days past its last.
+fn holds(ground: &Ground<'_>, levels: &[(Step, f64)]) -> bool {
+    let steps: Vec<Step> = levels.iter().map(|l| l.0.clone()).collect();
+    let at = |s: Option<&Step>| s.map_or(0.0, |s| days_from(ground, s.at));
+    let (from, end) = (at(steps.get(1)), at(steps.last()) + WATCHED);
+    carries(ground, &steps, from, end)
 }
 
 /// Whether ammonia and nitrite are low at present: then nothing but lack of capacity keeps feed at none.
@@ -211,7 +229,10 @@ fn tell(ground: &Ground<'_>, plan: &mut Plan, usual: f64, tried: &super::made::T
         } else {
             fill(
                 &words.do_feed,
-                &[("feed", kilograms(units, kg)), ("share", short(100.0 * kg / usual))],
+                &[
+                    ("feed", kilograms(units, kg)),
+                    ("share", short(100.0 * kg / usual)),
+                ],
             )
         };
         for (id, part) in [("total-ammonia", Part::Ammonia), ("nitrite", Part::Nitrite)] {

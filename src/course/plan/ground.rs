@@ -1,9 +1,9 @@
 //! What plans are made from: the rule base, the site, the readings and how far they can be trusted.
 
-use super::value::{Refused, Trouble};
+use super::value::{Kind, Refused, Trouble};
 use super::words::{fill, short};
 use crate::course::projection::{
-    Begin, Chemistry, Exact, Farm, Gas, Manner, NewWater, Point, Readings, State, run,
+    Begin, Chemistry, Exact, Extreme, Farm, Gas, Manner, NewWater, Point, Readings, State, run,
 };
 use crate::diagnosis::Ranking;
 use crate::engine::Limits;
@@ -60,10 +60,12 @@ pub struct Ground<'k> {
 }
 
 /// One way things may go: how gas passes, and which bacteria there are.
-#[derive(Debug, Clone, Copy, PartialEq)]
-pub struct Way {
+#[derive(Debug, Clone)]
+pub struct Way<'k> {
     /// Gas.
     pub gas: Gas,
+    /// The farm as it must be with those bacteria.
+    pub farm: Farm<'k>,
     /// The water with those bacteria.
     pub state: State,
 }
@@ -82,7 +84,7 @@ impl<'k> Ground<'k> {
         let area = crate::course::projection::area(knowledge, site);
         let mut begin = Begin::new(knowledge, site, area, &readings)?;
         // A plan puts the temperature where it wants it, or leaves it; it doesn't guess the weather.
-        begin.farm.drift = 0.0;
+        begin.farm.drift = 0.0; // `farm_with` keeps it
         Ok(Self {
             knowledge,
             site,
@@ -170,12 +172,16 @@ impl<'k> Ground<'k> {
         let (words, limits) = (self.words(), self.pace());
         let name = |id: &str| {
             let vocabulary = &self.knowledge.vocabulary;
-            vocabulary.reading(id).map_or(id.to_owned(), |r| vocabulary[r].name.clone())
+            vocabulary
+                .reading(id)
+                .map_or(id.to_owned(), |r| vocabulary[r].name.clone())
         };
         for id in ids {
-            let Some(known) = self.readings.get(id) else { continue };
+            let Some(known) = self.readings.get(id) else {
+                continue;
+            };
             if self.readings.is_stale(id, known) {
-                let age = crate::assessment::span(self.now() - known.time);
+                let age = crate::course::span(self.now() - known.time);
                 return Ok(Some(Refused {
                     limit: "stale-reading".to_owned(),
                     reason: fill(&words.stale, &[("reading", name(id)), ("age", age)]),
@@ -204,32 +210,39 @@ impl<'k> Ground<'k> {
 
     /// The ways things may go that a plan has to keep its limits in: gas slow and at once, bacteria few and many. What a dose does before any
     /// gas moves shows in every way, at the dose itself.
-    pub fn ways(&self) -> Vec<Way> {
-        let (few, many) = match self.begin.capacity {
-            Some(c) => (
-                self.begin.with_bacteria(c.ammonia.low, c.nitrite.low),
-                self.begin.with_bacteria(c.ammonia.high, c.nitrite.high),
-            ),
-            None => (self.begin.state, self.begin.state),
-        };
-        let way = |gas, state| Way { gas, state };
+    pub fn ways(&self, kind: Kind) -> Vec<Way<'k>> {
+        let begin = &self.begin;
+        let few = begin.extreme(Extreme::Few, Extreme::Few);
+        let many = begin.extreme(Extreme::Many, Extreme::Many);
+        let way = |gas, state: State| self.way(kind, gas, &state);
+        // What breaks limits most often comes first: whoever tries stops at the first that does.
         let mut ways = vec![
+            way(Gas::Open, few),
             way(Gas::Usual, self.begin.state),
             way(Gas::Slow, few),
-            way(Gas::Open, few),
         ];
-        if self.begin.capacity.is_some() {
+        if begin.capacity.is_some() {
+            // The first step may do much and the second little: then nitrite is what comes.
+            let uneven = begin.extreme(Extreme::Many, Extreme::Few);
             ways.push(way(Gas::Slow, many));
-            ways.push(way(Gas::Open, many));
+            ways.push(way(Gas::Usual, uneven));
         }
         ways
+    }
+
+    /// One way, from a state.
+    pub fn way(&self, kind: Kind, gas: Gas, state: &State) -> Way<'k> {
+        Way {
+            gas,
+            farm: super::replay::farm(self, kind, state),
+            state: *state,
+        }
     }
 
     /// Runs one way.
     pub fn course(
         &self,
-        farm: &Farm<'_>,
-        way: &Way,
+        way: &Way<'_>,
         actions: &[crate::course::projection::Action],
         days: f64,
         exact: Exact,
@@ -239,7 +252,7 @@ impl<'k> Ground<'k> {
             exact,
             feed: self.begin.feed,
         };
-        run(farm, &way.state, actions, days, &manner).ok()
+        run(&way.farm, &way.state, actions, days, &manner).ok()
     }
 
     /// Equilibrium constants of the water now.
@@ -306,6 +319,8 @@ impl<'k> Ground<'k> {
     /// The name of a reading, for the middle of a sentence.
     pub fn name(&self, id: &str) -> String {
         let vocabulary = &self.knowledge.vocabulary;
-        vocabulary.reading(id).map_or(id.to_owned(), |r| vocabulary[r].name.clone())
+        vocabulary
+            .reading(id)
+            .map_or(id.to_owned(), |r| vocabulary[r].name.clone())
     }
 }

@@ -20,49 +20,80 @@ pub const KEPT_AWAY: f64 = 0.03;
 /// Steps as they were tried.
 #[derive(Debug, Clone)]
 pub struct Tried {
-    /// The courses, the likeliest first.
+    /// The courses, one a way.
     pub courses: Vec<Vec<Point>>,
-    /// Each rule's worst, and what doing nothing comes to.
+    /// Each rule's worst over the ways, and what doing nothing comes to.
     pub fared: Vec<(Fared, f64)>,
 }
 
-/// Runs steps every way and measures them.
-pub fn trial(
+/// What comes of trying steps.
+#[derive(Debug, Clone)]
+pub enum Outcome<'r, 'k> {
+    /// Every rule holds, every way.
+    Keeps(Tried),
+    /// A rule is broken one way; no further way was tried.
+    Breaks(&'r Rule<'k>, Fared),
+}
+
+/// Runs steps every way and measures them; `None` when a course can't be reckoned.
+pub fn trial<'r, 'k>(
     ground: &Ground<'_>,
     kind: Kind,
     steps: &[Step],
-    rules: &[Rule<'_>],
+    rules: &'r [Rule<'k>],
     days: f64,
-) -> Option<Tried> {
-    let farm = replay::farm(ground, kind);
+) -> Option<Outcome<'r, 'k>> {
     let actions = replay::actions(ground, steps);
-    let ways = ground.ways();
-    let every = |actions: &[_]| -> Option<Vec<Vec<Point>>> {
-        ways.iter().map(|w| ground.course(&farm, w, actions, days, PLANNING)).collect()
+    let anyway = rules.iter().any(|r| r.unless_anyway);
+    let mut tried = Tried {
+        courses: Vec::new(),
+        fared: Vec::new(),
     };
-    let courses = every(&actions)?;
-    let idle = if rules.iter().any(|r| r.unless_anyway) { every(&[])? } else { Vec::new() };
-    let fared = rules
-        .iter()
-        .map(|rule| {
-            let without = if rule.unless_anyway { rule.worst(&idle).reached } else { rule.bound };
-            (rule.worst(&courses), without)
-        })
-        .collect();
-    Some(Tried { courses, fared })
+    for way in ground.ways(kind) {
+        let course = ground.course(&way, &actions, days, PLANNING)?;
+        let idle = if anyway {
+            Some(ground.course(&way, &[], days, PLANNING)?)
+        } else {
+            None
+        };
+        let here: Vec<(Fared, f64)> = rules
+            .iter()
+            .map(|rule| {
+                let without = idle.as_ref().filter(|_| rule.unless_anyway);
+                (
+                    rule.of(&course),
+                    without.map_or(rule.bound, |i| rule.of(i).reached),
+                )
+            })
+            .collect();
+        let broken = rules
+            .iter()
+            .zip(&here)
+            .filter(|(rule, (fared, without))| rule.is_passed(fared.reached, *without, -KEPT_AWAY))
+            .min_by(|a, b| a.1.0.at.total_cmp(&b.1.0.at));
+        if let Some((rule, (fared, _))) = broken {
+            return Some(Outcome::Breaks(rule, *fared));
+        }
+        tried.fared = if tried.fared.is_empty() {
+            here
+        } else {
+            let pairs = rules.iter().zip(tried.fared.iter().zip(here));
+            pairs
+                .map(|(rule, (a, b))| {
+                    if rule.is_worse(b.0.reached, a.0.reached) {
+                        b
+                    } else {
+                        *a
+                    }
+                })
+                .collect()
+        };
+        tried.courses.push(course);
+    }
+    Some(Outcome::Keeps(tried))
 }
 
 impl Tried {
-    /// The first rule that is broken, with how it fared.
-    pub fn broken<'r, 'k>(&self, rules: &'r [Rule<'k>]) -> Option<(&'r Rule<'k>, Fared)> {
-        rules
-            .iter()
-            .zip(&self.fared)
-            .filter(|(rule, (fared, without))| rule.is_passed(fared.reached, *without, -KEPT_AWAY))
-            .map(|(rule, (fared, _))| (rule, *fared))
-            .min_by(|a, b| a.1.at.total_cmp(&b.1.at))
-    }
-
     /// The limits as the plan shows them.
     pub fn kept(&self, rules: &[Rule<'_>]) -> Vec<Kept> {
         rules
@@ -74,10 +105,18 @@ impl Tried {
 
     /// What is expected of a track at a moment (days): lowest and highest over the ways.
     pub fn expect(&self, id: &str, track: Track, days: f64) -> Option<Expect> {
-        let values: Vec<f64> = self.courses.iter().filter_map(|c| at(track, c, days)).collect();
+        let values: Vec<f64> = self
+            .courses
+            .iter()
+            .filter_map(|c| at(track, c, days))
+            .collect();
         let low = values.iter().copied().reduce(f64::min)?;
         let high = values.iter().copied().reduce(f64::max)?;
-        Some(Expect { id: id.to_owned(), low, high })
+        Some(Expect {
+            id: id.to_owned(),
+            low,
+            high,
+        })
     }
 }
 
@@ -104,7 +143,11 @@ pub fn broken(
     when: Option<i64>,
 ) -> Refused {
     let words = ground.words();
-    let text = if when.is_some() { &words.broken_at } else { &words.broken };
+    let text = if when.is_some() {
+        &words.broken_at
+    } else {
+        &words.broken
+    };
     Refused {
         limit: limit.id.clone(),
         reason: fill(
@@ -114,7 +157,10 @@ pub fn broken(
                 ("value", short(reached)),
                 ("bound", short(bound)),
                 ("unit", limit.unit.clone()),
-                ("when", when.map_or(String::new(), |w| clock_time(ground, w))),
+                (
+                    "when",
+                    when.map_or(String::new(), |w| clock_time(ground, w)),
+                ),
             ],
         ),
         instead: limit.instead.clone(),
@@ -138,7 +184,11 @@ pub fn amount(substance: &Dosable, pure_grams: f64, purity: f64) -> Amount {
     let share = (purity / 100.0).clamp(0.01, 1.0);
     let strength = substance.liquid.map_or(1.0, |(percent, _)| percent / 100.0);
     // A liquid's purity is its strength; 100 percent stands for "as it is usually sold".
-    let share = if substance.liquid.is_some() && purity >= 100.0 { strength } else { share };
+    let share = if substance.liquid.is_some() && purity >= 100.0 {
+        strength
+    } else {
+        share
+    };
     let grams = super::words::weighable(pure_grams.max(0.0) / share);
     Amount {
         substance: substance.id.clone(),
@@ -161,7 +211,11 @@ pub fn amount_words(ground: &Ground<'_>, amount: &Amount) -> String {
 /// Marks the limit that was used most as the one that set the pace.
 pub fn mark_the_pace(kept: &mut [Kept]) {
     let share = |k: &Kept| {
-        let (over, under) = if k.is_floor { (k.limit, k.reached) } else { (k.reached, k.limit) };
+        let (over, under) = if k.is_floor {
+            (k.limit, k.reached)
+        } else {
+            (k.reached, k.limit)
+        };
         if under > 1e-12 { over / under } else { 0.0 }
     };
     let best = kept
@@ -184,9 +238,16 @@ pub fn limit_cautions(ground: &Ground<'_>, plan: &mut Plan) {
         .map(|k| k.name.clone())
         .collect();
     if !unpublished.is_empty() {
-        plan.cautions.push(fill(&words.unpublished, &[("limits", unpublished.join(", "))]));
+        plan.cautions.push(fill(
+            &words.unpublished,
+            &[("limits", unpublished.join(", "))],
+        ));
     }
-    for k in plan.limits.iter().filter(|k| !k.contested.is_empty() && k.set_the_pace) {
+    for k in plan
+        .limits
+        .iter()
+        .filter(|k| !k.contested.is_empty() && k.set_the_pace)
+    {
         plan.cautions.push(fill(
             &words.contested,
             &[("limit", k.name.clone()), ("others", k.contested.clone())],
@@ -195,18 +256,22 @@ pub fn limit_cautions(ground: &Ground<'_>, plan: &mut Plan) {
     for k in plan.limits.iter().filter(|k| k.without.is_some()) {
         plan.cautions.push(fill(
             &words.anyway,
-            &[("limit", k.name.clone()), ("value", short(k.without.unwrap_or(0.0))), ("unit", k.unit.clone())],
+            &[
+                ("limit", k.name.clone()),
+                ("value", short(k.without.unwrap_or(0.0))),
+                ("unit", k.unit.clone()),
+            ],
         ));
     }
     for id in &ground.begin.assumed {
-        let used = match *id {
-            "temperature" | "ph" | "alkalinity" => true,
-            _ => false,
-        };
+        let used = matches!(*id, "temperature" | "ph" | "alkalinity");
         if used {
             plan.notes.push(fill(
                 &words.assumed,
-                &[("reading", ground.name(id)), ("value", ground.shown(id, assumed(ground, id)))],
+                &[
+                    ("reading", ground.name(id)),
+                    ("value", ground.shown(id, assumed(ground, id))),
+                ],
             ));
         }
     }

@@ -28,9 +28,7 @@ mod value;
 mod words;
 
 pub use ground::{Doubt, Ground, Way, doubts};
-pub use value::{
-    Amount, Expect, Kept, Kind, Plan, Refused, Step, Trouble, Warmth, Wish,
-};
+pub use value::{Amount, Expect, Kept, Kind, Plan, Refused, Step, Trouble, Warmth, Wish};
 
 /// Plans what is wished.
 ///

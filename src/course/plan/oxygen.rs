@@ -1,10 +1,10 @@
 //! Oxygen at once: what is asked for, what each source gives, how many minutes there are, and what to do in which order.
 
+use super::check;
 use super::ground::Ground;
 use super::made::limit_cautions;
 use super::value::{Expect, Kind, Plan, Step, Trouble, Wish};
 use super::words::{fill, grams, short};
-use super::check;
 use crate::course::projection::Part;
 use crate::knowledge::{LimitLevel, Side};
 use crate::water::feed::{self, OxygenFor};
@@ -17,7 +17,9 @@ use crate::water::respiration;
 pub fn plan(ground: &Ground<'_>, _wish: &Wish) -> Result<Plan, Trouble> {
     let words = ground.words();
     let mut plan = Plan::new(Kind::Oxygen);
-    let chem = ground.chemistry().ok_or_else(|| Trouble::Lacks(vec!["temperature".to_owned()]))?;
+    let chem = ground
+        .chemistry()
+        .ok_or_else(|| Trouble::Lacks(vec!["temperature".to_owned()]))?;
     let full = chem.saturation;
     let low = low_oxygen(ground);
     plan.from = ground
@@ -25,7 +27,10 @@ pub fn plan(ground: &Ground<'_>, _wish: &Wish) -> Result<Plan, Trouble> {
         .value("dissolved-oxygen")
         .map(|o| vec![("dissolved-oxygen".to_owned(), o)])
         .unwrap_or_default();
-    let to = ground.target("dissolved-oxygen", Side::Low).unwrap_or(0.7 * full).min(0.9 * full);
+    let to = ground
+        .target("dissolved-oxygen", Side::Low)
+        .unwrap_or(0.7 * full)
+        .min(0.9 * full);
     plan.to = vec![("dissolved-oxygen".to_owned(), to)];
     let now = ground.now();
     let pure = ground.site.equipment.pure_oxygen == Some(true);
@@ -40,14 +45,24 @@ pub fn plan(ground: &Ground<'_>, _wish: &Wish) -> Result<Plan, Trouble> {
     if pure {
         let mut bottle = step(2, &words.do_oxygen_pure);
         let limit = &ground.pace().total_gas_pressure;
-        bottle.stop_if.push(fill(&words.stop_oxygen_pure, &[("pressure", short(limit.value))]));
+        bottle.stop_if.push(fill(
+            &words.stop_oxygen_pure,
+            &[("pressure", short(limit.value))],
+        ));
         plan.steps.push(bottle);
-        plan.limits.push(check::kept(limit, limit.value, limit.value));
+        plan.limits
+            .push(check::kept(limit, limit.value, limit.value));
     }
     plan.steps.push(step(5, &words.do_oxygen_measure));
     let mut later = step(20, &words.do_oxygen_later);
-    later.expect.push(Expect { id: "dissolved-oxygen".to_owned(), low, high: full });
-    later.go_on_if.push(fill(&words.go_on_oxygen, &[("low", short(low))]));
+    later.expect.push(Expect {
+        id: "dissolved-oxygen".to_owned(),
+        low: low.min(full),
+        high: full,
+    });
+    later
+        .go_on_if
+        .push(fill(&words.go_on_oxygen, &[("low", short(low))]));
     plan.steps.push(later);
     plan.steps.push(step(120, &words.do_oxygen_hold));
     budget(ground, &mut plan, full, low);
@@ -70,7 +85,10 @@ fn budget(ground: &Ground<'_>, plan: &mut Plan, full: f64, low: f64) {
     let volume = ground.begin.farm.volume_l;
     let level = Part::Oxygen.of(&ground.begin.state);
     let (less, more) = feed::oxygen_per_feed(OxygenFor::WholeSystem);
-    let demand = ground.begin.usual_feed_kg.map(|kg| (1000.0 * less * kg / 24.0, 1000.0 * more * kg / 24.0));
+    let demand = ground
+        .begin
+        .usual_feed_kg
+        .map(|kg| (1000.0 * less * kg / 24.0, 1000.0 * more * kg / 24.0));
     if let Some((less, more)) = demand {
         plan.notes.push(fill(
             &words.oxygen_demand,
@@ -81,13 +99,18 @@ fn budget(ground: &Ground<'_>, plan: &mut Plan, full: f64, low: f64) {
     let use_each = respiration::oxygen_use(t, respiration::USUAL_FISH_G, true).ok();
     if let (Some(biomass), Some(each)) = (ground.site.biomass_kg, use_each) {
         let amount = grams(units, biomass * each / 1000.0);
-        plan.notes.push(fill(&words.oxygen_fish_demand, &[("amount", amount)]));
+        plan.notes
+            .push(fill(&words.oxygen_fish_demand, &[("amount", amount)]));
         if ground.readings.value("dissolved-oxygen").is_some()
             && let Ok(minutes) = respiration::minutes_until(level, low, biomass, volume, each)
         {
             plan.notes.push(fill(
                 &words.oxygen_minutes,
-                &[("minutes", short(minutes.floor())), ("now", short(level)), ("low", short(low))],
+                &[
+                    ("minutes", short(minutes.floor())),
+                    ("now", short(level)),
+                    ("low", short(low)),
+                ],
             ));
         }
     }
@@ -103,5 +126,8 @@ fn budget(ground: &Ground<'_>, plan: &mut Plan, full: f64, low: f64) {
         }
     }
     let once = 0.1 * volume * (full - level).max(0.0) / 1000.0;
-    plan.notes.push(fill(&words.oxygen_exchange, &[("amount", grams(units, once))]));
+    plan.notes.push(fill(
+        &words.oxygen_exchange,
+        &[("amount", grams(units, once))],
+    ));
 }

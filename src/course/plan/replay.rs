@@ -3,7 +3,7 @@
 
 use super::ground::Ground;
 use super::value::{Kind, Step};
-use crate::course::projection::{Action, Deed, Farm, Part};
+use crate::course::projection::{Action, Deed, Farm, Part, State};
 use crate::knowledge::Dosable;
 
 /// The numbers of the water that a gram of a substance moves, with how much it gives (mg; carbon mmol).
@@ -50,31 +50,35 @@ pub fn actions(ground: &Ground<'_>, steps: &[Step]) -> Vec<Action> {
             }
         }
         if let (Some(liters), Ok(makeup)) = (step.liters, ground.makeup()) {
-            put(at, Deed::Exchange((liters / volume).clamp(0.0, 1.0), makeup));
+            put(
+                at,
+                Deed::Exchange((liters / volume).clamp(0.0, 1.0), makeup),
+            );
         }
         if let (Some(kg), Some(usual)) = (step.feed_kg, ground.begin.usual_feed_kg) {
             put(at, Deed::Feed(kg / usual));
         }
         if let Some(warmth) = step.warmth {
             put(at, Deed::Heat(24.0 * warmth.per_hour * warmth.by.signum()));
-            put(at + warmth.by.abs() / warmth.per_hour / 24.0, Deed::Heat(0.0));
+            put(
+                at + warmth.by.abs() / warmth.per_hour / 24.0,
+                Deed::Heat(0.0),
+            );
         }
     }
     all.sort_by(|a, b| a.at.total_cmp(&b.at));
     all
 }
 
-/// The farm that a kind of plan is run on. Plans of feed say that alkalinity is kept up meanwhile, so they are run so;
-/// plans of base stand in place of the base that is dosed by routine.
-pub fn farm<'k>(ground: &Ground<'k>, kind: Kind) -> Farm<'k> {
-    let mut farm = ground.begin.farm.clone();
-    match kind {
-        Kind::Feed | Kind::StartUp => {
-            let keeps_up = crate::water::nitrification::ALKALINITY_WITH_CELLS * farm.load
-                - crate::water::nitrification::DENITRIFICATION_ALKALINITY * farm.plants;
-            farm.supply = farm.supply.max(keeps_up);
-        }
-        _ => {}
-    }
+/// The farm that a kind of plan is run on, with the bacteria of a state. The usual doses of base go on, as all plans say;
+/// plans of feed ask that alkalinity is kept up meanwhile.
+pub fn farm<'k>(ground: &Ground<'k>, kind: Kind, state: &State) -> Farm<'k> {
+    let mut farm = ground.begin.farm_with(state);
+    let rising = ground.begin.rising.unwrap_or(0.0);
+    farm.held = Some(if kind == Kind::Feed {
+        rising.max(0.0)
+    } else {
+        rising.min(0.0)
+    });
     farm
 }

@@ -2,13 +2,14 @@
 
 use super::check;
 use super::clock;
+use super::feed;
 use super::ground::{Ground, Way};
 use super::made::{PLANNING, amount, amount_words, days_from, limit_cautions, mark_the_pace};
 use super::value::{Expect, Kind, Plan, Refused, Step, Trouble, Wish};
 use super::words::{fill, short};
-use super::{feed, replay};
 use crate::course::projection::{Gas, Part};
 use crate::knowledge::{Dosable, Use};
+use crate::water::nitrification::ALKALINITY_WITH_CELLS;
 
 /// The longest start that is planned, days.
 const LONGEST: i64 = 70;
@@ -23,7 +24,13 @@ const DAY: i64 = 86_400;
 /// [`Trouble`].
 pub fn plan(ground: &Ground<'_>, wish: &Wish) -> Result<Plan, Trouble> {
     if wish.with_fish {
-        let mut plan = feed::plan(ground, &Wish { kind: Kind::Feed, ..wish.clone() })?;
+        let mut plan = feed::plan(
+            ground,
+            &Wish {
+                kind: Kind::Feed,
+                ..wish.clone()
+            },
+        )?;
         plan.kind = Kind::StartUp;
         plan.cautions.insert(0, ground.words().start_fish.clone());
         plan.cautions.push(ground.words().start_course.clone());
@@ -57,11 +64,27 @@ pub fn plan(ground: &Ground<'_>, wish: &Wish) -> Result<Plan, Trouble> {
     };
     plan.steps = steps;
     plan.add_up();
-    let highest = plan.steps.iter().flat_map(|s| &s.expect).filter(|e| e.id == "total-ammonia");
+    let highest = plan
+        .steps
+        .iter()
+        .flat_map(|s| &s.expect)
+        .filter(|e| e.id == "total-ammonia");
     let highest = highest.map(|e| e.high).fold(0.0, f64::max);
-    plan.limits.push(check::kept(&pace.cycling_ammonia, pace.cycling_ammonia.value, highest));
-    plan.limits.push(check::kept(&pace.cycling_dose, pace.cycling_dose.value, dose));
-    plan.limits.push(check::kept(&pace.first_dose, pace.first_dose.value, first_share(&plan.steps)));
+    plan.limits.push(check::kept(
+        &pace.cycling_ammonia,
+        pace.cycling_ammonia.value,
+        highest,
+    ));
+    plan.limits.push(check::kept(
+        &pace.cycling_dose,
+        pace.cycling_dose.value,
+        dose,
+    ));
+    plan.limits.push(check::kept(
+        &pace.first_dose,
+        pace.first_dose.value,
+        first_share(&plan.steps),
+    ));
     mark_the_pace(&mut plan.limits);
     let words = ground.words();
     plan.cautions.push(words.start_course.clone());
@@ -77,17 +100,20 @@ fn first_share(steps: &[Step]) -> f64 {
 }
 
 /// The water of a start with so many bacteria, as a share of what a dose a day asks for.
-fn water(ground: &Ground<'_>, seed: f64, dose: f64) -> Way {
-    Way { gas: Gas::Usual, state: ground.begin.with_bacteria(seed * dose, seed * dose) }
+fn water<'k>(ground: &Ground<'k>, seed: f64, dose: f64) -> Way<'k> {
+    let state = ground.begin.with_bacteria(seed * dose, seed * dose);
+    let mut way = ground.way(Kind::StartUp, Gas::Usual, &state);
+    way.farm.load = 0.0;
+    way.farm.plants = 0.0;
+    way.farm.held = None;
+    // What a dose takes when it is used up in about four days.
+    way.farm.supply = ALKALINITY_WITH_CELLS * dose / 4.0;
+    way
 }
 
 /// Doses whenever the likeliest course has used up the last one, until one is gone within a day.
 fn doses(ground: &Ground<'_>, wish: &Wish, substance: &Dosable, dose: f64) -> Option<Vec<Step>> {
-    let mut farm = replay::farm(ground, Kind::StartUp);
-    farm.load = 0.0;
-    farm.plants = 0.0;
-    farm.supply = 7.05 * dose / 4.0;
-    let volume = farm.volume_l;
+    let volume = ground.begin.farm.volume_l;
     let seed = &ground.knowledge.pacing.kinetics.seed;
     let mut ways = [
         water(ground, seed.value, dose),
@@ -102,35 +128,61 @@ fn doses(ground: &Ground<'_>, wish: &Wish, substance: &Dosable, dose: f64) -> Op
     let mut now = 0.0;
     let mut given = i64::MIN;
     for day in 0..LONGEST {
-        let at = if day == 0 { begin } else { clock::next(ground.site, begin + day * DAY) };
+        let at = if day == 0 {
+            begin
+        } else {
+            clock::next(ground.site, begin + day * DAY)
+        };
         let t = days_from(ground, at);
         for way in &mut ways {
-            way.state = ground.course(&farm, way, &[], (t - now).max(0.0), PLANNING)?.last()?.y;
+            way.state = ground
+                .course(way, &[], (t - now).max(0.0), PLANNING)?
+                .last()?
+                .y;
         }
         now = t;
-        let middle = ways.first()?.state;
+        let middle = ways.first().map(|w| w.state)?;
         let (tan, nitrite) = (Part::Ammonia.of(&middle), Part::Nitrite.of(&middle));
-        if !steps.is_empty() && tan < NEXT && nitrite < DONE && at - given <= DAY + DAY / 4 && day > 3 {
-            steps.push(Step { at, text: words.do_start_done.clone(), ..Step::default() });
+        if !steps.is_empty()
+            && tan < NEXT
+            && nitrite < DONE
+            && at - given <= DAY + DAY / 4
+            && day > 3
+        {
+            steps.push(Step {
+                at,
+                text: words.do_start_done.clone(),
+                ..Step::default()
+            });
             return Some(steps);
         }
         if tan > NEXT && !steps.is_empty() || tan + dose > ground.pace().cycling_ammonia.value {
             continue;
         }
         let whole = amount(substance, pure, wish.purity);
-        let levels = |ways: &[Way; 3]| -> (f64, f64) {
+        let levels = |ways: &[Way<'_>; 3]| -> (f64, f64) {
             let all = ways.iter().map(|w| Part::Ammonia.of(&w.state));
-            (all.clone().fold(f64::INFINITY, f64::min), all.fold(0.0, f64::max))
+            (
+                all.clone().fold(f64::INFINITY, f64::min),
+                all.fold(0.0, f64::max),
+            )
         };
-        let mut step = |at: i64, text: &str, a: super::value::Amount, ways: &[Way; 3]| {
+        let mut step = |at: i64, text: &str, a: super::value::Amount, ways: &[Way<'_>; 3]| {
             let (low, high) = levels(ways);
             steps.push(Step {
                 at,
                 text: fill(text, &[("amount", amount_words(ground, &a))]),
                 amounts: vec![a],
-                expect: vec![Expect { id: "total-ammonia".to_owned(), low, high: high.min(ground.pace().cycling_ammonia.value) }],
+                expect: vec![Expect {
+                    id: "total-ammonia".to_owned(),
+                    low,
+                    high: high.min(ground.pace().cycling_ammonia.value),
+                }],
                 go_on_if: vec![words.go_on_start.clone()],
-                stop_if: vec![fill(&words.stop_start, &[("most", short(ground.pace().cycling_ammonia.value))])],
+                stop_if: vec![fill(
+                    &words.stop_start,
+                    &[("most", short(ground.pace().cycling_ammonia.value))],
+                )],
                 ..Step::default()
             });
         };
@@ -145,7 +197,11 @@ fn doses(ground: &Ground<'_>, wish: &Wish, substance: &Dosable, dose: f64) -> Op
         };
         if given == i64::MIN {
             let rest = amount(substance, pure * (1.0 - share), wish.purity);
-            let first = amount(substance, (pure * share).min(rest.pure * share / (1.0 - share)), wish.purity);
+            let first = amount(
+                substance,
+                (pure * share).min(rest.pure * share / (1.0 - share)),
+                wish.purity,
+            );
             let rise = dose * share;
             let later = clock::next(ground.site, at + 2 * 3600);
             add(first.pure);

@@ -28,7 +28,11 @@ pub fn plan(ground: &Ground<'_>, wish: &Wish) -> Result<Plan, Trouble> {
         _ => return Err(Trouble::Usage(words.supplement_which.clone())),
     };
     let mut plan = Plan::new(Kind::Supplement);
-    let refused = ground.trust(if id == "iron" { &["iron", "ph"] } else { std::slice::from_ref(&id) })?;
+    let refused = ground.trust(if id == "iron" {
+        &["iron", "ph"]
+    } else {
+        std::slice::from_ref(&id)
+    })?;
     let have = ground.readings.value(id).unwrap_or(0.0);
     let want = wish
         .to
@@ -50,7 +54,19 @@ pub fn plan(ground: &Ground<'_>, wish: &Wish) -> Result<Plan, Trouble> {
     if let Some(refused) = chelate(ground, substance) {
         return Ok(plan.refuse(refused));
     }
-    Ok(paced(ground, wish, plan, &Aim { id, have, want, level, rise }, substance))
+    Ok(paced(
+        ground,
+        wish,
+        plan,
+        &Aim {
+            id,
+            have,
+            want,
+            level,
+            rise,
+        },
+        substance,
+    ))
 }
 
 struct Aim<'a> {
@@ -65,7 +81,9 @@ struct Aim<'a> {
 /// nothing unwanted.
 fn choose<'g>(ground: &'g Ground<'_>, wish: &Wish, id: &str) -> Result<&'g Dosable, Trouble> {
     let words = ground.words();
-    let fits = |s: &&Dosable| s.gives(id) > 0.0 && matches!(s.used_as, Use::Iron | Use::Nutrient | Use::Salt);
+    let fits = |s: &&Dosable| {
+        s.gives(id) > 0.0 && matches!(s.used_as, Use::Iron | Use::Nutrient | Use::Salt)
+    };
     if let Some(name) = &wish.substance {
         let found = named(ground, name)?;
         return if fits(&found) {
@@ -73,18 +91,29 @@ fn choose<'g>(ground: &'g Ground<'_>, wish: &Wish, id: &str) -> Result<&'g Dosab
         } else {
             Err(Trouble::Usage(fill(
                 &words.wrong_substance,
-                &[("substance", found.name.clone()), ("wanted", words.a_supplement.clone())],
+                &[
+                    ("substance", found.name.clone()),
+                    ("wanted", words.a_supplement.clone()),
+                ],
             )))
         };
     }
-    let mut all: Vec<&Dosable> = ground.knowledge.pacing.substances.iter().filter(fits).collect();
+    let mut all: Vec<&Dosable> = ground
+        .knowledge
+        .pacing
+        .substances
+        .iter()
+        .filter(fits)
+        .collect();
     let holds = |s: &Dosable| s.good_to_ph.is_none_or(|ph| ground.begin.ph <= ph);
     let shelf = ground.site.equipment.substances.as_deref().unwrap_or(&[]);
     all.sort_by_key(|s| {
         let salt = s.used_as == Use::Salt;
         (!holds(s), !shelf.iter().any(|n| s.is_called(n)), salt)
     });
-    all.first().copied().ok_or_else(|| Trouble::Lacks(vec!["--substance".to_owned()]))
+    all.first()
+        .copied()
+        .ok_or_else(|| Trouble::Lacks(vec!["--substance".to_owned()]))
 }
 
 /// A chelate that does not hold iron at this pH.
@@ -117,25 +146,49 @@ fn paced(
     if days as f64 > longest.value {
         return plan.refuse(broken(ground, longest, longest.value, days as f64, None));
     }
-    let slots = clock::slots(ground.site, ground.now(), days, DOSES_A_DAY, wait_seconds(ground));
+    let slots = clock::slots(
+        ground.site,
+        ground.now(),
+        days,
+        DOSES_A_DAY,
+        wait_seconds(ground),
+    );
     #[allow(clippy::cast_precision_loss)] // days
     let per_day = pure / days as f64;
     let doses: Vec<(i64, f64)> = slots
         .iter()
         .flatten()
         .copied()
-        .zip(shares(ground, &slots).into_iter().flatten().map(|s| s * per_day))
+        .zip(
+            shares(ground, &slots)
+                .into_iter()
+                .flatten()
+                .map(|s| s * per_day),
+        )
         .collect();
     let most = ground.pace().first_dose.value;
-    let amounts = weighed(substance, wish.purity, &doses, slots.first().map_or(0, Vec::len), most);
+    let amounts = weighed(
+        substance,
+        wish.purity,
+        &doses,
+        slots.first().map_or(0, Vec::len),
+        most,
+    );
     let mut level = aim.have;
     for ((at, _), amount) in doses.iter().zip(amounts).filter(|(_, a)| a.grams > 0.0) {
         level += gives * amount.pure;
         let off = ground.readings.resolution(aim.id, level);
-        let expect = Expect { id: aim.id.to_owned(), low: (level - off).max(0.0), high: level + off };
+        let expect = Expect {
+            id: aim.id.to_owned(),
+            low: (level - off).max(0.0),
+            high: level + off,
+        };
         plan.steps.push(Step {
             at: *at,
-            text: fill(&words.do_supplement, &[("amount", amount_words(ground, &amount))]),
+            text: fill(
+                &words.do_supplement,
+                &[("amount", amount_words(ground, &amount))],
+            ),
             go_on_if: vec![fill(
                 &words.go_on_supplement,
                 &[
@@ -151,12 +204,19 @@ fn paced(
         });
     }
     let within = |first: &Step| {
-        let day = plan.steps.iter().filter(|s| s.at >= first.at && s.at < first.at + 86_400);
-        day.flat_map(|s| &s.amounts).map(|a| gives * a.pure).sum::<f64>()
+        let day = plan
+            .steps
+            .iter()
+            .filter(|s| s.at >= first.at && s.at < first.at + 86_400);
+        day.flat_map(|s| &s.amounts)
+            .map(|a| gives * a.pure)
+            .sum::<f64>()
     };
     let fastest = plan.steps.iter().map(within).fold(0.0, f64::max);
-    plan.limits.push(check::kept(aim.rise, aim.rise.value, fastest));
-    plan.limits.push(check::kept(aim.level, aim.level.value, level));
+    plan.limits
+        .push(check::kept(aim.rise, aim.rise.value, fastest));
+    plan.limits
+        .push(check::kept(aim.level, aim.level.value, level));
     plan.limits.push(first_dose(ground, &plan.steps));
     mark_the_pace(&mut plan.limits);
     plan.add_up();

@@ -4,7 +4,7 @@ use super::base::wait_seconds;
 use super::check::{self, Measure, Rule, Track};
 use super::clock;
 use super::ground::Ground;
-use super::made::{KEPT_AWAY, days_from, limit_cautions, mark_the_pace, refusal, trial};
+use super::made::{KEPT_AWAY, Outcome, days_from, limit_cautions, mark_the_pace, refusal, trial};
 use super::value::{Kind, Plan, Refused, Step, Trouble, Warmth, Wish};
 use super::words::{degrees, fill, short, warmer};
 use crate::course::projection::Part;
@@ -29,14 +29,25 @@ pub fn plan(ground: &Ground<'_>, wish: &Wish) -> Result<Plan, Trouble> {
     let own = ground
         .target("temperature", Side::Low)
         .filter(|low| now < *low)
-        .or_else(|| ground.target("temperature", Side::High).filter(|high| now > *high));
-    let to = wish.to.or(own).ok_or_else(|| Trouble::Lacks(vec!["--to".to_owned()]))?;
+        .or_else(|| {
+            ground
+                .target("temperature", Side::High)
+                .filter(|high| now > *high)
+        });
+    let to = wish
+        .to
+        .or(own)
+        .ok_or_else(|| Trouble::Lacks(vec!["--to".to_owned()]))?;
     plan.from = vec![("temperature".to_owned(), now)];
     plan.to = vec![("temperature".to_owned(), to)];
     if !(0.0..=38.0).contains(&to) {
         return Err(Trouble::Usage(fill(
             &words.aim_out_of_range,
-            &[("value", short(to)), ("low", "0".into()), ("high", "38".into())],
+            &[
+                ("value", short(to)),
+                ("low", "0".into()),
+                ("high", "38".into()),
+            ],
         )));
     }
     if let Some(refused) = refused {
@@ -58,7 +69,8 @@ fn outside(ground: &Ground<'_>, to: f64) -> Option<Refused> {
     let (low, high) = (bound(Side::Low), bound(Side::High));
     let bad = low.is_some_and(|l| to < l) || high.is_some_and(|h| to > h);
     let words = ground.words();
-    let shown = |value: Option<f64>| value.map_or("-".to_owned(), |v| degrees(ground.site.units, v));
+    let shown =
+        |value: Option<f64>| value.map_or("-".to_owned(), |v| degrees(ground.site.units, v));
     bad.then(|| Refused {
         limit: "species-temperature".to_owned(),
         reason: fill(
@@ -77,12 +89,24 @@ fn paced(ground: &Ground<'_>, mut plan: Plan, now: f64, to: f64) -> Plan {
     let pace = ground.pace();
     let up = to > now;
     let (hour, day) = if up {
-        (&pace.temperature_rise_per_hour, &pace.temperature_rise_per_day)
+        (
+            &pace.temperature_rise_per_hour,
+            &pace.temperature_rise_per_day,
+        )
     } else {
-        (&pace.temperature_fall_per_hour, &pace.temperature_fall_per_day)
+        (
+            &pace.temperature_fall_per_hour,
+            &pace.temperature_fall_per_day,
+        )
     };
     let track = Track::Part(Part::Temperature);
-    let change = |h| if up { Measure::Rise(h) } else { Measure::Fall(h) };
+    let change = |h| {
+        if up {
+            Measure::Rise(h)
+        } else {
+            Measure::Fall(h)
+        }
+    };
     let rule = |limit, bound, track, measure| Rule {
         limit,
         bound,
@@ -96,13 +120,24 @@ fn paced(ground: &Ground<'_>, mut plan: Plan, now: f64, to: f64) -> Plan {
     ];
     if up {
         let limit = ground.un_ionized_limit();
-        rules.push(rule(&pace.un_ionized_ammonia, limit, Track::UnIonized, Measure::Most(0.0)));
+        rules.push(rule(
+            &pace.un_ionized_ammonia,
+            limit,
+            Track::UnIonized,
+            Measure::Most(0.0),
+        ));
     }
     let away = 1.0 - KEPT_AWAY - 0.005;
     let (per_hour, a_day) = (away * hour.value, away * day.value);
     let mut steps = Vec::new();
     let mut at_now = now;
-    let slots = clock::slots(ground.site, ground.now(), LONGEST, STEPS_A_DAY, wait_seconds(ground));
+    let slots = clock::slots(
+        ground.site,
+        ground.now(),
+        LONGEST,
+        STEPS_A_DAY,
+        wait_seconds(ground),
+    );
     for (index, times) in slots.iter().enumerate() {
         #[allow(clippy::cast_precision_loss)] // a handful
         let n = times.len() as f64;
@@ -116,12 +151,20 @@ fn paced(ground: &Ground<'_>, mut plan: Plan, now: f64, to: f64) -> Plan {
             let step = a_day * if first { quarter.min(1.0 / n) } else { 1.0 / n };
             // A single step is still made within the time to the next one.
             let step = step.min(left).min(per_hour * 8.0);
-            let step = if first { step.min(left * quarter.max(1.0 / n)) } else { step };
+            let step = if first {
+                step.min(left * quarter.max(1.0 / n))
+            } else {
+                step
+            };
             let by = step.copysign(to - at_now);
             at_now += by;
             steps.push(Step {
                 at: *at,
-                warmth: Some(Warmth { to: at_now, by, per_hour }),
+                warmth: Some(Warmth {
+                    to: at_now,
+                    by,
+                    per_hour,
+                }),
                 ..Step::default()
             });
         }
@@ -133,25 +176,30 @@ fn paced(ground: &Ground<'_>, mut plan: Plan, now: f64, to: f64) -> Plan {
     }
     let steps = untangled(steps);
     let end = steps.last().map_or(1.0, |s| days_from(ground, s.at)) + 1.0;
-    let Some(tried) = trial(ground, Kind::Temperature, &steps, &rules, end) else {
-        let limit = &pace.longest_plan;
-        return plan.refuse(Refused {
-            limit: limit.id.clone(),
-            reason: ground.words().too_long.clone(),
-            instead: limit.instead.clone(),
-        });
+    let tried = match trial(ground, Kind::Temperature, &steps, &rules, end) {
+        Some(Outcome::Keeps(tried)) => tried,
+        Some(Outcome::Breaks(rule, fared)) => {
+            let refused = refusal(ground, rule, fared);
+            return plan.refuse(refused);
+        }
+        None => {
+            let limit = &pace.longest_plan;
+            return plan.refuse(Refused {
+                limit: limit.id.clone(),
+                reason: ground.words().too_long.clone(),
+                instead: limit.instead.clone(),
+            });
+        }
     };
-    if let Some((rule, fared)) = tried.broken(&rules) {
-        let refused = refusal(ground, rule, fared);
-        return plan.refuse(refused);
-    }
     plan.limits = tried.kept(&rules);
     let quarter = &pace.first_dose;
-    plan.limits.push(check::kept(quarter, quarter.value, first_share(&steps)));
+    plan.limits
+        .push(check::kept(quarter, quarter.value, first_share(&steps)));
     mark_the_pace(&mut plan.limits);
     plan.steps = steps;
     tell(ground, &mut plan, &tried, up);
-    plan.cautions.push(ground.words().temperature_filter.clone());
+    plan.cautions
+        .push(ground.words().temperature_filter.clone());
     limit_cautions(ground, &mut plan);
     plan
 }
@@ -176,7 +224,11 @@ fn first_share(steps: &[Step]) -> f64 {
     let begin = steps.first().map_or(0, |s| s.at);
     let day: f64 = steps.iter().filter(|s| s.at < begin + 86_400).map(by).sum();
     let first = steps.first().map_or(0.0, by);
-    if (day - first).abs() < 1e-12 { 0.25 } else { first / day }
+    if (day - first).abs() < 1e-12 {
+        0.25
+    } else {
+        first / day
+    }
 }
 
 fn tell(ground: &Ground<'_>, plan: &mut Plan, tried: &super::made::Tried, up: bool) {
@@ -201,7 +253,8 @@ fn tell(ground: &Ground<'_>, plan: &mut Plan, tried: &super::made::Tried, up: bo
             low: warmth.to - resolution,
             high: warmth.to + resolution,
         });
-        step.expect.extend(tried.expect("un-ionized-ammonia", Track::UnIonized, t));
+        step.expect
+            .extend(tried.expect("un-ionized-ammonia", Track::UnIonized, t));
         step.go_on_if.push(fill(
             &words.go_on_temperature,
             &[
@@ -211,6 +264,9 @@ fn tell(ground: &Ground<'_>, plan: &mut Plan, tried: &super::made::Tried, up: bo
             ],
         ));
         let rate = ground.pace().temperature_rise_per_hour.value;
-        step.stop_if.push(fill(&words.stop_temperature, &[("rate", warmer(units, rate))]));
+        step.stop_if.push(fill(
+            &words.stop_temperature,
+            &[("rate", warmer(units, rate))],
+        ));
     }
 }

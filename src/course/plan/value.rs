@@ -42,7 +42,10 @@ impl Kind {
 
     /// The word of the command.
     pub fn word(self) -> &'static str {
-        Self::ALL.iter().find(|(_, k)| *k == self).map_or("", |(w, _)| w)
+        Self::ALL
+            .iter()
+            .find(|(_, k)| *k == self)
+            .map_or("", |(w, _)| w)
     }
 
     /// From the word of the command.
@@ -243,7 +246,11 @@ impl Plan {
     pub fn add_up(&mut self) {
         self.total.clear();
         for amount in self.steps.iter().flat_map(|s| &s.amounts) {
-            match self.total.iter_mut().find(|a| a.substance == amount.substance) {
+            match self
+                .total
+                .iter_mut()
+                .find(|a| a.substance == amount.substance)
+            {
                 Some(sum) => {
                     sum.grams += amount.grams;
                     sum.pure += amount.pure;
@@ -270,7 +277,10 @@ impl std::fmt::Display for Trouble {
             Self::Lacks(ids) => write!(
                 f,
                 "this plan needs {}; put it in the log or the site file, or give it with --given {}=VALUE",
-                ids.iter().map(|i| format!("`{i}`")).collect::<Vec<_>>().join(", "),
+                ids.iter()
+                    .map(|i| format!("`{i}`"))
+                    .collect::<Vec<_>>()
+                    .join(", "),
                 ids.first().map_or("ID", String::as_str)
             ),
             Self::Usage(text) => f.write_str(text),

@@ -4,9 +4,9 @@ use crate::site::Units;
 
 /// Puts values in the place of `{names}`.
 pub fn fill(text: &str, values: &[(&str, String)]) -> String {
-    values
-        .iter()
-        .fold(text.to_owned(), |t, (name, value)| t.replace(&format!("{{{name}}}"), value))
+    values.iter().fold(text.to_owned(), |t, (name, value)| {
+        t.replace(&format!("{{{name}}}"), value)
+    })
 }
 
 /// A number without needless digits: three that count.
@@ -97,6 +97,9 @@ mod tests {
         assert_eq!(weighable(247.9), 245.0);
         assert!(weighable(3.49) <= 3.49);
         assert_eq!(grams(Units::Us, 283.5), "284 g (10 oz)");
-        assert_eq!(fill("add {x} of {y}", &[("x", "2 g".into()), ("y", "it".into())]), "add 2 g of it");
+        assert_eq!(
+            fill("add {x} of {y}", &[("x", "2 g".into()), ("y", "it".into())]),
+            "add 2 g of it"
+        );
     }
 }

@@ -1,11 +1,11 @@
 //! When which limit is passed if nothing is done, as a range: the run that is kindest and the one that is harshest.
 
-use super::begin::Begin;
+use super::begin::{Begin, Extreme};
 use super::farm::Gas;
 use super::readings::Readings;
 use super::run::{Manner, ORDINARY, Point, run};
 use super::state::{Part, State};
-use crate::assessment::Projection;
+use crate::course::Projection;
 use crate::engine::Limits;
 use crate::history::memory::Memory;
 use crate::knowledge::{Knowledge, LimitLevel, Side};
@@ -57,12 +57,13 @@ pub fn area(knowledge: &Knowledge, site: &Site) -> Option<f64> {
 /// The runs that span what may come: bacteria as few and as many as may be, a change of temperature that stops soon or
 /// goes on.
 fn courses(begin: &Begin<'_>) -> Vec<Vec<Point>> {
+    let (few, many) = (Extreme::Few, Extreme::Many);
     let starts: Vec<State> = match begin.capacity {
-        Some(c) => vec![
-            begin.with_bacteria(c.ammonia.low, c.nitrite.low),
+        Some(_) => vec![
+            begin.extreme(few, few),
             begin.state,
-            begin.with_bacteria(c.ammonia.high, c.nitrite.high),
-            begin.with_bacteria(c.ammonia.high, c.nitrite.low),
+            begin.extreme(many, many),
+            begin.extreme(many, few),
         ],
         None => vec![begin.state],
     };
@@ -72,11 +73,15 @@ fn courses(begin: &Begin<'_>) -> Vec<Vec<Point>> {
         feed: begin.feed,
     };
     let mut courses = Vec::new();
-    let drifts: &[f64] = if begin.farm.drift == 0.0 { &[1.0] } else { &[0.4, 1.2] };
+    let drifts: &[f64] = if begin.farm.drift == 0.0 {
+        &[1.0]
+    } else {
+        &[0.4, 1.2]
+    };
     for factor in drifts {
-        let mut farm = begin.farm.clone();
-        farm.drift *= factor;
         for start in &starts {
+            let mut farm = begin.farm_with(start);
+            farm.drift *= factor;
             courses.extend(run(&farm, start, &[], AHEAD, &manner));
         }
     }
@@ -85,7 +90,11 @@ fn courses(begin: &Begin<'_>) -> Vec<Vec<Point>> {
 
 fn watches(knowledge: &Knowledge, limits: &Limits<'_>, begin: &Begin<'_>) -> Vec<Watch> {
     let words = &knowledge.vocabulary;
-    let limit = |id: &str, level, side| words.reading(id).and_then(|r| limits.species(r, level, side));
+    let limit = |id: &str, level, side| {
+        words
+            .reading(id)
+            .and_then(|r| limits.species(r, level, side))
+    };
     let known = |id: &str| !begin.assumed.contains(&id);
     let filter = begin.capacity.is_some();
     let carbonate = known("ph") && known("alkalinity") && known("temperature");
@@ -103,10 +112,7 @@ fn watches(knowledge: &Knowledge, limits: &Limits<'_>, begin: &Begin<'_>) -> Vec
         ];
         for (level, note) in levels {
             if let Some(top) = limit("un-ionized-ammonia", level, high) {
-                watch(
-                    say(note, top),
-                    Box::new(move |p| p.un_ionized - top),
-                );
+                watch(say(note, top), Box::new(move |p| p.un_ionized - top));
             }
         }
     }
@@ -116,11 +122,16 @@ fn watches(knowledge: &Knowledge, limits: &Limits<'_>, begin: &Begin<'_>) -> Vec
                 say(&text.ahead_chloride, ratio),
                 Box::new(move |p| {
                     let nitrite = Part::Nitrite.of(&p.y);
-                    if nitrite < NO_NITRITE { -1.0 } else { ratio * nitrite - Part::Chloride.of(&p.y) }
+                    if nitrite < NO_NITRITE {
+                        -1.0
+                    } else {
+                        ratio * nitrite - Part::Chloride.of(&p.y)
+                    }
                 }),
             );
         }
-    } else if filter && known("nitrite")
+    } else if filter
+        && known("nitrite")
         && let Some(top) = limit("nitrite", LimitLevel::Stress, high)
     {
         watch(
@@ -128,7 +139,8 @@ fn watches(knowledge: &Knowledge, limits: &Limits<'_>, begin: &Begin<'_>) -> Vec
             Box::new(move |p| Part::Nitrite.of(&p.y) - top),
         );
     }
-    if known("dissolved-oxygen") && known("temperature")
+    if known("dissolved-oxygen")
+        && known("temperature")
         && let Some(least) = limit("dissolved-oxygen", LimitLevel::Stress, low)
     {
         watch(
@@ -136,20 +148,19 @@ fn watches(knowledge: &Knowledge, limits: &Limits<'_>, begin: &Begin<'_>) -> Vec
             Box::new(move |p| least - Part::Oxygen.of(&p.y)),
         );
     }
-    if filter && known("alkalinity") && begin.supply_known {
+    if filter && known("alkalinity") && begin.rising.is_some() {
         let half = knowledge.pacing.kinetics.alkalinity_half.value;
         watch(
             say(&text.ahead_alkalinity, half),
             Box::new(move |p| half - Part::Alkalinity.of(&p.y)),
         );
     }
-    if filter && carbonate && begin.supply_known
+    if filter
+        && carbonate
+        && begin.rising.is_some()
         && let Some(least) = limit("ph", LimitLevel::Stress, low)
     {
-        watch(
-            say(&text.ahead_ph, least),
-            Box::new(move |p| least - p.ph),
-        );
+        watch(say(&text.ahead_ph, least), Box::new(move |p| least - p.ph));
     }
     if known("temperature") {
         if let Some(least) = limit("temperature", LimitLevel::Stress, low) {
@@ -174,7 +185,11 @@ fn when(watch: &Watch, course: &[Point]) -> Option<f64> {
         let [a, b] = pair else { return None };
         let (before, after) = ((watch.excess)(a), (watch.excess)(b));
         (after > 0.0).then(|| {
-            let share = if before < 0.0 { -before / (after - before) } else { 0.0 };
+            let share = if before < 0.0 {
+                -before / (after - before)
+            } else {
+                0.0
+            };
             a.t + share * (b.t - a.t)
         })
     })

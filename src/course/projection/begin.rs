@@ -11,12 +11,22 @@ use crate::site::Site;
 use crate::water::activity;
 use crate::water::carbonate::gas::OUTDOOR_PPM;
 use crate::water::carbonate::state::CACO3_PER_EQ;
+use crate::water::masses::{CACO3_PER_MEQ, O2};
 use crate::water::nitrification::{self, Basis};
 use crate::water::oxygen;
 
 /// Something that has to be known and is not: a key of the site file, or a reading.
 #[derive(Debug, Clone, PartialEq, Eq)]
 pub struct Lacks(pub Vec<String>);
+
+/// An end of what the log allows.
+#[derive(Debug, Clone, Copy, PartialEq, Eq)]
+pub enum Extreme {
+    /// As few bacteria as may be.
+    Few,
+    /// As many.
+    Many,
+}
 
 /// Where a projection begins.
 #[derive(Debug, Clone)]
@@ -33,8 +43,9 @@ pub struct Begin<'k> {
     pub feed: f64,
     /// Kilograms of a usual day's feed.
     pub usual_feed_kg: Option<f64>,
-    /// Whether the log tells how alkalinity moved, so that what comes in by routine is known.
-    pub supply_known: bool,
+    /// How alkalinity moves in the log, mg/L as CaCO3 a day. Where nothing tells it is taken to be held where it is, by
+    /// makeup water and the usual doses of base.
+    pub rising: Option<f64>,
     /// Readings that nothing tells and that were taken for granted.
     pub assumed: Vec<&'static str>,
 }
@@ -64,7 +75,9 @@ impl<'k> Begin<'k> {
         readings: &Readings<'_>,
     ) -> Result<Self, Lacks> {
         let kinetics = &knowledge.pacing.kinetics;
-        let volume_l = site.volume_l.ok_or_else(|| Lacks(vec!["volume_l".to_owned()]))?;
+        let volume_l = site
+            .volume_l
+            .ok_or_else(|| Lacks(vec!["volume_l".to_owned()]))?;
         let mut assumed = Vec::new();
         let mut take = |id: &'static str| {
             readings.value(id).unwrap_or_else(|| {
@@ -101,8 +114,9 @@ impl<'k> Begin<'k> {
         };
         let protein = site.feed_protein_percent.unwrap_or(kinetics.protein.value) / 100.0;
         let per_liter = |grams: f64| 1000.0 * grams / volume_l;
-        let load = usual_feed_kg
-            .map_or(0.0, |kg| per_liter(1000.0 * kg * protein * kinetics.ammonia_per_protein.value));
+        let load = usual_feed_kg.map_or(0.0, |kg| {
+            per_liter(1000.0 * kg * protein * kinetics.ammonia_per_protein.value)
+        });
 
         let phosphorus = readings.value("phosphorus").unwrap_or(0.0) / 30_974.0;
         let carbon = chem.carbon(ph, alkalinity, phosphorus);
@@ -115,7 +129,9 @@ impl<'k> Begin<'k> {
             oxygen_exchange: 24.0 * kinetics.oxygen_transfer.value,
             respiration: 0.0,
             carbon_exchange: 24.0 * kinetics.oxygen_transfer.value * kinetics.gas_ratio.value,
-            breath: 0.0,
+            above_air: 0.0,
+            freed: 0.0,
+            metabolism: 1.0,
             ceiling: area_m2.map(|a| per_liter(a * kinetics.film_per_area.value)),
             pressure,
             salinity,
@@ -123,6 +139,7 @@ impl<'k> Begin<'k> {
             phosphorus,
             air_carbon_dioxide: held,
             supply: 0.0,
+            held: None,
             drift: drift(readings),
         };
 
@@ -155,7 +172,10 @@ impl<'k> Begin<'k> {
             (Part::Oxygen, level),
             (Part::Chloride, chloride),
             (Part::Sodium, sodium),
-            (Part::UsedToPh, readings.middle("ph", 30 * DAY).unwrap_or(ph).min(9.0)),
+            (
+                Part::UsedToPh,
+                readings.middle("ph", 30 * DAY).unwrap_or(ph).min(9.0),
+            ),
         ] {
             part.set(&mut state, value);
         }
@@ -168,15 +188,8 @@ impl<'k> Begin<'k> {
             Part::AmmoniaOxidizers.set(&mut state, capacity.ammonia.middle);
             Part::NitriteOxidizers.set(&mut state, capacity.nitrite.middle);
         }
-        // Breathing and breath are what keeps oxygen and carbon dioxide where they are.
-        let n = nitrifying(&farm, &state, &chem, ph);
-        let filter = nitrification::oxygen(Basis::EnergyFirstStep) * n.ammonia.0
-            + nitrification::oxygen(Basis::EnergySecondStep) * n.nitrite.0;
-        let total = farm.oxygen_exchange * (chem.saturation - level);
-        farm.respiration = (total - filter).max(0.0) / metabolism(feed);
-        let (supply, supply_known) = supply(readings, &farm, &state, n.ammonia.0);
-        farm.supply = supply;
-        breathe(&mut farm, &state, feed, chem.carbon_dioxide(ph, carbon) - held, n.ammonia.0);
+        let rising = rising(readings);
+        calibrate(&mut farm, &state, feed, ph, rising.unwrap_or(0.0)).ok_or_else(lacks)?;
         Ok(Self {
             farm,
             state,
@@ -184,9 +197,44 @@ impl<'k> Begin<'k> {
             ph,
             feed,
             usual_feed_kg,
-            supply_known,
+            rising,
             assumed,
         })
+    }
+
+    /// The farm as it must be for the water to be as it is, with the bacteria of this state: what is measured to be steady
+    /// is steady however many there are.
+    pub fn farm_with(&self, state: &State) -> Farm<'k> {
+        let mut farm = self.farm.clone();
+        let rising = self.rising.unwrap_or(0.0);
+        if calibrate(&mut farm, state, self.feed, self.ph, rising).is_none() {
+            return self.farm.clone();
+        }
+        farm
+    }
+
+    /// The water with as few (or as many) bacteria as the log allows, and with the ammonia and nitrite that go with that:
+    /// a test that reads low hides a filter that does less.
+    pub fn extreme(&self, ammonia: Extreme, nitrite: Extreme) -> State {
+        let Some(c) = self.capacity else {
+            return self.state;
+        };
+        let pick = |span: super::Span, end| match end {
+            Extreme::Few => span.low,
+            Extreme::Many => span.high,
+        };
+        let mut state = self.with_bacteria(pick(c.ammonia, ammonia), pick(c.nitrite, nitrite));
+        for (part, level, end) in [
+            (Part::Ammonia, c.total_ammonia, ammonia),
+            (Part::Nitrite, c.nitrite_level, nitrite),
+        ] {
+            let value = match end {
+                Extreme::Few => level.high,
+                Extreme::Many => level.low,
+            };
+            part.set(&mut state, value);
+        }
+        state
     }
 
     /// The water with other bacteria.
@@ -198,37 +246,51 @@ impl<'k> Begin<'k> {
     }
 }
 
-/// Sets exchange and breath of carbon dioxide so that its present level, `above_air` (mmol/L), is where they hold it: the
-/// exchange that takes out what breathing (one for one with oxygen) and nitrification make, and the rest as breath.
-fn breathe(farm: &mut Farm<'_>, state: &State, feed: f64, above_air: f64, nitrified: f64) {
+/// Sets what keeps the water where it is: breathing and breath that hold oxygen and carbon dioxide, and the alkalinity that
+/// comes in (mg/L as CaCO3 a day) for it to rise by so much while the filter takes its part.
+fn calibrate(farm: &mut Farm<'_>, state: &State, feed: f64, ph: f64, rising: f64) -> Option<()> {
+    let chem = Chemistry::at(
+        Part::Temperature.of(state),
+        farm.ionic,
+        farm.salinity,
+        farm.pressure,
+    )?;
+    let n = nitrifying(farm, state, &chem, ph);
+    let filter = nitrification::oxygen(Basis::EnergyFirstStep) * n.ammonia.0
+        + nitrification::oxygen(Basis::EnergySecondStep) * n.nitrite.0;
+    let total = farm.oxygen_exchange * (chem.saturation - Part::Oxygen.of(state));
+    farm.respiration = (total - filter).max(0.0) / metabolism(feed);
+
     let nitrate = Part::Nitrate.of(state).max(0.0);
     let plants = farm.plants * nitrate / (farm.kinetics.plant_half.value + nitrate);
     let lost = farm.kinetics.denitrification.value * nitrate;
-    let freed = (nitrification::ALKALINITY_WITH_CELLS * nitrified
-        - nitrification::DENITRIFICATION_ALKALINITY * (plants + lost))
-        / crate::water::masses::CACO3_PER_MEQ;
-    let made = farm.respiration * metabolism(feed) / crate::water::masses::O2 + freed;
-    let by_oxygen = farm.oxygen_exchange * farm.kinetics.gas_ratio.value;
+    let net = nitrification::ALKALINITY_WITH_CELLS * n.ammonia.0
+        - nitrification::DENITRIFICATION_ALKALINITY * (plants + lost);
+    farm.supply = (rising + net).max(0.0);
+
+    // Exchange that takes out what breathing (one for one with oxygen) and nitrification make; the rest counts as breath.
+    let freed = net / CACO3_PER_MEQ;
+    let above_air = chem.carbon_dioxide(ph, Part::Carbon.of(state)) - farm.air_carbon_dioxide;
+    let made = farm.respiration * metabolism(feed) / O2 + freed;
     farm.carbon_exchange = if above_air > 0.2 * farm.air_carbon_dioxide && made > 0.0 {
         (made / above_air).clamp(EXCHANGE.0, EXCHANGE.1)
     } else {
-        by_oxygen
+        farm.oxygen_exchange * farm.kinetics.gas_ratio.value
     };
-    farm.breath = (farm.carbon_exchange * above_air - freed) / metabolism(feed);
+    farm.above_air = above_air;
+    farm.freed = freed;
+    farm.metabolism = metabolism(feed);
+    Some(())
 }
 
-/// Alkalinity that must have come in (mg/L as CaCO3 a day) for the log's to move as it did while the filter took its part.
-fn supply(readings: &Readings<'_>, farm: &Farm<'_>, state: &State, nitrified: f64) -> (f64, bool) {
-    let shift = readings.shift("alkalinity", 7 * DAY).filter(|s| s.span >= DAY / 2);
-    let Some(shift) = shift else { return (0.0, false) };
+/// How alkalinity moved in the log's last week, mg/L as CaCO3 a day; `None` where too little tells.
+fn rising(readings: &Readings<'_>) -> Option<f64> {
+    let shift = readings
+        .shift("alkalinity", 7 * DAY)
+        .filter(|s| s.span >= DAY / 2)?;
     #[allow(clippy::cast_precision_loss)] // windows are days
-    let rose = shift.change / (shift.span as f64 / 86_400.0);
-    let nitrate = Part::Nitrate.of(state).max(0.0);
-    let plants = farm.plants * nitrate / (farm.kinetics.plant_half.value + nitrate);
-    let back = nitrification::DENITRIFICATION_ALKALINITY
-        * (plants + farm.kinetics.denitrification.value * nitrate);
-    let taken = nitrification::ALKALINITY_WITH_CELLS * nitrified;
-    ((rose + taken - back).max(0.0), true)
+    let days = shift.span as f64 / 86_400.0;
+    Some(shift.change / days)
 }
 
 /// A change of temperature that is under way, C/day: what the last half day of the log shows, where it is more than the

@@ -37,15 +37,21 @@ pub struct Capacity {
     pub ammonia: Span,
     /// Nitrite oxidizers.
     pub nitrite: Span,
+    /// Total ammonia at present within the error of its test, mg/L as N: few bacteria go with the high end.
+    pub total_ammonia: Span,
+    /// Nitrite likewise.
+    pub nitrite_level: Span,
 }
 
 /// The days of the log that count as "at present".
 const WINDOW: i64 = 3 * DAY;
-/// Feed, protein and digestion are known to about so much.
-const LOAD_SHARE: f64 = 0.2;
 /// Without two readings nothing tells whether ammonia rises or falls: the turnover may be so much off.
-const UNSEEN_LOW: f64 = 0.3;
+const UNSEEN_LOW: f64 = 0.6;
 const UNSEEN_HIGH: f64 = 1.6;
+
+/// Where growth and decay balance bacteria work at about a fifth of what they could (decay over growth, Metcalf & Eddy);
+/// twice as many are the most that a feed keeps alive for long.
+const MOST_PER_LOAD: f64 = 10.0;
 
 /// A turnover (mg N/L/day) as low and as high as it may be.
 fn turnover(readings: &Readings<'_>, id: &str, made: Span) -> Span {
@@ -98,40 +104,62 @@ pub fn estimate(
     }
     let starved = farm.kinetics.starved_share.value;
     let made = farm.load * (starved + (1.0 - starved) * feed);
+    // What a feed gives is known to a fifth at best; but load and turnover stand or fall together, so that does not count.
     let made = Span {
-        low: made * (1.0 - LOAD_SHARE),
+        low: made,
         middle: made,
-        high: made * (1.0 + LOAD_SHARE),
+        high: made,
     };
-    let chem = Chemistry::at(Part::Temperature.of(state), farm.ionic, farm.salinity, farm.pressure)?;
+    let chem = Chemistry::at(
+        Part::Temperature.of(state),
+        farm.ionic,
+        farm.salinity,
+        farm.pressure,
+    )?;
     let share_at = |part: Part, value: f64, second: bool| {
         let mut there = *state;
         part.set(&mut there, value.max(0.0));
         let n = nitrifying(farm, &there, &chem, ph);
         if second { n.nitrite.1 } else { n.ammonia.1 }
     };
-    let shares = |part: Part, id: &str, second: bool| {
-        let level = readings.middle(id, DAY).unwrap_or(part.of(state));
-        let off = readings.resolution(id, level);
-        let small = (level - off).max(level / 4.0).max(off / 10.0);
-        let (a, b) = (share_at(part, small, second), share_at(part, level + off, second));
-        (a.min(b), share_at(part, level.max(small), second), a.max(b))
-    };
-    // What a clean wetted area can hold bounds what is believed, unless the log shows more at the least.
-    let bounded = |span: Span| match farm.ceiling {
-        Some(ceiling) => {
-            let top = ceiling.max(span.low);
-            Span {
-                low: span.low,
-                middle: span.middle.min(top),
-                high: span.high.min(top),
-            }
+    let level = |part: Part, id: &str| {
+        let middle = part.of(state);
+        let off = readings.resolution(id, middle);
+        Span {
+            low: (middle - off).max(middle / 4.0).max(off / 10.0),
+            middle: middle.max(off / 10.0),
+            high: middle + off,
         }
-        None => span,
+    };
+    let shares = |part: Part, level: Span, second: bool| {
+        let (a, b) = (
+            share_at(part, level.low, second),
+            share_at(part, level.high, second),
+        );
+        (a.min(b), share_at(part, level.middle, second), a.max(b))
+    };
+    let total_ammonia = level(Part::Ammonia, "total-ammonia");
+    let nitrite_level = level(Part::Nitrite, "nitrite");
+    // No more bacteria than this feed can keep alive, nor, unless the log shows more at the least, than the wetted area
+    // can hold.
+    let fed = MOST_PER_LOAD * farm.load;
+    let bounded = |span: Span| {
+        let low = span.low.min(fed);
+        let top = farm.ceiling.map_or(fed, |c| fed.min(c.max(low)));
+        Span {
+            low,
+            middle: span.middle.min(top),
+            high: span.high.min(top),
+        }
     };
     let first = turnover(readings, "total-ammonia", made);
-    let ammonia = bounded(bacteria(first, shares(Part::Ammonia, "total-ammonia", false)));
+    let ammonia = bounded(bacteria(first, shares(Part::Ammonia, total_ammonia, false)));
     let second = turnover(readings, "nitrite", first);
-    let nitrite = bounded(bacteria(second, shares(Part::Nitrite, "nitrite", true)));
-    Some(Capacity { ammonia, nitrite })
+    let nitrite = bounded(bacteria(second, shares(Part::Nitrite, nitrite_level, true)));
+    Some(Capacity {
+        ammonia,
+        nitrite,
+        total_ammonia,
+        nitrite_level,
+    })
 }

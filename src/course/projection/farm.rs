@@ -19,8 +19,12 @@ pub struct Farm<'k> {
     pub respiration: f64,
     /// Exchange of carbon dioxide with air, 1/day.
     pub carbon_exchange: f64,
-    /// Carbon dioxide that comes with the usual feed, mmol/L/day; what nitrification frees from bicarbonate apart.
-    pub breath: f64,
+    /// How far carbon dioxide stands above water in balance with air, mmol/L, at the present feed.
+    pub above_air: f64,
+    /// What nitrification frees of it from bicarbonate at present, mmol/L/day.
+    pub freed: f64,
+    /// Breathing at the present feed, as a share of that at the usual feed.
+    pub metabolism: f64,
     /// The most that the wetted area turns over at 20 C, mg N/L/day.
     pub ceiling: Option<f64>,
     /// Air pressure, kPa.
@@ -35,6 +39,9 @@ pub struct Farm<'k> {
     pub air_carbon_dioxide: f64,
     /// Alkalinity that comes in by itself or by routine, mg/L as CaCO3 a day: makeup water, shells, usual doses of base.
     pub supply: f64,
+    /// Alkalinity is held by usual doses of base, whatever the filter takes: it moves by so much a day (mg/L as CaCO3).
+    /// `None`: it goes where supply and filter take it.
+    pub held: Option<f64>,
     /// A change of temperature that is under way: C/day now, wearing off.
     pub drift: f64,
 }
@@ -44,7 +51,7 @@ pub struct Farm<'k> {
 pub enum Gas {
     /// Not at all: for minutes, no water stays so for days.
     Closed,
-    /// At a quarter of the usual pace.
+    /// More slowly than usual: calm air, covered tanks.
     Slow,
     /// At the pace that keeps the present carbon dioxide where it is.
     Usual,
@@ -54,20 +61,25 @@ pub enum Gas {
 
 /// How much faster than usual gas passes in the open case; enough to settle within the hour, and not stiff.
 const OPEN_PER_DAY: f64 = 72.0;
-const SLOW: f64 = 0.25;
+const SLOW: f64 = 0.6;
 
 impl Farm<'_> {
-    /// Exchange (1/day) and breath (mmol/L/day) of carbon dioxide: with more exchange, more breath keeps the same level.
+    /// Exchange (1/day) of carbon dioxide, and the breath (mmol/L/day, of the usual feed) that keeps it where it is.
     pub fn gas(&self, gas: Gas) -> (f64, f64) {
         let usual = self.carbon_exchange;
-        match gas {
-            Gas::Closed => (0.0, 0.0),
-            Gas::Slow => (usual * SLOW, self.breath * SLOW),
-            Gas::Usual => (usual, self.breath),
-            Gas::Open => {
-                let open = usual.max(OPEN_PER_DAY);
-                (open, self.breath * open / usual.max(1e-9))
+        let exchange = match gas {
+            Gas::Closed => return (0.0, 0.0),
+            // Never so slow that what nitrification frees alone would lift the level.
+            Gas::Slow if self.above_air > 1e-9 => {
+                usual.min((usual * SLOW).max(self.freed / self.above_air))
             }
-        }
+            Gas::Slow => usual * SLOW,
+            Gas::Usual => usual,
+            Gas::Open => usual.max(OPEN_PER_DAY),
+        };
+        (
+            exchange,
+            (exchange * self.above_air - self.freed) / self.metabolism.max(1e-9),
+        )
     }
 }

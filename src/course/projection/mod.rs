@@ -23,7 +23,7 @@ mod run;
 mod state;
 
 pub use ahead::{area, projections};
-pub use begin::{Begin, Lacks};
+pub use begin::{Begin, Extreme, Lacks};
 pub use capacity::{Capacity, Span};
 pub use dopri::{Exact, Stuck};
 pub use farm::{Farm, Gas};

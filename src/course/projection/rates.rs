@@ -74,7 +74,14 @@ pub fn nitrifying(farm: &Farm<'_>, y: &State, chem: &Chemistry, ph: f64) -> Nitr
 }
 
 /// The change of every number in a day.
-pub fn rates(farm: &Farm<'_>, y: &State, t: f64, chem: &Chemistry, ph: f64, drive: &Drive) -> State {
+pub fn rates(
+    farm: &Farm<'_>,
+    y: &State,
+    t: f64,
+    chem: &Chemistry,
+    ph: f64,
+    drive: &Drive,
+) -> State {
     let k = farm.kinetics;
     let n = nitrifying(farm, y, chem, ph);
     let (first, second) = (n.ammonia.0, n.nitrite.0);
@@ -98,14 +105,15 @@ pub fn rates(farm: &Farm<'_>, y: &State, t: f64, chem: &Chemistry, ph: f64, driv
     // Nitrification takes alkalinity; plants that take nitrate and denitrification give about half of it back.
     let taken = nitrification::ALKALINITY_WITH_CELLS * first;
     let back = nitrification::DENITRIFICATION_ALKALINITY * (plants + lost);
-    Part::Alkalinity.set(&mut d, back - taken + farm.supply);
+    let supply = farm.held.map_or(farm.supply, |by| by + taken - back);
+    Part::Alkalinity.set(&mut d, back - taken + supply);
 
     let metabolism = metabolism(drive.feed);
     let carbon_dioxide = chem.carbon_dioxide(ph, Part::Carbon.of(y));
-    let gas = drive.gas_exchange * (farm.air_carbon_dioxide - carbon_dioxide)
-        + drive.breath * metabolism;
+    let gas =
+        drive.gas_exchange * (farm.air_carbon_dioxide - carbon_dioxide) + drive.breath * metabolism;
     // What comes in by routine is counted as bicarbonate.
-    let carbon = gas + farm.supply / CACO3_PER_MEQ;
+    let carbon = gas + supply / CACO3_PER_MEQ;
     Part::Carbon.set(&mut d, carbon);
     Part::CarbonIn.set(&mut d, carbon);
 
@@ -115,10 +123,15 @@ pub fn rates(farm: &Farm<'_>, y: &State, t: f64, chem: &Chemistry, ph: f64, driv
         + farm.respiration * metabolism;
     // The last traces are not used up: breathing falls with them.
     let used = used * monod(oxygen, 0.1);
-    Part::Oxygen.set(&mut d, farm.oxygen_exchange * (chem.saturation - oxygen) - used);
+    Part::Oxygen.set(
+        &mut d,
+        farm.oxygen_exchange * (chem.saturation - oxygen) - used,
+    );
 
     let growth = |largest: f64, share: f64, there: f64| {
-        let room = farm.ceiling.map_or(1.0, |c| (1.0 - there / c.max(1e-9)).max(0.0));
+        let room = farm
+            .ceiling
+            .map_or(1.0, |c| (1.0 - there / c.max(1e-9)).max(0.0));
         let decay = k.decay.value * k.decay_theta.value.powf(Part::Temperature.of(y) - 20.0);
         there * (largest * share * room - decay)
     };

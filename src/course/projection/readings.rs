@@ -39,7 +39,8 @@ impl<'a> Readings<'a> {
     /// The same with values given by hand, which count as read now; in kept units, finite.
     #[must_use]
     pub fn with(mut self, given: impl IntoIterator<Item = (String, f64)>) -> Self {
-        self.given.extend(given.into_iter().filter(|(_, v)| v.is_finite()));
+        self.given
+            .extend(given.into_iter().filter(|(_, v)| v.is_finite()));
         self
     }
 
@@ -89,7 +90,9 @@ impl<'a> Readings<'a> {
     pub fn resolution(&self, id: &str, value: f64) -> f64 {
         self.vocabulary.reading(id).map_or(0.0, |r| {
             let reading = &self.vocabulary[r];
-            reading.resolution.max(reading.resolution_share * value.abs())
+            reading
+                .resolution
+                .max(reading.resolution_share * value.abs())
         })
     }
 

@@ -119,8 +119,11 @@ impl Chemistry {
                 return ph.clamp(3.0, 11.0);
             }
         }
-        state::ph(&self.carbonate, wanted, carbon, phosphorus)
-            .unwrap_or(if wanted > 0.0 { 11.0 } else { 3.0 })
+        state::ph(&self.carbonate, wanted, carbon, phosphorus).unwrap_or(if wanted > 0.0 {
+            11.0
+        } else {
+            3.0
+        })
     }
 
     /// Carbon (mmol/L) of this pH and alkalinity (mg/L as CaCO3); 0 where the two can't go together.
@@ -160,7 +163,10 @@ mod tests {
         let chem = Chemistry::at(22.0, 0.004, 0.0, 101.325);
         for ph in [5.2, 6.4, 7.0, 8.3, 9.4] {
             let back = chem.map(|c| c.ph(60.0, c.carbon(ph, 60.0, 0.0), 0.0, 7.0));
-            assert!(back.is_some_and(|b| (b - ph).abs() < 1e-6), "{ph}: {back:?}");
+            assert!(
+                back.is_some_and(|b| (b - ph).abs() < 1e-6),
+                "{ph}: {back:?}"
+            );
         }
     }
 

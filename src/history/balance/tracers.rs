@@ -36,7 +36,12 @@ pub(super) fn update(water: &Water<'_>, farm: &Farm, pending: &mut Pending) {
         put(pending, ids.tracer_fall_share, 0, tracer);
     }
     if water.just_read(ids.nitrate) {
-        put(pending, ids.nitrogen_unaccounted, 0, unaccounted(water, farm));
+        put(
+            pending,
+            ids.nitrogen_unaccounted,
+            0,
+            unaccounted(water, farm),
+        );
     }
     if water.just_read(ids.alkalinity) {
         put(

@@ -226,7 +226,10 @@ impl Series {
         let usual = self.usual(WINDOW, DAY / 2, DAYS)?;
         let (last, before) = (self.last()?.1, self.before_last()?.1);
         // A spread smaller than a twentieth of the level would make an outlier of ordinary wobble.
-        let spread = usual.spread.max(self.step(usual.middle)).max(0.05 * usual.middle.abs());
+        let spread = usual
+            .spread
+            .max(self.step(usual.middle))
+            .max(0.05 * usual.middle.abs());
         let far = |value: f64| (value - usual.middle).abs() > FAR * spread;
         Some(far(last) && !far(before))
     }

@@ -56,7 +56,11 @@ impl EventTrack {
         if self.times.len() == EVENTS_KEPT {
             self.times.pop_front();
         }
-        self.times.push_back(time);
+        // A person may tell later of something that happened before what the log ends with.
+        let at = self.times.partition_point(|t| *t < time);
+        if self.times.get(at) != Some(&time) {
+            self.times.insert(at, time);
+        }
     }
 
     /// Notes that the event surely has not happened since `from`.

@@ -124,9 +124,12 @@ impl Memory {
     }
 
     /// Whether the last value of a reading stands alone: far from what is usual here, not borne out by the value before
-    /// it, by any other reading of the time, or by anything seen. Such a value is to be read again before it is believed.
+    /// it, by any other reading of the time, or by anything seen or done. Such a value is to be read again before it is believed.
     pub fn is_doubtful(&self, id: ReadingId) -> bool {
-        self.doubtful.get(usize::from(id.0)).copied().unwrap_or(false)
+        self.doubtful
+            .get(usize::from(id.0))
+            .copied()
+            .unwrap_or(false)
     }
 
     /// Marks a value computed from a doubtful one.
@@ -196,9 +199,21 @@ impl Memory {
         self.doubt_lonely(row);
     }
 
+    /// Whether something out of the ordinary was noted in the days before: an event that this log does not note anyway.
+    fn something_happened(&self, now: i64) -> bool {
+        const RECENT: i64 = 5 * super::DAY;
+        const HABIT: i64 = 45 * super::DAY;
+        self.events.iter().any(|track| {
+            track.last(now).is_some_and(|time| now - time <= RECENT)
+                && track.days(now - HABIT, now - RECENT) == 0
+        })
+    }
+
     /// Looks for values of this row that stand alone.
     fn doubt_lonely(&mut self, row: &Row) {
-        let seen_something = row.signs.iter().any(|(_, seen)| *seen) || !row.odd.is_empty();
+        let seen_something = row.signs.iter().any(|(_, seen)| *seen)
+            || !row.odd.is_empty()
+            || self.something_happened(row.time);
         let mut outliers: Vec<(ReadingId, bool)> = Vec::new();
         for (id, _) in &row.values {
             let index = usize::from(id.0);
@@ -212,7 +227,8 @@ impl Memory {
                 None => self.doubt(*id, false),
             }
         }
-        let lonely = outliers.iter().filter(|(_, outlier)| *outlier).count() == 1 && !seen_something;
+        let lonely =
+            outliers.iter().filter(|(_, outlier)| *outlier).count() == 1 && !seen_something;
         for (id, outlier) in outliers {
             self.doubt(id, outlier && lonely);
         }

@@ -1,6 +1,7 @@
 //! Limits of pace, words of plans, rates and substances.
 
 use std::collections::BTreeMap;
+use std::collections::btree_map::Entry;
 
 use super::entry::{sources, within, words};
 use super::names::Names;
@@ -89,10 +90,11 @@ fn known_id(s: &mut Section<'_>, known: &[&str]) -> Option<String> {
 }
 
 fn put<T>(s: &Section<'_>, all: &mut BTreeMap<String, T>, id: String, entry: T) {
-    if all.contains_key(&id) {
-        twice(s, &id);
-    } else {
-        all.insert(id, entry);
+    match all.entry(id) {
+        Entry::Occupied(taken) => twice(s, taken.key()),
+        Entry::Vacant(free) => {
+            free.insert(entry);
+        }
     }
 }
 
@@ -190,13 +192,22 @@ pub(super) fn finish(mut parts: Parts, faults: &mut Vec<Fault>) -> Option<Pacing
             "add it; see knowledge/README.md",
         ));
     };
-    for id in PaceLimits::IDS.iter().filter(|id| !parts.limits.contains_key(**id)) {
+    for id in PaceLimits::IDS
+        .iter()
+        .filter(|id| !parts.limits.contains_key(**id))
+    {
         miss("pace limit", id);
     }
-    for id in PaceWords::IDS.iter().filter(|id| !parts.words.contains_key(**id)) {
+    for id in PaceWords::IDS
+        .iter()
+        .filter(|id| !parts.words.contains_key(**id))
+    {
         miss("text of plans", id);
     }
-    for id in Kinetics::IDS.iter().filter(|id| !parts.kinetics.contains_key(**id)) {
+    for id in Kinetics::IDS
+        .iter()
+        .filter(|id| !parts.kinetics.contains_key(**id))
+    {
         miss("rate", id);
     }
     Some(Pacing {

@@ -48,11 +48,7 @@ pub(super) fn read(root: &mut Section<'_>, names: &Names, made: &mut Made) {
     made.walk = rules.map(|r| WalkRules { groups, ..r });
 }
 
-fn signs(
-    table: &mut Section<'_>,
-    key: &str,
-    names: &Names,
-) -> Vec<crate::vocabulary::SignId> {
+fn signs(table: &mut Section<'_>, key: &str, names: &Names) -> Vec<crate::vocabulary::SignId> {
     let Some(node) = table.required(key) else {
         return Vec::new();
     };

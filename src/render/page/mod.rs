@@ -67,7 +67,9 @@ pub(super) fn first_lines(report: &Report<'_>) -> Vec<Block> {
     first::block(report, &mut block);
     if report.assessment.first_aid.is_empty() {
         // The heading, the first step, and what to look at before it.
-        let second = block.iter().position(|b| matches!(b, Block::Numbered(2, _)));
+        let second = block
+            .iter()
+            .position(|b| matches!(b, Block::Numbered(2, _)));
         block.truncate(second.unwrap_or(block.len()));
     }
     page.extend(block);
