@@ -208,3 +208,109 @@ fn carry_over(
     made.extend(late);
     New::write(path, &made)?.replace(path)
 }
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    /// A folder of its own with a file in it.
+    fn file(text: &str) -> io::Result<(tempfile::TempDir, PathBuf)> {
+        let folder = tempfile::tempdir()?;
+        let path = folder.path().join("log.csv");
+        fs::write(&path, text)?;
+        Ok((folder, path))
+    }
+
+    fn with(before: Option<&[u8]>, more: &str) -> Result<Vec<u8>, NotWritten> {
+        let mut made = before.unwrap_or_default().to_vec();
+        made.extend(more.bytes());
+        Ok(made)
+    }
+
+    fn append(path: &Path, text: &str) -> io::Result<()> {
+        OpenOptions::new()
+            .append(true)
+            .open(path)?
+            .write_all(text.as_bytes())
+    }
+
+    #[test]
+    fn what_another_program_writes_meanwhile_is_noticed() -> io::Result<()> {
+        let (_folder, path) = file("a\n")?;
+        let mut calls = 0;
+        let done = edit(&path, |before| {
+            calls += 1;
+            if calls == 1 {
+                let _ = append(&path, "b\n");
+            }
+            with(before, "c\n")
+        });
+        assert_eq!((done, calls), (Ok(()), 2));
+        assert_eq!(fs::read_to_string(&path)?, "a\nb\nc\n");
+        Ok(())
+    }
+
+    #[test]
+    fn what_comes_in_the_last_instant_is_carried_over() -> io::Result<()> {
+        let (_folder, path) = file("a\n")?;
+        let old = File::open(&path)?;
+        append(&path, "late\n")?;
+        fs::rename(&path, path.with_extension("old"))?;
+        fs::write(&path, "a\nc\n")?;
+        assert_eq!(carry_over(&path, old, 2, b"a\nc\n".to_vec()), Ok(()));
+        assert_eq!(fs::read_to_string(&path)?, "a\nc\nlate\n");
+        Ok(())
+    }
+
+    #[test]
+    fn who_never_stops_writing_is_told_of() -> io::Result<()> {
+        let (_folder, path) = file("a\n")?;
+        let done = edit(&path, |before| {
+            let _ = append(&path, "b\n");
+            with(before, "c\n")
+        });
+        assert!(matches!(done, Err(NotWritten::Failed(f)) if f.code == "keeps-changing"));
+        assert!(!fs::read_to_string(&path)?.contains('c'));
+        assert!(!neighbor(&path, "new").exists());
+        Ok(())
+    }
+
+    #[test]
+    fn a_refusal_leaves_the_file_and_no_litter() -> io::Result<()> {
+        let (folder, path) = file("a\n")?;
+        let done = edit(&path, |_| Err(Fault::whole("no", "no", "no").into()));
+        assert!(done.is_err());
+        assert_eq!(fs::read_to_string(&path)?, "a\n");
+        let names: Vec<String> = fs::read_dir(folder.path())?
+            .filter_map(|e| Some(e.ok()?.file_name().to_string_lossy().into_owned()))
+            .filter(|n| !n.contains("lock"))
+            .collect();
+        assert_eq!(names, ["log.csv"]);
+        Ok(())
+    }
+
+    #[cfg(unix)]
+    #[test]
+    fn rights_and_links_stay() -> io::Result<()> {
+        use std::os::unix::fs::{PermissionsExt, symlink};
+        let (folder, path) = file("a\n")?;
+        fs::set_permissions(&path, fs::Permissions::from_mode(0o640))?;
+        let link = folder.path().join("link.csv");
+        symlink(&path, &link)?;
+        assert_eq!(edit(&link, |before| with(before, "b\n")), Ok(()));
+        assert!(fs::symlink_metadata(&link)?.is_symlink());
+        assert_eq!(fs::metadata(&path)?.permissions().mode() & 0o777, 0o640);
+        assert_eq!(fs::read_to_string(&path)?, "a\nb\n");
+        Ok(())
+    }
+
+    #[test]
+    fn litter_of_a_crash_is_written_over() -> io::Result<()> {
+        let (_folder, path) = file("a\n")?;
+        fs::write(neighbor(&path, "new"), "half of someth")?;
+        assert_eq!(edit(&path, |before| with(before, "b\n")), Ok(()));
+        assert_eq!(fs::read_to_string(&path)?, "a\nb\n");
+        assert!(!neighbor(&path, "new").exists());
+        Ok(())
+    }
+}
