@@ -157,7 +157,7 @@ impl Week {
         let by = format!("by={}", PEOPLE[shift % 3]);
         let temperature = format!("temperature={}", TEMPERATURE[shift]);
         let mut words = vec!["record".to_owned(), temperature, by];
-        if shift % 3 == 0 {
+        if shift.is_multiple_of(3) {
             let (nitrite, ammonia) = MORNING[shift / 3];
             words.extend([
                 format!("nitrite={nitrite}"),

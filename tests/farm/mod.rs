@@ -1,5 +1,7 @@
 //! A farm in a folder of its own, with a clock that is set: what is typed there one after the other.
 
+#![allow(dead_code)]
+
 use std::path::PathBuf;
 use std::process::{Command, Output, Stdio};
 
