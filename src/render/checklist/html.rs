@@ -10,7 +10,7 @@ use crate::shift::{Item, Kind};
 /// Lines that fit in the two columns of the smaller of the two papers, head and foot taken off; and characters of a line.
 /// Found by printing in a wide font: a narrower one leaves a little room. Where the reckoning is wrong nothing is lost: the
 /// list runs on to a second page.
-const LINES: usize = 2 * 54;
+const LINES: usize = 2 * 58;
 const WIDE: usize = 50;
 
 /// The page.
