@@ -3,39 +3,23 @@
 
 #![allow(clippy::unwrap_used, clippy::expect_used, clippy::panic)]
 
-use std::path::Path;
+mod common;
 
-use gillside::engine::{Degree, Engine, Limits, prove};
-use gillside::history::log::Input;
-use gillside::knowledge::{self, FindingId};
-use gillside::site::{self, Known};
+use common::{engine, folders, read_log, read_site, rule_base};
+use gillside::engine::{Degree, Limits, prove};
+use gillside::knowledge::FindingId;
 
 #[test]
 fn only_what_changed_is_enough() {
-    let knowledge = knowledge::shipped().unwrap();
-    let species: Vec<String> = knowledge.species.iter().map(|s| s.id.clone()).collect();
-    let media: Vec<String> = knowledge.media.iter().map(|s| s.id.clone()).collect();
-    let known = Known {
-        vocabulary: &knowledge.vocabulary,
-        species: &species,
-        media: &media,
-    };
-    let root = Path::new(env!("CARGO_MANIFEST_DIR")).join("tests");
-    let mut folders: Vec<_> = std::fs::read_dir(root.join("cases/open"))
-        .unwrap()
-        .map(|e| e.unwrap().path())
-        .collect();
-    folders.sort();
-    folders.extend(["farm-03", "farm-07", "farm-20"].map(|f| root.join("healthy").join(f)));
+    let knowledge = rule_base();
+    let healthy = folders("healthy").into_iter().step_by(9);
+    let folders: Vec<_> = folders("cases/open").into_iter().chain(healthy).collect();
     let mut compared = 0;
     for folder in folders {
-        let (site, _) = site::load(&folder.join("site.toml"), &known);
-        let input = Input::named(folder.join("log.csv").to_str().unwrap());
-        let log =
-            gillside::history::log::read(vec![input], &knowledge.vocabulary, &site, None).unwrap();
+        let site = read_site(&knowledge, &folder);
+        let log = read_log(&knowledge, &folder, &site);
         let limits = Limits::new(&knowledge, &site);
-        let mut engine = Engine::new(&knowledge, &site);
-        engine.tell(gillside::history::memory::Memory::keeps_events);
+        let mut engine = engine(&knowledge, &site, &log);
         let every = (log.rows.len() / 12).max(1);
         for (at, row) in log.rows.iter().enumerate() {
             engine.observe(row);

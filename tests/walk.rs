@@ -2,21 +2,19 @@
 
 #![allow(clippy::unwrap_used, clippy::expect_used, clippy::panic)]
 
-use std::path::{Path, PathBuf};
+mod common;
+
+use std::path::PathBuf;
 use std::time::{Duration, Instant};
 
+use common::{folders, read_site, rule_base};
 use gillside::assessment::Assessor;
 use gillside::diagnosis::Occasion;
 use gillside::engine::Engine;
 use gillside::fault::Source;
 use gillside::history::answers;
-use gillside::knowledge::{self, Knowledge};
-use gillside::site::{self, Known, Site};
+use gillside::knowledge::Knowledge;
 use gillside::walk::{Attendant, Stop, Walk, kept};
-
-fn rule_base() -> Knowledge {
-    knowledge::load(&knowledge::embedded(), &[]).unwrap_or_else(|f| panic!("{f:?}"))
-}
 
 struct Case {
     id: String,
@@ -39,15 +37,7 @@ fn texts(table: &toml::Table, key: &str) -> Vec<String> {
 }
 
 fn cases(half: &str) -> Vec<Case> {
-    let root = Path::new(env!("CARGO_MANIFEST_DIR"))
-        .join("tests/cases")
-        .join(half);
-    let mut folders: Vec<PathBuf> = std::fs::read_dir(root)
-        .unwrap()
-        .map(|e| e.unwrap().path())
-        .collect();
-    folders.sort();
-    folders
+    folders(&format!("cases/{half}"))
         .into_iter()
         .map(|folder| {
             let table: toml::Table = std::fs::read_to_string(folder.join("case.toml"))
@@ -67,19 +57,6 @@ fn cases(half: &str) -> Vec<Case> {
             }
         })
         .collect()
-}
-
-fn read_site(knowledge: &Knowledge, folder: &Path) -> Site {
-    let species: Vec<String> = knowledge.species.iter().map(|s| s.id.clone()).collect();
-    let media: Vec<String> = knowledge.media.iter().map(|s| s.id.clone()).collect();
-    let known = Known {
-        vocabulary: &knowledge.vocabulary,
-        species: &species,
-        media: &media,
-    };
-    let (site, faults) = site::load(&folder.join("site.toml"), &known);
-    assert!(faults.is_empty(), "{}: {faults:?}", folder.display());
-    site
 }
 
 /// What came of one walk.

@@ -3,9 +3,7 @@
 use crate::course::plan::Ground;
 use crate::course::projection::{Action, Deed, Gas, ORDINARY, Part, Point};
 use crate::knowledge::{LimitLevel, Side};
-use crate::site::Crop;
 use crate::water::biofilter::{self, Conditions};
-use crate::water::plants::{Growing, feed_rate_ratio};
 use crate::water::{feed, oxygen, respiration};
 
 /// One figure: how long, or how much.
@@ -292,16 +290,4 @@ fn feed_per_area(ground: &Ground<'_>) -> Standing {
         ],
         |[kg, area]| Some((1000.0 * kg / area, 1000.0 * kg / area)),
     )
-}
-
-/// The usual range of feed for each square meter of plants (g/m2/day) by what grows.
-pub fn usual_feed_per_area(crops: &[Crop]) -> (f64, f64) {
-    let fruiting = crops.contains(&Crop::Fruiting);
-    let (low, _) = feed_rate_ratio(if fruiting {
-        Growing::FruitingFao
-    } else {
-        Growing::LeafyFao
-    });
-    let (_, high) = feed_rate_ratio(Growing::RaftUvi);
-    (low, high)
 }

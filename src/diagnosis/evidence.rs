@@ -177,3 +177,52 @@ pub fn log_likelihood((present, absent): (f64, f64), shows: f64) -> f64 {
     }
     sum
 }
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+    use crate::knowledge::FindingId;
+
+    fn item(at: u16, usual: bool, expected: f64) -> Item {
+        Item {
+            evidence: Evidence::Finding(FindingId(at)),
+            background: if usual { 0.9 } else { 0.05 },
+            group: 0,
+            alarming: false,
+            usual,
+            expected,
+            causes: Vec::new(),
+        }
+    }
+
+    fn weights(items: Vec<Item>, degrees: &[Degree]) -> Vec<(f64, f64)> {
+        let table = Table {
+            items,
+            by_cause: Vec::new(),
+            groups: 1,
+        };
+        table.weights(degrees)
+    }
+
+    #[test]
+    fn what_is_raised_and_what_is_not_low_share_one_weight() {
+        let items = vec![item(0, false, 0.9), item(1, true, 0.9)];
+        let half = 1.0 / 2.0_f64.sqrt();
+        let both = weights(items, &[Degree::TRUE, Degree::FALSE]);
+        assert_eq!(both, [(half, 0.0), (0.0, half)]);
+    }
+
+    #[test]
+    fn what_hardly_ever_shows_does_not_dilute_an_absence() {
+        let items = vec![item(0, false, 0.9), item(1, false, 0.02)];
+        let both = weights(items, &[Degree::FALSE, Degree::FALSE]);
+        assert_eq!(both[0], (0.0, 1.0));
+    }
+
+    #[test]
+    fn what_is_unknown_weighs_nothing() {
+        let items = vec![item(0, false, 0.9), item(1, true, 0.9)];
+        let both = weights(items, &[Degree::UNKNOWN, Degree::UNKNOWN]);
+        assert_eq!(both, [(0.0, 0.0), (0.0, 0.0)]);
+    }
+}

@@ -50,9 +50,8 @@ impl Ranking {
 
 /// Sets less likely than this share of the best one are dropped from the list (not from the sums).
 const KEPT: f64 = 1e-4;
-/// A pair this many natural-log units below the best single or pair can't matter: e^-18 is 1.5e-8, and there are fewer
-/// than 3000 pairs, so all that is left out together stays below 1e-4 of the best and, measured, below 1e-6 of any
-/// probability.
+/// A pair this many natural-log units below the best set so far is left out: e^-22 is 3e-10, and with fewer than 3000
+/// pairs all that is left out together stays below a millionth (a property test holds it to that).
 const NEGLIGIBLE: f64 = 22.0;
 /// An alarming item that a set shows less often than this is unexplained.
 pub const EXPLAINED: f64 = 0.15;
@@ -91,8 +90,6 @@ pub(super) fn rank(
     let mut best = singles.iter().copied().fold(0.0, f64::max);
     for a in 0..count {
         for b in a + 1..count {
-            // Explaining together gains at most what either alone leaves unexplained, so the sum of the two single
-            // scores less what both explain bounds nothing from above; the pair itself is cheap, so it is always scored.
             let score = scorer.pair(a, b, singles[a], singles[b]);
             if score > best - NEGLIGIBLE {
                 best = best.max(score);

@@ -182,10 +182,8 @@ impl<'k> Books<'_, 'k> {
         part.map_or_else(|| (String::new(), None), |p| self.describe(p))
     }
 
-    /// Alarming findings that the likeliest set with this cause hardly shows.
+    /// Alarming findings that this cause by itself hardly shows.
     pub fn unexplained(&self, cause: CauseId) -> Vec<String> {
-        let alone = [cause];
-        let set: &[CauseId] = &alone;
         self.table
             .items
             .iter()
@@ -194,7 +192,7 @@ impl<'k> Books<'_, 'k> {
                 let seen = item
                     .causes
                     .iter()
-                    .filter(|(c, _)| set.contains(c))
+                    .filter(|(c, _)| *c == cause)
                     .map(|(_, s)| *s);
                 item.alarming && degree.lo >= 0.5 && shows(item.background, seen) < EXPLAINED
             })

@@ -124,3 +124,54 @@ pub(super) fn any_of(ranking: &Ranking, causes: &[CauseId]) -> f64 {
         .map(|set| set.probability)
         .sum()
 }
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+    use crate::diagnosis::Scored;
+    use crate::site::Site;
+
+    /// The verdict when the first `count` causes of an urgency are each so likely, alone, and nothing has been read.
+    fn with(urgency: Urgency, count: usize, each: f64) -> Option<Verdict> {
+        let knowledge = crate::knowledge::shipped().ok()?;
+        let engine = Engine::new(&knowledge, &Site::default());
+        let chosen: Vec<CauseId> = (0..knowledge.causes.len())
+            .filter_map(|i| u16::try_from(i).ok().map(CauseId))
+            .filter(|c| knowledge[*c].urgency == urgency)
+            .take(count)
+            .collect();
+        let mut causes = vec![0.0; knowledge.causes.len()];
+        for cause in &chosen {
+            *causes.get_mut(cause.index())? = each;
+        }
+        let ranking = Ranking {
+            causes,
+            nothing: 1.0 - each * f64::from(u32::try_from(chosen.len()).ok()?),
+            sets: chosen
+                .into_iter()
+                .map(|cause| Scored {
+                    causes: vec![cause],
+                    probability: each,
+                })
+                .collect(),
+            weights: Vec::new(),
+        };
+        let decision = decide(&knowledge, &engine, &ranking, knowledge.scales.watch, false);
+        Some(decision.verdict)
+    }
+
+    #[test]
+    fn many_unlikely_causes_are_no_reason_to_act_unless_they_kill_in_minutes() {
+        assert_eq!(with(Urgency::Hours, 5, 0.04), Some(Verdict::Watch));
+        assert_eq!(with(Urgency::Minutes, 5, 0.04), Some(Verdict::ActNow));
+    }
+
+    #[test]
+    fn one_likely_cause_decides_by_its_urgency() {
+        assert_eq!(with(Urgency::Minutes, 1, 0.3), Some(Verdict::ActNow));
+        assert_eq!(with(Urgency::Hours, 1, 0.3), Some(Verdict::ActToday));
+        assert_eq!(with(Urgency::Days, 1, 0.3), Some(Verdict::Watch));
+        assert_eq!(with(Urgency::Days, 1, 0.6), Some(Verdict::ActToday));
+        assert_eq!(with(Urgency::Weeks, 1, 0.05), Some(Verdict::Steady));
+    }
+}

@@ -6,10 +6,10 @@ use std::collections::BinaryHeap;
 
 use super::compile::{Node, NodeId, resolve};
 use super::{Degree, Judged, Limits, Program};
-use crate::history::balance::Balance;
+use crate::history::balance::{Balance, Known};
 use crate::history::log::Row;
 use crate::history::memory::Memory;
-use crate::knowledge::{CauseId, Evidence, FindingId, Knowledge, Test};
+use crate::knowledge::{CauseId, Evidence, FindingId, Knowledge, LimitLevel, Side, Test};
 use crate::site::Site;
 use crate::vocabulary::{ReadingId, Vocabulary};
 
@@ -26,7 +26,17 @@ fn balance(knowledge: &Knowledge, site: &Site) -> Balance {
         .filter(|s| site.species.contains(&s.id))
         .filter_map(|s| s.oxygen_use)
         .reduce(f64::max);
-    Balance::new(&knowledge.vocabulary, site, area, oxygen_use)
+    let limits = Limits::new(knowledge, site);
+    let short = knowledge
+        .vocabulary
+        .reading("dissolved-oxygen")
+        .and_then(|id| limits.species(id, LimitLevel::Stress, Side::Low));
+    let known = Known {
+        area_m2: area,
+        oxygen_use,
+        short_of_oxygen: short,
+    };
+    Balance::new(&knowledge.vocabulary, site, &known)
 }
 
 fn inputs(vocabulary: &Vocabulary) -> Vec<(ReadingId, Vec<ReadingId>)> {

@@ -192,14 +192,6 @@ impl Incident {
     pub fn is_open(&self) -> bool {
         self.closed.is_none()
     }
-
-    /// The next step of the paced correction that is not done.
-    pub fn next_planned(&self) -> Option<&PlanStep> {
-        self.plan
-            .iter()
-            .filter(|p| p.done.is_none())
-            .min_by_key(|p| p.at)
-    }
 }
 
 impl Followed {

@@ -4,9 +4,6 @@
 use super::{Evidence, Knowledge, Test};
 use crate::fault::{Fault, Place};
 
-/// One thing the check found.
-pub type Finding = Fault;
-
 /// Checks the whole rule base; an empty list is a clean one.
 pub fn check(knowledge: &Knowledge) -> Vec<Fault> {
     let mut faults = Vec::new();

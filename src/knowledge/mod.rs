@@ -14,7 +14,7 @@ mod schema;
 mod sourced;
 mod test;
 
-pub use check::{Finding as CheckFinding, check};
+pub use check::check;
 pub use ids::{CauseId, FindingId, StepId};
 pub use load::load;
 pub use origin::{embedded, embedded_text, folder, shipped};

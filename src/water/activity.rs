@@ -2,6 +2,10 @@
 
 use super::range::{OutOfRange, Range};
 
+/// uS/cm of each mg/L nitrate-N with its counter-ion, near 25 C: nitrate 71.4 S cm2/mol (CRC Handbook; from memory) and
+/// about as much for potassium or calcium beside it.
+pub const CONDUCTIVITY_OF_NITRATE: f64 = 9.0;
+
 /// Kelvin at 0 C.
 pub const ZERO_CELSIUS: f64 = 273.15;
 

@@ -23,6 +23,7 @@
 //! | [`exchange`] | water exchange and mixing |
 //! | [`respiration`] | oxygen that fish use, and minutes until it runs out |
 //! | [`calculations`] | all of that by name, for `gillside water` and the reference checks |
+//! | [`usual`] | what a farm is taken to be where it does not say |
 //! | [`units`] | the units a number may be given in |
 //! | [`masses`], [`range`], [`roots`] | molar masses; ranges and their error; one root finder |
 
@@ -48,5 +49,6 @@ pub mod respiration;
 pub mod roots;
 pub mod sulfide;
 pub mod units;
+pub mod usual;
 
 pub use range::{OutOfRange, Range};

@@ -3,6 +3,9 @@
 use super::masses::{CA, CL, H2O, K, MG, NA, NO2_PER_N};
 use super::range::{OutOfRange, Range};
 
+/// Share of chloride in sea salt by mass (Millero 2008 reference composition; from memory).
+pub const CHLORIDE_IN_SEA_SALT: f64 = 0.55;
+
 /// Nitrite.
 pub const NITRITE: Range = Range::not_negative("nitrite", "mg/L as N");
 /// Chloride.

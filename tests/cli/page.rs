@@ -32,7 +32,7 @@ DO FIRST
         "Hillfoot greenhouse 2, as of Mar 4 2026, 07:30 (Europe/Lisbon).",
         "Very likely: Cold water has slowed the biofilter [biofilter-cold-slowed].",
         "\nHOW\n1. ",
-        "ikely: The water has become too cold [water-chilled].",
+        "\nLikely: The water has become too cold [water-chilled].",
         "\nTODAY\n",
         "\nLEAVE ALONE\n- Do not heat the water fast",
         "\nCAUTIONS\n",

@@ -2,12 +2,10 @@
 
 use super::{Farm, Pending, Water, put};
 use crate::history::memory::DAY;
-use crate::water::{ammonia, anthonisen, carbonate, oxygen};
+use crate::water::{ammonia, anthonisen, carbonate, nitrite, oxygen};
 
 /// Salinity of water nobody measured it in: fresh.
 const FRESH: f64 = 0.0;
-/// Share of chloride in sea salt by mass (Millero 2008 reference composition; from memory).
-const CHLORIDE_IN_SEA_SALT: f64 = 0.55;
 /// Ratios against less nitrite than a kit can see say nothing.
 const LEAST_NITRITE: f64 = 0.02;
 
@@ -37,23 +35,23 @@ pub(super) fn update(water: &Water<'_>, farm: &Farm, pending: &mut Pending) {
             .ok();
         put(pending, ids.carbon_dioxide_from_ph, 0, held);
     }
-    let nitrite = water.today(ids.nitrite);
+    let measured = water.today(ids.nitrite);
     if water.changed(&[ids.nitrite, ids.chloride, ids.salinity])
-        && let Some(nitrite) = nitrite
+        && let Some(nitrite) = measured
     {
-        let salty = (salinity > 1.0).then_some(salinity * 1000.0 * CHLORIDE_IN_SEA_SALT);
+        let salty = (salinity > 1.0).then_some(salinity * 1000.0 * nitrite::CHLORIDE_IN_SEA_SALT);
         let chloride = water.fresh(ids.chloride, 10 * DAY).or(salty);
         let ratio = chloride.map(|c| (c / nitrite.max(LEAST_NITRITE)).min(10_000.0));
         put(pending, ids.chloride_to_nitrite, 0, ratio);
     }
     if water.changed(&[ids.nitrite, ids.ph, ids.temperature])
-        && let (Some(nitrite), Some(t), Some(ph)) = (nitrite, temperature, ph)
+        && let (Some(nitrite), Some(t), Some(ph)) = (measured, temperature, ph)
     {
         let acid = anthonisen::free_nitrous_acid(nitrite, ph, t).ok();
         put(pending, ids.free_nitrous_acid, 0, acid);
     }
     if water.changed(&[ids.nitrite, ids.ammonia])
-        && let (Some(nitrite), Some(total)) = (nitrite, water.today(ids.ammonia))
+        && let (Some(nitrite), Some(total)) = (measured, water.today(ids.ammonia))
     {
         /// Below this a kit sees no ammonia, and a ratio to it would be of noise.
         const LEAST_AMMONIA: f64 = 0.1;

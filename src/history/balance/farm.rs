@@ -1,6 +1,18 @@
 //! The numbers of a site that balances reckon with.
 
 use crate::site::Site;
+use crate::water::usual;
+
+/// What the knowledge base says of a site's media and fish; `None` is unknown.
+#[derive(Debug, Clone, Copy, Default)]
+pub struct Known {
+    /// Wetted area of the biofilter, m2.
+    pub area_m2: Option<f64>,
+    /// mg of oxygen per kg of fish and hour, fed.
+    pub oxygen_use: Option<f64>,
+    /// Oxygen at which the fish are short of it, mg/L.
+    pub short_of_oxygen: Option<f64>,
+}
 
 /// What the site file says in numbers; what it does not say is unknown.
 #[derive(Debug, Clone)]
@@ -25,17 +37,19 @@ pub struct Farm {
     pub started: Option<i64>,
     /// mg of oxygen per kg of fish and hour, fed, where the species says.
     pub oxygen_use: Option<f64>,
+    /// Oxygen at which these fish are short of it, mg/L.
+    pub short_of_oxygen: f64,
 }
 
 impl Farm {
-    /// The numbers of a site.
-    pub fn new(site: &Site, area_m2: Option<f64>, oxygen_use: Option<f64>) -> Self {
+    /// The numbers of a site, with what the knowledge base says of its media and fish.
+    pub fn new(site: &Site, known: &Known) -> Self {
         Self {
             volume_l: site.volume_l,
             biomass_kg: site.biomass_kg,
             feed_kg_per_day: site.feed_kg_per_day,
             protein_percent: site.feed_protein_percent,
-            area_m2,
+            area_m2: known.area_m2,
             plant_area_m2: site.plant_area_m2,
             aeration_kg_per_day: site.aeration_kg_o2_per_day,
             elevation_m: site.elevation_m.unwrap_or(0.0),
@@ -43,7 +57,8 @@ impl Farm {
                 .started
                 .and_then(|d| d.to_zoned_datetime(site.timezone.clone()).ok())
                 .map(|z| z.timestamp().as_second()),
-            oxygen_use,
+            oxygen_use: known.oxygen_use,
+            short_of_oxygen: known.short_of_oxygen.unwrap_or(usual::SHORT_OF_OXYGEN),
         }
     }
 }

@@ -4,16 +4,7 @@ use super::{Farm, Pending, Water, put};
 use crate::history::memory::{DAY, HOUR};
 use crate::water::biofilter::{self, Conditions};
 use crate::water::feed::{self, OxygenFor};
-use crate::water::respiration;
-
-/// Protein of feed that nobody stated, percent: grow-out feeds lie at 28 to 40 (common practice).
-const USUAL_PROTEIN: f64 = 32.0;
-/// Total ammonia at which a filter's capacity is reckoned: what a farm would still call well (common practice).
-const WELL: f64 = 1.0;
-/// Body mass of fish nobody weighed, g (common practice: mid grow-out).
-const USUAL_FISH_G: f64 = 250.0;
-/// Oxygen at which fish are called short of it when time is reckoned, mg/L (common practice: warm-water fish).
-const SHORT: f64 = 2.5;
+use crate::water::{respiration, usual};
 
 pub(super) fn update(water: &Water<'_>, farm: &Farm, pending: &mut Pending) {
     let ids = water.ids;
@@ -65,7 +56,7 @@ pub(super) fn update(water: &Water<'_>, farm: &Farm, pending: &mut Pending) {
             (asked > 0.0).then(|| aeration / asked),
         );
     }
-    let protein = farm.protein_percent.unwrap_or(USUAL_PROTEIN);
+    let protein = farm.protein_percent.unwrap_or(usual::PROTEIN_PERCENT);
     let Ok(made) = feed::ammonia(feed, protein) else {
         return; // grams of N a day
     };
@@ -87,9 +78,14 @@ pub(super) fn update(water: &Water<'_>, farm: &Farm, pending: &mut Pending) {
             water.today(ids.nitrite).map(|t| t / per_liter),
         );
         if let Some(alkalinity) = water.fresh(ids.alkalinity, 3 * DAY) {
-            /// mg/L as CaCO3 at which nitrification begins to stall (common practice).
-            const FLOOR: f64 = 10.0;
-            let days = feed::days_of_alkalinity(volume, alkalinity, FLOOR, feed, protein).ok();
+            let days = feed::days_of_alkalinity(
+                volume,
+                alkalinity,
+                usual::ALKALINITY_FLOOR,
+                feed,
+                protein,
+            )
+            .ok();
             put(pending, ids.alkalinity_days, 0, days);
         }
     }
@@ -100,7 +96,7 @@ pub(super) fn update(water: &Water<'_>, farm: &Farm, pending: &mut Pending) {
                 temperature: t.clamp(0.0, 36.0),
                 ph: water.today(ids.ph).unwrap_or(7.0).clamp(5.0, 9.0),
                 dissolved_oxygen: water.today(ids.oxygen).unwrap_or(6.0),
-                total_ammonia: WELL,
+                total_ammonia: usual::TOTAL_AMMONIA,
                 alkalinity: None,
                 adapted: true,
             };
@@ -181,7 +177,7 @@ fn deaths(water: &Water<'_>, farm: &Farm, pending: &mut Pending) {
     let days = series.before_last().map_or(1.0, |(before, _)| {
         ((time - before) as f64 / 86_400.0).clamp(0.25, 7.0)
     });
-    let stock = biomass * 1000.0 / USUAL_FISH_G;
+    let stock = biomass * 1000.0 / usual::FISH_G;
     put(
         pending,
         water.ids.dead_share,
@@ -206,7 +202,9 @@ fn minutes(water: &Water<'_>, farm: &Farm, pending: &mut Pending) {
     };
     let left = farm
         .oxygen_use
-        .or_else(|| respiration::oxygen_use(t, USUAL_FISH_G, true).ok())
-        .and_then(|each| respiration::minutes_until(oxygen, SHORT, biomass, volume, each).ok());
+        .or_else(|| respiration::oxygen_use(t, usual::FISH_G, true).ok())
+        .and_then(|each| {
+            respiration::minutes_until(oxygen, farm.short_of_oxygen, biomass, volume, each).ok()
+        });
     put(pending, ids.oxygen_minutes, 0, left);
 }

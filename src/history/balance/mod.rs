@@ -15,7 +15,7 @@ use super::memory::{DAY, Memory};
 use crate::site::Site;
 use crate::vocabulary::{ReadingId, Vocabulary};
 
-pub use farm::Farm;
+pub use farm::{Farm, Known};
 
 /// The derived readings of one site.
 #[derive(Debug, Clone)]
@@ -27,17 +27,11 @@ pub struct Balance {
 }
 
 impl Balance {
-    /// Balances for a site whose biofilter has this wetted area (m2) and whose fish use this much oxygen (mg/kg/h), where
-    /// known.
-    pub fn new(
-        vocabulary: &Vocabulary,
-        site: &Site,
-        area_m2: Option<f64>,
-        oxygen_use: Option<f64>,
-    ) -> Self {
+    /// Balances for a site, with what the knowledge base says of its media and fish.
+    pub fn new(vocabulary: &Vocabulary, site: &Site, known: &Known) -> Self {
         Self {
             ids: Ids::new(vocabulary),
-            farm: Farm::new(site, area_m2, oxygen_use),
+            farm: Farm::new(site, known),
             rhythm: rhythm::Rhythm::new(site.timezone.clone()),
             pending: Vec::new(),
         }

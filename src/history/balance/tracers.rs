@@ -4,14 +4,11 @@
 use super::{Farm, Pending, Water, put};
 use crate::history::memory::{DAY, Series};
 use crate::vocabulary::ReadingId;
-use crate::water::feed;
+use crate::water::activity::CONDUCTIVITY_OF_NITRATE;
+use crate::water::{feed, usual};
 
 /// The window over which tracers and nitrate are compared.
 const WINDOW: i64 = 10 * DAY;
-/// uS/cm of each mg/L nitrate-N with its counter-ion, near 25 C: nitrate 71.4 S cm2/mol (CRC Handbook; from memory) and
-/// about as much for potassium or calcium beside it.
-const CONDUCTIVITY_OF_NITRATE: f64 = 9.0;
-
 pub(super) fn update(water: &Water<'_>, farm: &Farm, pending: &mut Pending) {
     let ids = water.ids;
     if water.changed(&[
@@ -81,13 +78,6 @@ fn without_nitrate(water: &Water<'_>) -> Option<f64> {
     (rest > before * 0.25).then(|| (share * before - explained) / rest)
 }
 
-/// g N/m2/day that a leafy crop takes up: 0.5 to 2 (common practice); the middle.
-const CROP_UPTAKE: f64 = 1.2;
-/// Share of a day's water that a farm replaces where it does not say: 1 to 3 % (Somerville et al. 2014).
-const USUAL_MAKEUP: f64 = 0.02;
-/// Protein of feed that nobody stated, percent (common practice).
-const USUAL_PROTEIN: f64 = 32.0;
-
 /// The nitrogen budget over the window: of the ammonia nitrogen that the feed made, the share that is neither in the
 /// water (ammonia, nitrite, nitrate), nor in the crop, nor gone with water that was replaced. Near 0 where all is
 /// accounted for, near 1 where nitrogen vanishes (denitrification, or a test that reads low); below 0 where more is
@@ -98,17 +88,17 @@ fn unaccounted(water: &Water<'_>, farm: &Farm) -> Option<f64> {
     #[allow(clippy::cast_precision_loss)] // spans are far below 2^53 seconds
     let days = shift.span as f64 / 86_400.0;
     let (feed, volume) = (farm.feed_kg_per_day?, farm.volume_l?);
-    let protein = farm.protein_percent.unwrap_or(USUAL_PROTEIN);
+    let protein = farm.protein_percent.unwrap_or(usual::PROTEIN_PERCENT);
     let made = feed::ammonia(feed, protein).ok()? * days;
     let dissolved = |id| {
         let moved = series(water, id).and_then(|s| s.shift(WINDOW));
         moved.map_or(0.0, |s| s.change) * volume / 1000.0
     };
     let kept = dissolved(ids.nitrate) + dissolved(ids.ammonia) + dissolved(ids.nitrite);
-    let crop = farm.plant_area_m2.unwrap_or(0.0) * CROP_UPTAKE * days;
+    let crop = farm.plant_area_m2.unwrap_or(0.0) * usual::CROP_UPTAKE * days;
     let replaced = water
         .fresh(ids.makeup_share, WINDOW)
-        .map_or(USUAL_MAKEUP, |percent| percent / 100.0);
+        .map_or(usual::MAKEUP_SHARE, |percent| percent / 100.0);
     let drained = replaced * days * shift.early * volume / 1000.0;
     (days >= 3.0 && made > 0.0).then(|| 1.0 - (kept + crop + drained) / made)
 }
@@ -122,7 +112,7 @@ fn alkalinity_use(water: &Water<'_>, farm: &Farm) -> Option<f64> {
     #[allow(clippy::cast_precision_loss)] // spans are far below 2^53 seconds
     let days = shift.span as f64 / 86_400.0;
     let use_per_day =
-        feed::alkalinity_use(feed, farm.protein_percent.unwrap_or(USUAL_PROTEIN)).ok()?;
+        feed::alkalinity_use(feed, farm.protein_percent.unwrap_or(usual::PROTEIN_PERCENT)).ok()?;
     let expected = use_per_day * 1000.0 / volume * days;
     (expected > 0.0 && days >= 1.0).then(|| -shift.change / expected)
 }

@@ -32,11 +32,6 @@ impl SignTrack {
         let first = self.looks.partition_point(|l| l.0 < from);
         self.looks.range(first..)
     }
-
-    /// The oldest look kept.
-    pub fn oldest(&self) -> Option<i64> {
-        self.looks.front().map(|l| l.0)
-    }
 }
 
 /// Times at which one event was noted.

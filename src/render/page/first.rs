@@ -60,10 +60,11 @@ pub(super) fn block(report: &Report<'_>, page: &mut Vec<Block>) -> Said {
     page.push(Block::Heading(heading.to_owned()));
     let steps = named(&first, page);
     if let Some(minutes) = a.minutes_left {
-        let s = if minutes == 1 { "" } else { "s" };
-        page.push(Block::Para(format!(
-            "You may have {minutes} minute{s} or less."
-        )));
+        page.push(Block::Para(match minutes {
+            0 => "There may be no time left: act before you read on.".to_owned(),
+            1 => "You may have 1 minute or less.".to_owned(),
+            more => format!("You may have {more} minutes or less."),
+        }));
     }
     how(&first, page);
     Said {
